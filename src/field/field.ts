@@ -1,0 +1,12 @@
+/**
+ * Capacitances of the sign: what the field folder gives to the rest. F; node order as in geometry/nodes.ts.
+ *
+ *   const fixed = prepareField(bodies, nodes, face)      once per file
+ *   const lead = leadField(fixed, leadBody)              once per lead and route; worth keeping between edits
+ *   const C = nodeCapacitance(fixed, leads)              per wiring
+ */
+export interface NodeCapacitance {
+  readonly count: number
+  /** Maxwell matrix, row-major, symmetric: charge of node i = Σ_j C_ij V_j */
+  readonly matrix: Float64Array
+}

@@ -1,0 +1,46 @@
+/** The sign as conductors in space: what field, network and gaps work on. SI units. */
+
+import type { Conduit, Fill } from '../layout/layout.js'
+
+/** A path of straight pieces. `points` holds x, y, z of each corner; `at` the path length to each corner. */
+export interface Polyline {
+  readonly points: Float64Array
+  readonly at: Float64Array
+  readonly length: number
+}
+
+interface ConductorCommon {
+  /** `K` for a tube, `S1.1–K.a` for a lead, the id for metal */
+  readonly name: string
+  readonly line: Polyline
+  /** radius of the conducting core (bore of the glass, wire of a lead), m */
+  readonly coreRadius: number
+  /** outer radius of glass, insulation or bar, m */
+  readonly outerRadius: number
+  /** relative permittivity between the two; 1 for bare metal */
+  readonly permittivity: number
+  /** radius of the bare cylinder with the same outside field, b (a/b)^(1/εr), m */
+  readonly equivalentRadius: number
+}
+
+export interface TubeBody extends ConductorCommon {
+  readonly kind: 'tube'
+  readonly fill: Fill
+  readonly boots: boolean
+}
+export interface LeadBody extends ConductorCommon {
+  readonly kind: 'lead'
+  readonly between: readonly [string, string]
+  readonly conduit: Conduit
+  /** inside radius of a conduit, m */
+  readonly boreRadius?: number
+  /** no route in the file joins these ends: the path is ours */
+  readonly assumed: boolean
+}
+export interface BarBody extends ConductorCommon {
+  readonly kind: 'bar'
+  readonly grounded: boolean
+}
+export type Body = TubeBody | LeadBody | BarBody
+/** What the wiring does not move. */
+export type FixedBody = TubeBody | BarBody
