@@ -34,7 +34,11 @@ export interface FixedNodes {
 }
 
 /** Nodes at equal distances of at most `spacing` along every tube, then bars and a floating face. */
-export function fixedNodes(bodies: readonly FixedBody[], floatingFace: boolean, spacing = nodeSpacing): FixedNodes {
+export function fixedNodes(
+  bodies: readonly FixedBody[],
+  floatingFace: boolean,
+  spacing = nodeSpacing,
+): FixedNodes {
   const tubes: ColumnNodes[] = []
   let next = 0
   for (const body of bodies) {
