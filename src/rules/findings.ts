@@ -45,7 +45,11 @@ export interface PairFinding {
   readonly b: Spot
   readonly gap: number
   readonly difference: Differences
+  /** V peak across the air of the gap (glass and coatings taken off), and the one at which a discharge starts */
+  readonly air: { readonly peak: number; readonly startsAt: number; readonly outcome: string }
   readonly rules: readonly RuleFinding[]
+  /** the condition the common-practice verdict was made on: nameplate where the circuit is not lit */
+  readonly judgedOn: 'lit' | 'nameplate'
   readonly severity: number
   readonly verdict: Verdict
   /** which criterion decided, as `common-practice: thumb` */
@@ -98,7 +102,7 @@ export interface TerminalFinding {
 
 /** One way to look at how loaded a supply is: a share of a limit, with what it is a share of. */
 export interface Loading {
-  readonly by: 'voltage' | 'chart' | 'mains' | 'residual'
+  readonly by: 'voltage' | 'chart' | 'mains' | 'residual' | 'lead'
   readonly value: number
   readonly limit: number
   readonly share: number
@@ -107,10 +111,12 @@ export interface Loading {
 
 export interface CircuitFinding {
   readonly supply: string
+  /** the lit solution has been sought; false while only the nameplate condition is known */
+  readonly solved: boolean
   readonly lit: boolean
   readonly dark: readonly string[]
-  /** in words, when not lit */
-  readonly why?: string
+  /** when not lit */
+  readonly why?: 'needs-more-than-no-load' | 'no-stable-point' | 'not-enough-current'
   readonly neededVoltage?: number
   readonly noLoadVoltage: number
   readonly load?: number
@@ -137,5 +143,7 @@ export interface FloatingFinding {
 /** A caution, the most pressing first. */
 export interface Caution {
   readonly level: 'danger' | 'fix' | 'watch' | 'note'
+  /** what it is about, stable for tests and for those who filter */
+  readonly code: string
   readonly text: string
 }

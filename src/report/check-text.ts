@@ -1,0 +1,227 @@
+/** `check`: the findings as text, to read or to paste into a job file. At most 100 columns. */
+import type { Inspection } from '../inspection.js'
+import type { Layout, Supply } from '../layout/layout.js'
+import { magnitude } from '../math/complex.js'
+import { supplyOf } from '../rules/circuits.js'
+import { generalCautions, standingCaution } from '../rules/common-practice.js'
+import type { CircuitFinding, Loading, PairFinding, Verdict } from '../rules/findings.js'
+import {
+  groundingText,
+  hertz,
+  kv,
+  kvFigure,
+  length,
+  lengthFigure,
+  ma,
+  maFigure,
+  metres,
+  needOf,
+  percent,
+  severityFigure,
+  spotText,
+  verdictText,
+  watts,
+} from '../view/words.js'
+import { wrap } from '../view/wrap.js'
+
+export interface CheckOptions {
+  /** list every pair, not only those to fix or watch and the first few within */
+  readonly all: boolean
+  readonly condition: 'lit' | 'nameplate'
+}
+
+const columns = 100
+/** pairs within the rules that are still listed, so that a clean sign shows its nearest */
+const listedWithin = 5
+
+export function checkText(
+  file: string,
+  layout: Layout,
+  inspection: Inspection,
+  options: CheckOptions,
+): string {
+  const lines = [
+    `${layout.title || 'Untitled sign'} (${file})`,
+    `Condition ${options.condition}. Rules: ${layout.rules.join(', ') || 'none'}. kV and mA are rms unless marked peak. Clean, dry, new glass.`,
+    ...wrap(standingCaution, columns),
+    '',
+    ...inspection.circuits.flatMap((circuit, i) => circuitLines(layout, inspection, circuit, i)),
+    ...pairLines(layout, inspection.pairs, options),
+    '',
+    ...floatingLines(inspection),
+    'CAUTIONS',
+    ...[...inspection.cautions.map((c) => `${c.level}: ${c.text}`), ...generalCautions].flatMap(bullet),
+    ...(layout.assumed.length > 0
+      ? [
+          '',
+          'ASSUMED, because the layout does not say',
+          ...layout.assumed.flatMap((a) => bullet(`${a.about}: ${a.text}`)),
+        ]
+      : []),
+  ]
+  return `${lines.map((line) => line.trimEnd()).join('\n')}\n`
+}
+
+const bullet = (text: string): string[] =>
+  wrap(text, columns - 4).map((line, i) => `${i === 0 ? '  - ' : '    '}${line}`)
+
+function circuitLines(layout: Layout, inspection: Inspection, c: CircuitFinding, index: number): string[] {
+  const circuit = inspection.wiring.circuits[index]!
+  const supply = supplyOf(layout, circuit)
+  const string = circuit.string.map((e) => `${e.reversed ? '-' : ''}${e.tube}`).join(' ')
+  return [
+    `SUPPLY ${supply.id}  ${supplyText(supply)}`,
+    ...wrap(`string  ${string}   (- = entered at end b)`, columns - 2).map((l) => `  ${l}`),
+    ...stateLines(c),
+    ...c.loadings.map((l) => `  ${loadingText(l).padEnd(66)} ${mark(l.verdict)}`),
+    '',
+    ...table([
+      [
+        'tube',
+        'length',
+        'kV at a',
+        'kV at b',
+        'drop kV',
+        'mA at a',
+        'mA at b',
+        'least mA',
+        'stray mA',
+        'nameplate a/b',
+      ],
+      ...c.tubes.map((t) => [
+        t.id,
+        metres(t.length),
+        t.a ? kvFigure(magnitude(t.a.voltage)) : '',
+        t.b ? kvFigure(magnitude(t.b.voltage)) : '',
+        t.drop === undefined ? '' : kvFigure(t.drop),
+        t.a ? maFigure(magnitude(t.a.current)) : '',
+        t.b ? maFigure(magnitude(t.b.current)) : '',
+        t.least ? maFigure(t.least.current) : '',
+        t.stray === undefined ? '' : maFigure(t.stray),
+        `${kvFigure(t.nameplateA)} / ${kvFigure(t.nameplateB)}`,
+      ]),
+    ]),
+    '',
+    ...table([
+      ['lead', 'role', 'length', 'kV', 'stray mA', 'to ground', 'to parts', 'route'],
+      ...c.leads.map((l) => [
+        l.between.join('–'),
+        l.role,
+        length(l.length, layout.units),
+        l.voltage === undefined ? '' : kvFigure(l.voltage),
+        l.stray === undefined ? '' : maFigure(l.stray),
+        l.toGround === undefined ? '' : maFigure(l.toGround),
+        l.toNeighbours === undefined ? '' : maFigure(l.toNeighbours),
+        l.assumed ? 'assumed' : 'drawn',
+      ]),
+    ]),
+    '',
+  ]
+}
+
+export const supplyText = (s: Supply): string =>
+  `${s.type}, ${kv(s.noLoadVoltage)} no-load, ${ma(s.shortCircuitCurrent)} short-circuit, ${hertz(s.frequency)}, ${groundingText[s.grounding]}`
+
+function stateLines(c: CircuitFinding): string[] {
+  if (!c.solved) return ['  lit solution not computed']
+  if (!c.lit) return [`  NOT LIT  dark: ${c.dark.join(', ') || 'the whole string'}`]
+  const dimmest = c.tubes
+    .filter((t) => t.least)
+    .sort((a, b) => (a.least?.current ?? 0) - (b.least?.current ?? 0))[0]
+  return [
+    `  lit  ${c.terminals.map((t) => `${t.end} ${kv(magnitude(t.voltage))} ${ma(magnitude(t.current))}`).join('   ')}`,
+    `  glass ${metres(c.tubeLength)}, ${c.electrodePairs} electrode pairs, ${watts(c.power ?? 0)} in the glass`,
+    `  stray ${ma(c.stray ?? 0)}, residual to ground ${ma(c.residual ?? 0)}` +
+      (dimmest?.least ? `, dimmest ${dimmest.id} with ${ma(dimmest.least.current)}` : ''),
+  ]
+}
+
+export function loadingText({ by, value, limit, share }: Loading): string {
+  const of = `${percent(share).padStart(5)} of`
+  switch (by) {
+    case 'voltage':
+      return `needs ${kv(value)}: ${of} the no-load ${kv(limit)}`
+    case 'chart':
+      return `footage ${metres(value)} with electrode pairs: ${of} the chart's ${metres(limit)}`
+    case 'mains':
+      return `mains input about ${watts(value)}: ${of} the rated ${watts(limit)}`
+    case 'residual':
+      return `residual ${ma(value)}: ${of} the trip value ${ma(limit)}`
+    case 'lead':
+      return `longest output lead ${Math.round(value * 1000)} mm: ${of} the allowed ${Math.round(limit * 1000)} mm`
+  }
+}
+
+const mark = (verdict: Verdict): string => (verdict === 'within' ? '' : verdict.toUpperCase())
+
+function pairLines(layout: Layout, pairs: readonly PairFinding[], options: CheckOptions): string[] {
+  const count = (verdict: Verdict) => pairs.filter((p) => p.verdict === verdict).length
+  const within = verdictText('within', layout.rules)
+  const head = `PAIRS  ${count('fix')} to fix, ${count('watch')} to watch, ${count('within')} ${within}`
+  const urgent = count('fix') + count('watch')
+  const shown = options.all ? pairs : pairs.slice(0, urgent + listedWithin)
+  const left = pairs.length - shown.length
+  return [
+    head,
+    ...table([
+      [
+        '',
+        'verdict',
+        'from',
+        'to',
+        `gap ${layout.units}`,
+        'kV',
+        'low–high',
+        'paper kV',
+        `needs ${layout.units}`,
+        'x limit',
+        'governs',
+      ],
+      ...shown.map((p, i) => pairCells(layout, p, i)),
+    ]),
+    ...(left > 0 ? [`  and ${left} more ${within} (--all lists them)`] : []),
+  ]
+}
+
+function pairCells(layout: Layout, p: PairFinding, i: number): string[] {
+  const d = p.difference
+  const need = needOf(p)
+  return [
+    String(i + 1),
+    `${p.verdict}${p.unsure ? '?' : ''}`,
+    spotText(p.a, layout.units),
+    spotText(p.b, layout.units),
+    lengthFigure(p.gap, layout.units),
+    d.lit === undefined ? '' : kvFigure(d.lit),
+    d.litLow === undefined || d.litHigh === undefined
+      ? 'nameplate'
+      : `${kvFigure(d.litLow)}–${kvFigure(d.litHigh)}`,
+    kvFigure(d.nameplate),
+    need === undefined ? '' : lengthFigure(need, layout.units),
+    severityFigure(p.severity),
+    p.governs,
+  ]
+}
+
+const floatingLines = ({ floating }: Inspection): string[] =>
+  floating.length === 0
+    ? []
+    : [
+        'UNGROUNDED METAL',
+        ...floating.map(
+          (f) => `  ${f.id}  floats to ${kv(f.voltage)}; ${ma(f.touch)} through a person touching it`,
+        ),
+        '',
+      ]
+
+/** Left-aligned first column, the rest right-aligned where they are figures. */
+function table(rows: readonly (readonly string[])[]): string[] {
+  const widths = rows[0]!.map((_, c) => Math.max(...rows.map((r) => [...(r[c] ?? '')].length)))
+  const figures = rows[0]!.map((_, c) =>
+    rows.slice(1).every((r) => /^[-+>\d.–/ m%]*$|^nameplate$/.test(r[c] ?? '')),
+  )
+  return rows.map(
+    (row) =>
+      `  ${row.map((cell, c) => (figures[c] && c > 0 ? cell.padStart(widths[c]!) : cell.padEnd(widths[c]!))).join('  ')}`,
+  )
+}
