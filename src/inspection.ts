@@ -6,7 +6,9 @@
  *   inspection(prepared, wiring)       potentials as shared out on paper, and what follows            at once
  *   inspection(prepared, wiring, s)    the same with the lit solution s = solve(wiring)               per edit
  */
-import { type LeadField, leadField, nodeCapacitance, prepareField } from './field/field.js'
+import { prepareField } from './field/fixed-field.js'
+import { type LeadField, leadField } from './field/lead-field.js'
+import { nodeCapacitance } from './field/node-capacitance.js'
 import { fixedBodies } from './geometry/bodies.js'
 import { fixedRuns, leadLeadRuns, leadRuns, withLeadIndex } from './geometry/close-runs.js'
 import type { FixedBody, LeadBody, TubeBody } from './geometry/conductors.js'
@@ -14,12 +16,13 @@ import { leadBody } from './geometry/leads.js'
 import { type FixedNodes, fixedNodes } from './geometry/nodes.js'
 import type { CloseRun } from './geometry/runs.js'
 import type { EndName, Layout, Wiring } from './layout/layout.js'
+import { solveBand } from './network/lit.js'
 import { nameplateField } from './network/nameplate.js'
 import { network } from './network/network.js'
 import { type Probe, probe } from './network/potentials.js'
-import type { CircuitOutcome, PotentialField } from './network/solution.js'
-import { solveBand } from './network/solve.js'
+import type { CircuitOutcome, LitState, PotentialField } from './network/solution.js'
 import { type StrayShares, strayShares } from './network/stray.js'
+import { noLoadVoltage } from './network/supplies.js'
 import { cautions } from './rules/cautions.js'
 import { circuitFindings, supplyOf } from './rules/circuits.js'
 import type { Caution, CircuitFinding, FloatingFinding, PairFinding } from './rules/findings.js'
@@ -66,29 +69,99 @@ export interface Solved {
   readonly mayGoDark: readonly string[]
 }
 
+/** The same for an edited layout: what did not move is kept. */
+export function preparedAgain(prepared: Prepared, layout: Layout): Prepared {
+  const was = prepared.layout
+  if (layout === was) return prepared
+  const sameGlass = layout.tubes === was.tubes && layout.metal === was.metal && layout.face === was.face
+  if (!sameGlass || layout.routes !== was.routes) return prepare(layout)
+  const samePlaces = layout.supplies.every((s, i) => s.terminals === was.supplies[i]?.terminals)
+  return samePlaces
+    ? { ...prepared, layout }
+    : { ...prepared, layout, leads: new Map(), crossings: new Map() }
+}
+
+/** A lead by its two ends, from the memo. */
+function placedLead({ layout, bodies, leads }: Prepared, between: readonly [EndName, EndName]): PlacedLead {
+  const name = between.join(' ')
+  const known = leads.get(name)
+  if (known) return known
+  const body = leadBody(layout, between)
+  const placed = { body, runs: leadRuns(body, bodies, layout) }
+  leads.set(name, placed)
+  return placed
+}
+
+/** Where the leads of a wiring pass glass, metal and each other. */
+function runsOfLeads(prepared: Prepared, placed: readonly PlacedLead[]): CloseRun[] {
+  const runs = placed.flatMap(({ runs: own }, i) => withLeadIndex(own, i))
+  for (const [i, a] of placed.entries())
+    for (const [j, b] of placed.entries()) {
+      if (j <= i) continue
+      const name = `${a.body.name}|${b.body.name}`
+      const known = prepared.crossings.get(name) ?? leadLeadRuns(a.body, b.body)
+      prepared.crossings.set(name, known)
+      runs.push(...withLeadIndex(known, i, j))
+    }
+  return runs
+}
+
 /** Prepares the capacitances of the glass (the slow part) and gives the function that solves a wiring. */
-export function solver(prepared: Prepared): (wiring: Wiring) => Solved {
-  const { layout, bodies, tubes, nodes } = prepared
-  const fixed = prepareField(bodies, nodes, layout.face)
-  const known = new Map<string, LeadField>()
+export function solver(prepared: Prepared): (wiring: Wiring, layout?: Layout) => Solved {
+  const { bodies, tubes, nodes } = prepared
+  const bars = bodies.filter((body) => body.kind === 'bar')
+  const fixed = prepareField(bodies, nodes, prepared.layout.face)
+  const known = new WeakMap<LeadBody, LeadField>()
   const fieldOf = (body: LeadBody): LeadField => {
-    const field = known.get(body.name) ?? leadField(fixed, body)
-    known.set(body.name, field)
+    const field = known.get(body) ?? leadField(fixed, body)
+    known.set(body, field)
     return field
   }
-  return (wiring) => {
-    const leads = circuitLeads(wiring).map(({ between }) => placedLead(prepared, between).body)
+  let now = prepared
+  return (wiring, layout = prepared.layout) => {
+    now = preparedAgain(now, layout)
+    const leads = circuitLeads(wiring).map(({ between }) => placedLead(now, between).body)
     const capacitance = nodeCapacitance(fixed, leads.map(fieldOf))
-    return solved(network(layout, wiring, tubes, bars(bodies), nodes, capacitance))
+    const net = network(layout, wiring, tubes, bars, nodes, capacitance)
+    const { nominal, others } = solveBand(net)
+    const noLoads = wiring.circuits.map((circuit) => noLoadVoltage(supplyOf(layout, circuit)))
+    return {
+      ...litFields(nominal, others, noLoads),
+      outcomes: nominal.circuits,
+      ...strayShares(net, nominal),
+    }
   }
 }
 
-/** Everything that is known of a wiring. Without `solved` only the nameplate condition is. */
+/** The band of the lit fields. Where its upper end does not burn, the nominal one scaled to no-load stands for it. */
+function litFields(
+  nominal: LitState,
+  others: readonly LitState[],
+  noLoads: readonly number[],
+): Pick<Solved, 'lit' | 'mayGoDark'> {
+  const burns = (state: LitState) => state.circuits.every((c, i) => c.lit === nominal.circuits[i]?.lit)
+  const mayGoDark = nominal.circuits.flatMap((c, i) =>
+    c.lit && others.some((o) => !o.circuits[i]?.lit) ? [c.supply] : [],
+  )
+  const band = others.filter(burns).map((o) => o.fields)
+  const room = nominal.circuits.flatMap((c, i) =>
+    c.lit && mayGoDark.includes(c.supply) ? [noLoads[i]! / c.neededVoltage] : [],
+  )
+  const lit = { nominal: nominal.fields, band, ...(room.length > 0 && { ceiling: Math.max(...room) }) }
+  return { lit, mayGoDark }
+}
+
+/** Everything that is known of a wiring. Without a solution only the nameplate condition is. */
 export interface Inspection {
   readonly wiring: Wiring
   readonly leads: readonly LeadBody[]
   readonly places: readonly CircuitLead[]
   readonly probe: Probe
+  readonly nameplate: readonly PotentialField[]
+  /** lit fields of the nominal law, of the circuits that burn */
+  readonly lit?: readonly PotentialField[]
+  /** bodies (fixed, then leads) that belong to a circuit that is not lit */
+  readonly unlitBodies: ReadonlySet<number>
   readonly context: PairContext
   readonly solved: boolean
   readonly circuits: readonly CircuitFinding[]
@@ -96,4 +169,94 @@ export interface Inspection {
   readonly pairs: readonly PairFinding[]
   readonly floating: readonly FloatingFinding[]
   readonly cautions: readonly Caution[]
+}
+
+/** Findings on a wiring, judged by a condition, with the lit solution where it is known. */
+export function inspection(
+  prepared: Prepared,
+  wiring: Wiring,
+  solved?: Solved,
+  condition: 'lit' | 'nameplate' = 'lit',
+): Inspection {
+  const { layout, bodies, tubes, nodes } = prepared
+  const places = circuitLeads(wiring)
+  const placed = places.map(({ between }) => placedLead(prepared, between))
+  const leads = placed.map(({ body }) => body)
+  const context = pairContext(prepared, wiring, places, leads, solved, condition)
+  const runs = runsOfLeads(prepared, placed)
+  const circuits = circuitFindings({
+    layout,
+    wiring,
+    bodies,
+    leads,
+    places,
+    probe: context.probe,
+    nameplate: context.nameplate,
+    ...(solved && { outcomes: solved.outcomes, fields: solved.lit.nominal, stray: solved.stray }),
+  })
+  const pairs = pairFindings(context, [...prepared.runs, ...runs])
+  const floating = solved?.floating ?? []
+  return {
+    wiring,
+    leads,
+    places,
+    probe: context.probe,
+    nameplate: context.nameplate,
+    ...(solved && { lit: solved.lit.nominal }),
+    unlitBodies: unlitBodies(context, tubes.length, nodes.bars),
+    context,
+    solved: solved !== undefined,
+    circuits,
+    pairs,
+    floating,
+    cautions: cautions({
+      layout,
+      leads,
+      places,
+      supplies: context.supplies,
+      circuits,
+      pairs,
+      floating,
+      leadRuns: runs,
+      mayGoDark: solved?.mayGoDark ?? [],
+    }),
+  }
+}
+
+function pairContext(
+  { layout, bodies, tubes, nodes }: Prepared,
+  wiring: Wiring,
+  places: readonly CircuitLead[],
+  leads: readonly LeadBody[],
+  solved: Solved | undefined,
+  condition: 'lit' | 'nameplate',
+): PairContext {
+  const ids = tubes.map((tube) => tube.name)
+  const supplies = wiring.circuits.map((circuit) => supplyOf(layout, circuit))
+  return {
+    layout,
+    bodies,
+    leads,
+    circuitOfLead: places.map((place) => place.circuit),
+    circuitOfTube: ids.map((id) => wiring.circuits.findIndex((c) => c.string.some((e) => e.tube === id))),
+    feeds: new Set(places.flatMap((place, i) => (place.role === 'feed' ? [i] : []))),
+    supplies,
+    probe: probe(wiring, ids, nodes),
+    nameplate: nameplateField(layout, wiring, tubes, nodes, leads.length),
+    condition,
+    ...(solved && { lit: solved.lit }),
+    unlit: new Set(solved?.outcomes.flatMap((outcome, i) => (outcome.lit ? [] : [i]))),
+  }
+}
+
+function unlitBodies(
+  { unlit, circuitOfTube, circuitOfLead }: PairContext,
+  tubes: number,
+  bars: number,
+): Set<number> {
+  const dark = (circuit: number | undefined) => circuit !== undefined && unlit.has(circuit)
+  return new Set([
+    ...circuitOfTube.flatMap((circuit, tube) => (dark(circuit) ? [tube] : [])),
+    ...circuitOfLead.flatMap((circuit, lead) => (dark(circuit) ? [tubes + bars + lead] : [])),
+  ])
 }

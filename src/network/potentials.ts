@@ -1,6 +1,7 @@
 /** Reading a solution at any place of any body. V rms phasors; path lengths in m. */
-import type { BodyRef } from '../geometry/runs.js'
+
 import type { FixedNodes } from '../geometry/nodes.js'
+import type { BodyRef } from '../geometry/runs.js'
 import type { Wiring } from '../layout/layout.js'
 import type { PotentialField } from './solution.js'
 
@@ -91,6 +92,7 @@ export const rmsPotential = (fields: readonly PotentialField[], place: NodeMix):
  */
 export function instantPotential(fields: readonly PotentialField[], place: NodeMix, phase: number): number {
   let sum = 0
-  for (const field of fields) sum += readRe(field, place) * Math.cos(phase) - readIm(field, place) * Math.sin(phase)
+  for (const field of fields)
+    sum += readRe(field, place) * Math.cos(phase) - readIm(field, place) * Math.sin(phase)
   return Math.SQRT2 * sum
 }

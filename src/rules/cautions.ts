@@ -1,5 +1,5 @@
 /** What must be said about a sign beyond its figures: the most pressing first. */
-import type { FixedBody, LeadBody } from '../geometry/conductors.js'
+import type { LeadBody } from '../geometry/conductors.js'
 import type { CloseRun } from '../geometry/runs.js'
 import type { Layout, Supply } from '../layout/layout.js'
 import type { CircuitLead } from '../wiring/leads.js'
@@ -8,7 +8,6 @@ import type { Caution, CircuitFinding, FloatingFinding, PairFinding } from './fi
 
 export interface CautionContext {
   readonly layout: Layout
-  readonly bodies: readonly FixedBody[]
   readonly leads: readonly LeadBody[]
   readonly places: readonly CircuitLead[]
   readonly supplies: readonly Supply[]

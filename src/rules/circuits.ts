@@ -5,6 +5,7 @@ import { type Complex, magnitude, minus } from '../math/complex.js'
 import { nodeMix, type Probe, readIm, readRe } from '../network/potentials.js'
 import type { CircuitOutcome, ColumnCurrents, PotentialField } from '../network/solution.js'
 import type { StrayShares } from '../network/stray.js'
+import { noLoadVoltage } from '../network/supplies.js'
 import type { CircuitLead } from '../wiring/leads.js'
 import { commonPractice } from './common-practice.js'
 import type { CircuitFinding, EndState, LeadFinding, Loading, TubeFinding, Verdict } from './findings.js'
@@ -45,9 +46,9 @@ function circuitFinding(context: CircuitContext, circuit: CircuitWiring, index: 
     ...(outcome && !outcome.lit && { why: outcome.why }),
     ...(outcome?.neededVoltage !== undefined && {
       neededVoltage: outcome.neededVoltage,
-      load: outcome.neededVoltage / noLoad(supply),
+      load: outcome.neededVoltage / noLoadVoltage(supply),
     }),
-    noLoadVoltage: noLoad(supply),
+    noLoadVoltage: noLoadVoltage(supply),
     ...(outcome?.lit && {
       power: outcome.power,
       stray: strayOf(outcome),
@@ -82,10 +83,6 @@ export function supplyOf(layout: Layout, circuit: CircuitWiring): Supply {
   if (!supply) throw new Error(`the layout names no supply ${circuit.supply}`)
   return supply
 }
-
-/** rms, or peak/√2 where that is greater (IEC 61347-2-10:2000 [R]) */
-export const noLoad = ({ noLoadVoltage, noLoadPeak }: Supply): number =>
-  Math.max(noLoadVoltage, (noLoadPeak ?? 0) / Math.SQRT2)
 
 /** larger terminal current minus the least current of the string, as phasors */
 function strayOf(outcome: CircuitOutcome & { readonly lit: true }): number {
@@ -125,7 +122,7 @@ function loadingsOf(
     add(
       'voltage',
       outcome.neededVoltage,
-      noLoad(supply),
+      noLoadVoltage(supply),
       voltageWatch(supply, used),
       outcome.lit ? Infinity : 0,
     )
@@ -249,8 +246,7 @@ function leadFindings(
         assumed: lead.assumed,
         nameplate: nameplate.reduce((sum, f) => sum + readRe(f, mix), 0),
         ...(field && { voltage: Math.hypot(readRe(field, mix), readIm(field, mix)) }),
-        ...(field &&
-          share && { stray: share.total, toGround: share.toGround, toNeighbours: share.toNeighbours }),
+        ...(share && { stray: share.total, toGround: share.toGround, toNeighbours: share.toNeighbours }),
       },
     ]
   })

@@ -1,4 +1,5 @@
 /** The answers about a sign: pairs, circuits, floating metal, cautions. V rms unless said; m, A, W. */
+import type { BodyRef } from '../geometry/runs.js'
 import type { Point } from '../layout/layout.js'
 import type { Complex } from '../math/complex.js'
 
@@ -8,6 +9,7 @@ export type PartKind = 'tube' | 'lead' | 'metal' | 'face'
 
 /** A place on a part. */
 export interface Spot {
+  readonly body: BodyRef
   readonly kind: PartKind
   /** `K`, `S1.1–K.a`, `frame`, `face` */
   readonly part: string

@@ -1,6 +1,6 @@
 /** Verdicts on every place where two conductors pass each other. V rms unless said; m. */
 
-import { type GapStress, gapStress, type Surface } from '../gaps/gap-stress.js'
+import { type GapStart, gapStart, type Surface, stressFrom } from '../gaps/gap-stress.js'
 import type { Body, FixedBody, LeadBody } from '../geometry/conductors.js'
 import type { BodyRef, CloseRun } from '../geometry/runs.js'
 import type { Layout, Point, Supply } from '../layout/layout.js'
@@ -13,7 +13,7 @@ import type { Differences, PairFinding, PartKind, RuleFinding, Spot, Verdict } f
 export interface LitFields {
   readonly nominal: readonly PotentialField[]
   readonly band: readonly (readonly PotentialField[])[]
-  /** where the upper end of the band is not lit: nominal × this stands for it */
+  /** where the upper end of the band does not burn: nominal times this (no-load over needed) stands for it */
   readonly ceiling?: number
 }
 
@@ -30,6 +30,8 @@ export interface PairContext {
   readonly probe: Probe
   readonly nameplate: readonly PotentialField[]
   readonly lit?: LitFields
+  /** what verdicts go by; differences of both are told */
+  readonly condition: 'lit' | 'nameplate'
   readonly unlit: ReadonlySet<number>
 }
 
@@ -91,7 +93,9 @@ function circuitOf(context: PairContext, body: BodyRef): number {
 }
 
 function judgedDifference(context: PairContext, lit: LitFields | undefined, a: NodeMix, b: NodeMix): number {
-  return lit ? upper(lit, rmsDifference, a, b) : rmsDifference(context.nameplate, a, b)
+  return lit && context.condition === 'lit'
+    ? upper(lit, rmsDifference, a, b)
+    : rmsDifference(context.nameplate, a, b)
 }
 
 type Measure = (fields: readonly PotentialField[], a: NodeMix, b: NodeMix) => number
@@ -111,33 +115,38 @@ function findingAt(
   key: string,
 ): PairFinding {
   const [a, b] = mixes(context, run, i)
-  const difference = differences(context, lit, a, b)
   const gap = run.gap[i]!
-  const kind = pairKind(context, run)
-  const rules = ruleFindings(context, run, gap, difference.litHigh ?? difference.nameplate)
-  const stress = airStress(context, run, i, lit, difference, a, b)
-  const atLow = { ...difference, litHigh: difference.litLow ?? difference.nameplate }
-  const lowRules = ruleFindings(context, run, gap, atLow.litHigh)
-  const lowMargin = stress.margin * share(difference.litLow, difference.litHigh)
-  const judged = judge(rules, stress.margin)
+  const start = startOf(context, run, i)
+  const noLoadPeak = peakDifference(context.nameplate, a, b)
+  const relights = context.supplies.some((s) => s.type === 'core-and-coil')
+  const judged = (rms: number, peak: number) => {
+    const rules = ruleFindings(context, run, gap, rms)
+    // on core-and-coil every half-cycle relights: the no-load peak counts as well
+    const stress = stressFrom(start, relights ? Math.max(peak, noLoadPeak) : peak)
+    return { rules, stress, verdict: judge(rules, stress.margin) }
+  }
+  const difference = differences(context, lit, a, b)
+  const onLit = lit !== undefined && context.condition === 'lit'
+  const { rules, stress, verdict } = onLit
+    ? judged(upper(lit, rmsDifference, a, b), upper(lit, peakDifference, a, b))
+    : judged(difference.nameplate, noLoadPeak)
+  const atLow = onLit
+    ? judged(lower(lit, rmsDifference, a, b), lower(lit, peakDifference, a, b)).verdict
+    : verdict
   return {
     key,
-    kind,
+    kind: pairKind(context, run),
     a: spot(context, run.a, run.atA[i]!, run.pointA, i),
     b: spot(context, run.b, run.atB[i]!, run.pointB, i),
     gap,
     difference,
     air: { peak: stress.airPeak, startsAt: stress.startsAt, outcome: stress.outcome },
     rules,
-    ...judged,
-    judgedOn: lit ? 'lit' : 'nameplate',
-    unsure:
-      lit !== undefined && (judge(lowRules, lowMargin).verdict === 'fix') !== (judged.verdict === 'fix'),
+    ...verdict,
+    judgedOn: onLit ? 'lit' : 'nameplate',
+    unsure: (atLow.verdict === 'fix') !== (verdict.verdict === 'fix'),
   }
 }
-
-const share = (low: number | undefined, high: number | undefined): number =>
-  low === undefined || high === undefined || high === 0 ? 1 : low / high
 
 function differences(context: PairContext, lit: LitFields | undefined, a: NodeMix, b: NodeMix): Differences {
   const nameplate = rmsDifference(context.nameplate, a, b)
@@ -151,29 +160,27 @@ function differences(context: PairContext, lit: LitFields | undefined, a: NodeMi
   }
 }
 
-/** Physics goes by the lit peak at the upper end of the band; on core-and-coil by the no-load peak as well. */
-function airStress(
-  context: PairContext,
-  run: CloseRun,
-  i: number,
-  lit: LitFields | undefined,
-  difference: Differences,
-  a: NodeMix,
-  b: NodeMix,
-): GapStress {
-  const { layout, supplies } = context
-  const relights = supplies.some((s) => s.type === 'core-and-coil')
-  const noLoad = peakDifference(context.nameplate, a, b)
-  const peak = Math.max(difference.litPeak ?? noLoad, relights ? noLoad : 0)
-  return gapStress({
-    gap: run.gap[i]!,
-    a: surface(context, run.a, run.atA[i]!),
-    b: surface(context, run.b, run.atB[i]!),
-    peak: lit || relights ? peak : noLoad,
-    frequency: Math.max(...supplies.map((s) => s.frequency)),
-    altitude: layout.altitude,
-    mode: 'cautious',
-  })
+/** starts of discharge do not depend on the wiring: kept by the samples of the run they belong to */
+const starts = new WeakMap<Float64Array, Map<string, GapStart>>()
+
+function startOf(context: PairContext, run: CloseRun, i: number): GapStart {
+  const { altitude } = context.layout
+  const frequency = Math.max(...context.supplies.map((s) => s.frequency))
+  const known = starts.get(run.gap) ?? new Map<string, GapStart>()
+  starts.set(run.gap, known)
+  const name = `${i} ${frequency} ${altitude}`
+  const start =
+    known.get(name) ??
+    gapStart({
+      gap: run.gap[i]!,
+      a: surface(context, run.a, run.atA[i]!),
+      b: surface(context, run.b, run.atB[i]!),
+      frequency,
+      altitude,
+      mode: 'cautious',
+    })
+  known.set(name, start)
+  return start
 }
 
 function body(context: PairContext, ref: BodyRef): Body | undefined {
@@ -183,15 +190,14 @@ function body(context: PairContext, ref: BodyRef): Body | undefined {
 
 function surface(context: PairContext, ref: BodyRef, at: number): Surface {
   const part = body(context, ref)
-  if (!part) return { kind: 'plane' }
+  if (!part) return { kind: 'plane', outerRadius: 0, wall: 0, permittivity: 1 }
   const { outerRadius, coreRadius, permittivity } = part
   const wall = outerRadius - coreRadius
-  if (part.kind === 'bar') return { kind: 'bare', outerRadius }
+  const bare: Surface = { kind: 'bare', outerRadius, wall: 0, permittivity: 1 }
+  if (part.kind === 'bar') return bare
   if (part.kind === 'lead') return { kind: 'insulated', outerRadius, wall, permittivity }
   const atElectrode = at < electrodeReach || at > part.line.length - electrodeReach
-  return atElectrode && !part.boots
-    ? { kind: 'bare', outerRadius }
-    : { kind: 'glass', outerRadius, wall, permittivity }
+  return atElectrode && !part.boots ? bare : { kind: 'glass', outerRadius, wall, permittivity }
 }
 
 /** What the chosen rule sets say of a gap at a difference (V rms, the upper end of the lit band). */
@@ -271,5 +277,5 @@ function pairKind(context: PairContext, { a, b }: CloseRun): string {
 
 function spot(context: PairContext, ref: BodyRef, at: number, points: Float64Array, i: number): Spot {
   const point: Point = [points[3 * i]!, points[3 * i + 1]!, points[3 * i + 2]!]
-  return { kind: partKind(context, ref), part: partName(context, ref), at, point }
+  return { body: ref, kind: partKind(context, ref), part: partName(context, ref), at, point }
 }

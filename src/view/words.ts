@@ -1,5 +1,5 @@
 /** Figures in words: the same on the screen, in `check` and on the job sheet. In: SI. Out: text with its unit. */
-import type { Units } from '../layout/layout.js'
+import type { Supply, Units } from '../layout/layout.js'
 import type { PairFinding, Spot, Verdict } from '../rules/findings.js'
 
 const fixed = (value: number, decimals: number): string => {
@@ -63,3 +63,7 @@ export const groundingText = {
   'one-end': 'terminal 2 grounded',
   none: 'not grounded',
 } as const
+
+/** `electronic 8.0 kV 30 mA 24 kHz` */
+export const supplyShort = (s: Supply): string =>
+  `${s.type} ${kv(s.noLoadVoltage)} ${ma(s.shortCircuitCurrent)} ${hertz(s.frequency)}`

@@ -8,6 +8,7 @@
 import type {
   CircuitWiring,
   EndName,
+  Fill,
   Layout,
   PathPoint,
   StringEntry,
@@ -268,6 +269,14 @@ export function withTubeHeight(layout: Layout, id: string, height: number): Edit
   if (!within(height, -2, 2))
     return refused({ code: 'out-of-range', what: 'height', allowed: '-2000 to 2000 mm' })
   return done({ ...layout, tubes: layout.tubes.map((t) => (t.id === id ? { ...t, height } : t)) })
+}
+
+/** Refills a tube: another gas, another gradient. */
+export function withTubeFill(layout: Layout, id: string, fill: Fill): Edit<Layout> {
+  const tube = layout.tubes.find((t) => t.id === id)
+  if (!tube) return refused({ code: 'no-such-part', part: id })
+  if (tube.fill === fill) return refused({ code: 'nothing-to-change', what: `${id} is filled with ${fill} already` })
+  return done({ ...layout, tubes: layout.tubes.map((t) => (t.id === id ? { ...t, fill } : t)) })
 }
 
 /** Keeps a wiring under a name; a variant of the same name is replaced. */

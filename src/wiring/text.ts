@@ -38,7 +38,7 @@ export function editedText(source: string, from: Sign, to: Sign): string {
   const patches = [
     ...wiringPatches(page, from.wiring, to.wiring),
     ...supplyPatches(page, from.layout, to.layout),
-    ...heightPatches(page, from.layout, to.layout),
+    ...tubePatches(page, from.layout, to.layout),
     ...variantPatches(page, from.layout, to.layout),
   ]
   // from the back, so that earlier offsets stay true
@@ -151,13 +151,17 @@ function supplyPatches(page: Page, from: Layout, to: Layout): Patch[] {
   })
 }
 
-function heightPatches(page: Page, from: Layout, to: Layout): Patch[] {
+function tubePatches(page: Page, from: Layout, to: Layout): Patch[] {
   const unit = from.units === 'in' ? 0.0254 : 0.001
-  return to.tubes.flatMap((tube, i) =>
-    tube.height === from.tubes[i]?.height
-      ? []
-      : keyPatch(page, ['tubes', i], 'id', 'height', numberText(tube.height / unit)),
-  )
+  return to.tubes.flatMap((tube, i) => {
+    const old = from.tubes[i]
+    const set = (key: string, changed: boolean, text: string) =>
+      changed ? keyPatch(page, ['tubes', i], 'id', key, text) : []
+    return [
+      ...set('height', tube.height !== old?.height, numberText(tube.height / unit)),
+      ...set('fill', tube.fill !== old?.fill, tube.fill),
+    ]
+  })
 }
 
 /** Changed variants are rewritten in place, new ones are added behind the last. */

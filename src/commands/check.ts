@@ -1,0 +1,73 @@
+/** `tubewright check`: the findings of one or more layouts, for people and for scripts. */
+import { readLayoutFile } from '../files.js'
+import { type Inspection, inspection, prepare, solver } from '../inspection.js'
+import type { Layout } from '../layout/layout.js'
+import { checkJson } from '../report/check-json.js'
+import { checkText } from '../report/check-text.js'
+import { argumentsOf, complain, status, UsageFault } from './common.js'
+
+interface Options {
+  readonly json: boolean
+  readonly all: boolean
+  readonly condition: 'lit' | 'nameplate'
+  readonly rules: readonly string[] | undefined
+}
+
+export function checkCommand(args: readonly string[]): number {
+  const { values, positionals } = argumentsOf({
+    args: [...args],
+    allowPositionals: true,
+    options: {
+      json: { type: 'boolean' },
+      all: { type: 'boolean' },
+      condition: { type: 'string' },
+      rules: { type: 'string' },
+    },
+  })
+  if (positionals.length === 0) throw new UsageFault('check needs a layout file')
+  const options: Options = {
+    json: values.json ?? false,
+    all: values.all ?? false,
+    condition: conditionOf(values.condition),
+    rules: values.rules
+      ?.split(',')
+      .map((name) => name.trim())
+      .filter((name) => name !== ''),
+  }
+  let worst: number = status.fine
+  for (const path of positionals) worst = Math.max(worst, checkFile(path, options))
+  return worst
+}
+
+function conditionOf(text: string | undefined): 'lit' | 'nameplate' {
+  if (text === undefined || text === 'lit') return 'lit'
+  if (text === 'nameplate') return 'nameplate'
+  throw new UsageFault(
+    text === 'broken'
+      ? 'the condition "broken" is not computed by this version; lit and nameplate are'
+      : `there is no condition "${text}"; expected lit or nameplate`,
+  )
+}
+
+function checkFile(path: string, options: Options): number {
+  const read = readLayoutFile(path)
+  if (!read.ok) {
+    complain(read.complaint)
+    return status.unusable
+  }
+  const layout: Layout = options.rules ? { ...read.file.layout, rules: options.rules } : read.file.layout
+  const prepared = prepare(layout)
+  const found = inspection(prepared, layout.wiring, solver(prepared)(layout.wiring), options.condition)
+  process.stdout.write(
+    options.json
+      ? `${JSON.stringify(checkJson(path, layout, found))}\n`
+      : checkText(path, layout, found, { all: options.all, condition: options.condition }),
+  )
+  return somethingToFix(found) ? status.somethingToFix : status.fine
+}
+
+/** A pair, a dark or overloaded circuit, a part that could not be modelled, a rule set that is missing. */
+export const somethingToFix = ({ pairs, circuits, cautions }: Inspection): boolean =>
+  pairs.some((p) => p.verdict === 'fix') ||
+  circuits.some((c) => c.verdict === 'fix') ||
+  cautions.some((c) => c.code === 'not-modelled' || c.code === 'rules-missing')

@@ -1,0 +1,36 @@
+/** Help texts of the commands. */
+import { standingCaution } from '../rules/common-practice.js'
+
+export const usage = {
+  tubewright: 'tubewright LAYOUT [--color WHEN] [--ground dark|light] [--ascii]',
+  check: 'tubewright check LAYOUT… [--json] [--condition lit|nameplate] [--rules NAME,NAME] [--all]',
+  netlist: 'tubewright netlist LAYOUT',
+} as const
+
+export const helpText = `tubewright – potentials, stray current and gaps of neon signs
+
+  ${usage.tubewright}
+      opens the inspector, full screen. Without LAYOUT: an example sign.
+  ${usage.check}
+      the findings as text or JSON
+  ${usage.netlist}
+      the solved network as a SPICE deck (R, C, sources)
+
+Options
+  --color auto|always|never|16|256|24bit   colours (NO_COLOR and FORCE_COLOR are respected)
+  --ground dark|light                      the ground of the terminal, where it does not tell
+  --ascii                                  nothing but ASCII on the screen
+  --json                                   findings as JSON, one object a file
+  --condition lit|nameplate                what verdicts go by; lit unless said
+  --rules NAME,NAME                        rule sets instead of those of the file
+  --all                                    list every pair
+  --help, --version
+
+Keys of the inspector: ? shows them. In short: Tab walks the worst list, arrows probe freely, f feeds the
+tube under the cursor from its other end, t turns it, j jumpers two ends, u undoes, s saves, q quits.
+
+Exit status: 0 nothing to fix, 1 something to fix, 2 wrong usage or no terminal, 3 the layout cannot be
+used, 70 internal error, 128+n signal n.
+
+${standingCaution}
+`

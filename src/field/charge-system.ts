@@ -1,0 +1,270 @@
+/**
+ * Coefficients of potential of one set of segments, over K = 1/4πε0 (1/m), with the harmonics of close pairs
+ * eliminated. Below, q are total charges (one a segment) and h the harmonics (field/harmonics.ts):
+ *
+ *   P ← P_qq − P_qh P_hh⁻¹ P_hq
+ *
+ * P_hh is sparse: harmonics act on each other only between separate conductors (or legs of one, or images) that are
+ * really close; its rows are ordered so that such neighbours stand together.
+ */
+import { lineStride } from '../geometry/closest-approach.js'
+import type { Segments } from '../geometry/segments.js'
+import { rowGram } from '../math/dense.js'
+import { harmonicSelf, mutualReach, neededOrder, ringBlock } from './harmonics.js'
+import { lineMean, selfMean } from './line-mean.js'
+import { continuous, imagePair, mirrored, type NearPair, nearPair, pairOrder } from './near-pairs.js'
+import { bandOrder, factorSkyline, type Skyline, skyline, solveSkyline } from './skyline.js'
+
+export interface ChargeSystem {
+  readonly segments: Segments
+  /** mirror images in a metal face; absent without one */
+  readonly images?: Segments
+  /** highest harmonic of each segment, and the row of its first in P_hh: rows c_1, s_1, c_2, … follow */
+  readonly orders: Int32Array
+  readonly rows: Int32Array
+  readonly hh: Skyline
+  /** first row of each component of P_hh, and the end */
+  readonly components: Int32Array
+  /** P_hq by rows of P_hh: which charges, and the coefficients (a charge may appear several times) */
+  readonly charges: readonly (readonly number[])[]
+  readonly couplings: readonly (readonly number[])[]
+  /** the reduced matrix, count × count, both triangles */
+  readonly potential: Float64Array
+}
+
+/** Coefficients of one pair, segment j moved by its shift. */
+export function shiftedMean(a: Segments, b: Segments, pair: NearPair): number {
+  if (!pair.shift) return lineMean(a.lines, pair.i, b.lines, pair.j, 0)
+  const moved = b.lines.slice(lineStride * pair.j, lineStride * (pair.j + 1))
+  for (let k = 0; k < 3; k++) moved[k]! += pair.shift[k]!
+  return lineMean(a.lines, pair.i, moved, 0, 0)
+}
+
+/** P_qq before elimination, and all pairs that are near. */
+function bareSystem(
+  segments: Segments,
+  images: Segments | undefined,
+): { potential: Float64Array; near: NearPair[] } {
+  const { count, lines, radius, body, side } = segments
+  const potential = new Float64Array(count * count)
+  const near: NearPair[] = []
+  const continued = (i: number, j: number): number =>
+    i === j ? selfMean(lines[lineStride * i + 6]!, radius[i]!) : lineMean(lines, i, lines, j, radius[i]! ** 2)
+  for (let i = 0; i < count; i++) {
+    for (let j = 0; j <= i; j++) {
+      if (side[i] !== side[j]) continue
+      const one = i === j || (body[i] === body[j] && continuous(segments, i, j))
+      const pair = one ? undefined : nearPair(segments, i, segments, j, false)
+      if (pair) near.push(pair)
+      let mean = one
+        ? continued(i, j)
+        : pair
+          ? shiftedMean(segments, segments, pair)
+          : lineMean(lines, i, lines, j, 0)
+      if (images) {
+        const image = imagePair(segments, i, images, j, pair)
+        if (image) near.push(image)
+        mean -= lineMean(lines, i, images.lines, j, 0)
+      }
+      potential[i * count + j] = mean
+      potential[j * count + i] = mean
+    }
+  }
+  return { potential, near }
+}
+
+/** Highest harmonic of every segment: what its near pairs need, at least `least`. */
+function segmentOrders(
+  segments: Segments,
+  near: readonly NearPair[],
+  least: Int32Array,
+  most: number,
+): Int32Array {
+  const orders = least.slice()
+  const { radius } = segments
+  for (const { i, j, axes } of near) {
+    orders[i] = Math.max(orders[i]!, neededOrder(radius[i]!, radius[j]!, axes, most))
+    orders[j] = Math.max(orders[j]!, neededOrder(radius[j]!, radius[i]!, axes, most))
+  }
+  return orders
+}
+
+const actsMutually = ({ axes }: NearPair, a: number, b: number): boolean =>
+  axes < mutualReach * Math.sqrt(a * b)
+
+/** Rows of P_hh for every segment, the components, and the empty matrix. */
+function layOut(
+  segments: Segments,
+  near: readonly NearPair[],
+  orders: Int32Array,
+): Pick<ChargeSystem, 'rows' | 'hh' | 'components'> {
+  const neighbours: number[][] = Array.from({ length: segments.count }, () => [])
+  for (const pair of near) {
+    const { i, j } = pair
+    if (i === j || !actsMutually(pair, segments.radius[i]!, segments.radius[j]!)) continue
+    neighbours[i]!.push(j)
+    neighbours[j]!.push(i)
+  }
+  const { order, component } = bandOrder(neighbours)
+  const rows = new Int32Array(segments.count)
+  const components: number[] = []
+  let next = 0
+  order.forEach((segment, k) => {
+    if (k === 0 || component[k] !== component[k - 1]) components.push(next)
+    rows[segment] = next
+    next += 2 * orders[segment]!
+  })
+  components.push(next)
+  // every row begins where the lowest neighbour of its segment begins
+  const first = new Int32Array(next)
+  for (let i = 0; i < segments.count; i++) {
+    const lowest = neighbours[i]!.reduce((low, j) => Math.min(low, rows[j]!), rows[i]!)
+    first.fill(lowest, rows[i]!, rows[i]! + 2 * orders[i]!)
+  }
+  return { rows, hh: skyline(first), components: Int32Array.from(components) }
+}
+
+const block = new Float64Array(64 * 64)
+
+/** The system of these segments. `least`: harmonics every segment has anyway; `most`: the highest any may get. */
+export function chargeSystem(
+  segments: Segments,
+  plane: boolean,
+  least: Int32Array,
+  most: number,
+): ChargeSystem {
+  const images = plane ? mirrored(segments) : undefined
+  const { potential, near } = bareSystem(segments, images)
+  const orders = segmentOrders(segments, near, least, most)
+  const { rows, hh, components } = layOut(segments, near, orders)
+  const charges: number[][] = Array.from({ length: hh.count }, () => [])
+  const couplings: number[][] = Array.from({ length: hh.count }, () => [])
+  for (let i = 0; i < segments.count; i++) {
+    for (let m = 1; m <= orders[i]!; m++) {
+      const self = harmonicSelf(m, segments.lines[lineStride * i + 6]!)
+      for (const r of [rows[i]! + 2 * m - 2, rows[i]! + 2 * m - 1]) hh.values[hh.base[r]! + r] = self
+    }
+  }
+  const couple = (row: number, charge: number, value: number): void => {
+    charges[row]!.push(charge)
+    couplings[row]!.push(value)
+  }
+  for (const pair of near) {
+    const { i, j, image, shift } = pair
+    const other = image && images ? images : segments
+    const sign = image ? -1 : 1
+    const mi = pairOrder(pair, segments.radius[i]!, orders[i]!)
+    const mj = pairOrder(pair, segments.radius[j]!, orders[j]!)
+    const mutual = i === j || actsMutually(pair, segments.radius[i]!, segments.radius[j]!)
+    if (mutual) {
+      const wide = 2 * mj + 1
+      ringBlock(segments, i, mi, other, j, mj, shift, block)
+      for (let u = 1; u <= 2 * mi; u++) couple(rows[i]! + u - 1, j, sign * block[u * wide]!)
+      if (i !== j) for (let v = 1; v <= 2 * mj; v++) couple(rows[j]! + v - 1, i, sign * block[v]!)
+      addMutual(hh, rows[i]!, mi, rows[j]!, mj, sign)
+      continue
+    }
+    if (mi > 0) {
+      ringBlock(segments, i, mi, other, j, 0, shift, block)
+      for (let u = 1; u <= 2 * mi; u++) couple(rows[i]! + u - 1, j, sign * block[u]!)
+    }
+    if (mj > 0) {
+      ringBlock(segments, i, 0, other, j, mj, shift, block)
+      for (let v = 1; v <= 2 * mj; v++) couple(rows[j]! + v - 1, i, sign * block[v]!)
+    }
+  }
+  factorComponents(hh, components, couplings)
+  const system = {
+    segments,
+    ...(images && { images }),
+    orders,
+    rows,
+    hh,
+    components,
+    charges,
+    couplings,
+    potential,
+  }
+  eliminate(system)
+  return system
+}
+
+/** Adds the harmonic part of `block` (rows of i, columns of j) to the lower triangle of P_hh. */
+function addMutual(
+  { base, values }: Skyline,
+  ri: number,
+  mi: number,
+  rj: number,
+  mj: number,
+  sign: number,
+): void {
+  const wide = 2 * mj + 1
+  for (let u = 1; u <= 2 * mi; u++) {
+    for (let v = 1; v <= 2 * mj; v++) {
+      const r = ri + u - 1
+      const c = rj + v - 1
+      if (ri === rj && c > r) continue
+      values[base[Math.max(r, c)]! + Math.min(r, c)]! += sign * block[u * wide + v]!
+    }
+  }
+}
+
+/**
+ * Factors every component. Glass drawn through glass can make one indefinite, since pairs are moved apart one by one:
+ * its coefficients between different unknowns are then halved until it is definite.
+ */
+function factorComponents(hh: Skyline, components: Int32Array, couplings: number[][]): void {
+  for (let c = 0; c + 1 < components.length; c++) {
+    const from = components[c]!
+    const to = components[c + 1]!
+    if (from === to) continue
+    const start = hh.base[from]! + hh.first[from]!
+    const kept = hh.values.slice(start, hh.base[to - 1]! + to)
+    while (!factorSkyline(hh, from, to)) {
+      for (let r = from; r < to; r++) {
+        const row = hh.base[r]! - start
+        for (let k = hh.first[r]!; k < r; k++) kept[row + k]! *= 0.5
+        couplings[r] = couplings[r]!.map((value) => 0.5 * value)
+      }
+      hh.values.set(kept, start)
+    }
+  }
+}
+
+/** P ← P − P_qh P_hh⁻¹ P_hq, one component after the other. */
+function eliminate(
+  system: Pick<ChargeSystem, 'hh' | 'components' | 'charges' | 'couplings' | 'potential' | 'segments'>,
+): void {
+  const { hh, components, potential } = system
+  const { count } = system.segments
+  for (let c = 0; c + 1 < components.length; c++) {
+    const from = components[c]!
+    const to = components[c + 1]!
+    const { touched, columns } = componentColumns(system, from, to)
+    const size = to - from
+    for (let k = 0; k < touched.length; k++) solveSkyline(hh, from, to, columns, k * size)
+    const change = rowGram(columns, touched.length, size)
+    touched.forEach((i, p) => {
+      for (let q = 0; q < touched.length; q++)
+        potential[i * count + touched[q]!]! -= change[p * touched.length + q]!
+    })
+  }
+}
+
+/** P_hq of one component, dense: the charges it touches, and a row (length to − from) for each. */
+export function componentColumns(
+  { charges, couplings }: Pick<ChargeSystem, 'charges' | 'couplings'>,
+  from: number,
+  to: number,
+): { touched: number[]; columns: Float64Array } {
+  const place = new Map<number, number>()
+  for (let r = from; r < to; r++) for (const i of charges[r]!) if (!place.has(i)) place.set(i, place.size)
+  const size = to - from
+  const columns = new Float64Array(place.size * size)
+  for (let r = from; r < to; r++) {
+    charges[r]!.forEach((i, k) => {
+      columns[(place.get(i) ?? 0) * size + r - from]! += couplings[r]![k]!
+    })
+  }
+  return { touched: [...place.keys()], columns }
+}

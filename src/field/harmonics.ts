@@ -1,0 +1,147 @@
+/**
+ * Uneven charge around a cylinder, where another conductor is near.
+ *
+ * Besides its total charge q a segment can carry harmonics c_m, s_m: the charge per angle on its equivalent cylinder is
+ * (q + 2 Σ c_m cos mθ + 2 Σ s_m sin mθ)/2π. All potentials are tested with the same shapes (Galerkin), so every block
+ * is symmetric by construction. Order of the unknowns of one segment: q, c_1, s_1, c_2, s_2, …
+ *
+ * In two dimensions harmonic m has the potential 2 c_m/(m l) (a/R)^m cos mθ (over K = 1/4πε0), hence the self term
+ * 2/(m l); harmonics of pieces that continue each other are taken as independent, since their field dies out within a
+ * radius or two. Two such cylinders at axis distance D need orders up to where t^(2M+2) is negligible, t the ratio of
+ * the image construction (W. R. Smythe, "Static and Dynamic Electricity", cylinders as bipolar circles, from memory).
+ */
+import { lineStride } from '../geometry/closest-approach.js'
+import type { Segments } from '../geometry/segments.js'
+import { lineMean } from './line-mean.js'
+
+/** What the ring construction needs: lines, their cross frames and radii. */
+export type RingSource = Pick<Segments, 'lines' | 'frames' | 'radius'>
+
+/** Self term of harmonic m of a segment of length l, 1/m. */
+export const harmonicSelf = (m: number, l: number): number => 2 / (m * l)
+
+/** Highest order that cylinder a1 needs beside cylinder a2 at axis distance D, at most `most`; 0 when it needs none. */
+export function neededOrder(a1: number, a2: number, axes: number, most: number): number {
+  const h = (axes * axes + a1 * a1 - a2 * a2) / (2 * axes)
+  if (h <= a1) return most
+  const t = (h - Math.sqrt(h * h - a1 * a1)) / a1
+  let order = 0
+  for (let left = t * t; left > 0.003 && order < most; left *= t * t) order++
+  return order
+}
+
+/** Distances, in radii, below which each order of a cylinder is felt: index m − 1. */
+const reaches = Float64Array.from({ length: 16 }, (_, k) => ((k + 1) ** 1.5 / 0.07) ** (1 / (k + 1)))
+reaches[0] = Number(process.env.REACH ?? 14)
+/** Beyond this many radii no harmonic is felt. */
+export const harmonicReach = reaches[0]!
+
+/** Highest order of a cylinder of radius a that something at axis distance D feels, at most `most`. */
+export function feltOrder(a: number, axes: number, most: number): number {
+  let order = 0
+  while (order < most && axes < reaches[order]! * a) order++
+  return order
+}
+
+/** Harmonics of two cylinders act on each other, not only on charges, up to this distance over √(a1 a2). */
+export const mutualReach = 5
+
+/** the rings lie this deep inside the cylinders, so that the harmonics a ring cannot tell apart stay small */
+const depth = 0.3
+
+/** Weights that make order m's unknowns from the lines of a ring: (2m + 1) × lines, row-major. */
+interface Ring {
+  readonly lines: number
+  readonly cos: Float64Array
+  readonly sin: Float64Array
+  readonly weights: Float64Array
+}
+
+function makeRing(order: number): Ring {
+  const lines = order === 0 ? 1 : 2 * order + 2
+  const angle = (k: number): number => (2 * Math.PI * k) / lines
+  const weights = new Float64Array((2 * order + 1) * lines)
+  for (let k = 0; k < lines; k++) {
+    weights[k] = 1 / lines
+    for (let m = 1; m <= order; m++) {
+      const weight = 2 / (lines * depth ** m)
+      weights[(2 * m - 1) * lines + k] = weight * Math.cos(m * angle(k))
+      weights[2 * m * lines + k] = weight * Math.sin(m * angle(k))
+    }
+  }
+  const cos = Float64Array.from({ length: lines }, (_, k) => (order === 0 ? 0 : depth * Math.cos(angle(k))))
+  const sin = Float64Array.from({ length: lines }, (_, k) => (order === 0 ? 0 : depth * Math.sin(angle(k))))
+  return { lines, cos, sin, weights }
+}
+
+const rings: Ring[] = []
+function ringOf(order: number): Ring {
+  while (rings.length <= order) rings.push(makeRing(rings.length))
+  return rings[order]!
+}
+
+const most = 40
+const linesA = new Float64Array(most * lineStride)
+const linesB = new Float64Array(most * lineStride)
+const means = new Float64Array(most * most)
+const half = new Float64Array(most * most)
+
+/** The lines of a ring around segment i, moved by `shift`. */
+function layRing(
+  source: RingSource,
+  i: number,
+  ring: Ring,
+  shift: Float64Array | undefined,
+  out: Float64Array,
+): void {
+  const p = i * lineStride
+  const a = source.radius[i]!
+  for (let k = 0; k < ring.lines; k++) {
+    const x = a * ring.cos[k]!
+    const y = a * ring.sin[k]!
+    for (let d = 0; d < 3; d++) {
+      const across = x * source.frames[6 * i + d]! + y * source.frames[6 * i + 3 + d]!
+      out[k * lineStride + d] = source.lines[p + d]! + across + (shift ? shift[d]! : 0)
+      out[k * lineStride + 3 + d] = source.lines[p + 3 + d]!
+    }
+    out[k * lineStride + 6] = source.lines[p + 6]!
+  }
+}
+
+/**
+ * Coefficients between the unknowns of segment i (orders up to mi) and of segment j (up to mj), the latter moved by
+ * `shift`: (2 mi + 1) × (2 mj + 1), row-major, into `out`; 1/m.
+ */
+export function ringBlock(
+  a: RingSource,
+  i: number,
+  mi: number,
+  b: RingSource,
+  j: number,
+  mj: number,
+  shift: Float64Array | undefined,
+  out: Float64Array,
+): void {
+  const ringA = ringOf(mi)
+  const ringB = ringOf(mj)
+  layRing(a, i, ringA, undefined, linesA)
+  layRing(b, j, ringB, shift, linesB)
+  const na = ringA.lines
+  const nb = ringB.lines
+  for (let p = 0; p < na; p++)
+    for (let q = 0; q < nb; q++) means[p * nb + q] = lineMean(linesA, p, linesB, q, 0)
+  // Fourier transform along the second ring, then along the first
+  const wide = 2 * mj + 1
+  for (let p = 0; p < na; p++)
+    for (let v = 0; v < wide; v++) {
+      let sum = 0
+      for (let q = 0; q < nb; q++) sum += means[p * nb + q]! * ringB.weights[v * nb + q]!
+      half[p * wide + v] = sum
+    }
+  for (let u = 0; u < 2 * mi + 1; u++)
+    for (let v = 0; v < wide; v++) {
+      let sum = 0
+      for (let p = 0; p < na; p++) sum += ringA.weights[u * na + p]! * half[p * wide + v]!
+      out[u * wide + v] = sum
+    }
+}

@@ -1,0 +1,218 @@
+/** One lead on its route, solved against the fixed bodies: what is worth keeping between edits. */
+import type { LeadBody } from '../geometry/conductors.js'
+import { type CutRules, crossingWindows, cutPlaces, type Segments, segmentsAt } from '../geometry/segments.js'
+import { rowGram, rowProducts, solveLowerRows } from '../math/dense.js'
+import { type ChargeSystem, chargeSystem, componentColumns } from './charge-system.js'
+import { conduitCapacitance } from './conduit.js'
+import {
+  bareCross,
+  type CrossHarmonics,
+  crossHarmonics,
+  crossOrders,
+  type Extra,
+  type Joint,
+  segmentLength,
+} from './cross-system.js'
+import type { FixedField } from './fixed-field.js'
+import { harmonicSelf } from './harmonics.js'
+import { middleDistance } from './near-pairs.js'
+import { solveSkyline, solveSkylineTransposed } from './skyline.js'
+
+/** In metal conduit: only a capacitance to ground. F */
+export interface ConduitField {
+  readonly kind: 'conduit'
+  readonly lead: LeadBody
+  readonly capacitance: number
+}
+
+/** In the open. Matrices over K = 1/4πε0; l counts the lead's segments, f the fixed ones. */
+export interface OpenField {
+  readonly kind: 'open'
+  readonly lead: LeadBody
+  readonly system: ChargeSystem
+  /** P_hh⁻¹ P_hq of the lead's own harmonics, a row for each charge */
+  readonly response: Float64Array
+  /** reduced coefficients to the fixed charges, l × f */
+  readonly toFixed: Float64Array
+  /** L⁻¹ of those rows */
+  readonly solved: Float64Array
+  /** nodes × l: Wᵀ P_ff⁻¹ P_fl */
+  readonly toNodes: Float64Array
+  /** l × l: own coefficients with harmonics eliminated, and with the fixed charges eliminated as well */
+  readonly own: Float64Array
+  readonly schur: Float64Array
+  /** L_h⁻¹ P_hl of each touched component of the fixed harmonics, l rows */
+  readonly woken: ReadonlyMap<number, Float64Array>
+  /** the same of harmonics that only leads wake: l × 2 (to − from + 1) */
+  readonly extras: ReadonlyMap<number, Extra & { readonly columns: Float64Array }>
+}
+export type LeadField = ConduitField | OpenField
+
+/** harmonics a lead has anyway, ready for another lead that comes to lie on it */
+const leadHarmonics = 2
+
+/** The lead cut into segments, finer where it crosses glass or bars closely. */
+function cutLead(fixed: FixedField, lead: LeadBody): Segments {
+  const { options, plane } = fixed
+  const rules: CutRules = { usual: options.tubeSegment, least: options.least, plane }
+  const usual = options.leadSegment * lead.equivalentRadius
+  const cut = (windows: Parameters<typeof cutPlaces>[4]): Segments =>
+    segmentsAt([lead], [cutPlaces(lead.line, lead.equivalentRadius, usual, rules, windows)], rules)
+  const coarse = cut([])
+  const windows = crossingWindows(coarse, fixed.system.segments, 1, rules)[0]!
+  return windows.length > 0 ? cut(windows) : coarse
+}
+
+/** Path length from the lead's start at which it is joined to each tube it names, with the end of that tube. */
+function jointsOf(fixed: FixedField, lead: LeadBody): { body: number; leadAt: number; tubeAt: number }[] {
+  return lead.between.flatMap((name, end) => {
+    const dot = name.lastIndexOf('.')
+    const body = fixed.bodies.findIndex((b) => b.kind === 'tube' && b.name === name.slice(0, dot))
+    if (body < 0) return []
+    const tubeAt = name.slice(dot + 1) === 'a' ? 0 : fixed.bodies[body]!.line.length
+    return [{ body, leadAt: end === 0 ? 0 : lead.line.length, tubeAt }]
+  })
+}
+
+/** A lead continues the tube it is joined to where the path through the joint is under 3 × the axis distance. */
+function jointRule(fixed: FixedField, lead: LeadBody, segments: Segments): Joint {
+  const joints = jointsOf(fixed, lead)
+  const glass = fixed.system.segments
+  return (i, j) => {
+    for (const { body, leadAt, tubeAt } of joints) {
+      if (glass.body[j] !== body) continue
+      const path = Math.abs(segments.at[i]! - leadAt) + Math.abs(glass.at[j]! - tubeAt)
+      if (path < 3 * middleDistance(segments, i, glass, j))
+        return Math.max(segments.radius[i]!, glass.radius[j]!) ** 2
+      // right at the joint the two meet, however the lead turns away
+      if (path < 3 * (segments.outer[i]! + glass.outer[j]!))
+        return Math.max(segments.radius[i]!, glass.radius[j]!) ** 2
+    }
+    return 0
+  }
+}
+
+/** P_hh⁻¹ P_hq of a system, charge by charge: count × harmonics. */
+function ownResponse(system: ChargeSystem): Float64Array {
+  const { components, hh, segments } = system
+  const out = new Float64Array(segments.count * hh.count)
+  for (let c = 0; c + 1 < components.length; c++) {
+    const from = components[c]!
+    const size = components[c + 1]! - from
+    const { touched, columns } = componentColumns(system, from, from + size)
+    touched.forEach((i, k) => {
+      solveSkyline(hh, from, from + size, columns, k * size)
+      solveSkylineTransposed(hh, from, from + size, columns, k * size)
+      out.set(columns.subarray(k * size, (k + 1) * size), i * hh.count + from)
+    })
+  }
+  return out
+}
+
+/** rows[l] −= Σ_h response[l][h] harmonics[h], rows of equal width: the lead's harmonics follow its charges. */
+export function followCharges(
+  rows: Float64Array,
+  harmonics: Float64Array,
+  width: number,
+  response: Float64Array,
+  charges: number,
+): void {
+  const count = harmonics.length / width
+  for (let h = 0; h < count; h++) {
+    const row = harmonics.subarray(h * width, (h + 1) * width)
+    if (row.every((x) => x === 0)) continue
+    for (let l = 0; l < charges; l++) {
+      const share = response[l * count + h]!
+      if (share === 0) continue
+      for (let k = 0; k < width; k++) rows[l * width + k]! -= share * row[k]!
+    }
+  }
+}
+
+/** a −= b, element by element. */
+export function subtract(a: Float64Array, b: Float64Array): void {
+  for (let k = 0; k < a.length; k++) a[k]! -= b[k]!
+}
+
+/** The fixed harmonics answer the lead: takes their part off own and fixed coefficients, and keeps it for pairs. */
+function answerOfFixed(
+  { system }: FixedField,
+  cross: CrossHarmonics,
+  rows: Float64Array,
+  toFixed: Float64Array,
+  own: Float64Array,
+): Pick<OpenField, 'woken' | 'extras'> {
+  const { width } = cross
+  const l = rows.length / width
+  const f = system.segments.count
+  const woken = new Map<number, Float64Array>()
+  for (const c of cross.components) {
+    const from = system.components[c]!
+    const to = system.components[c + 1]!
+    const size = to - from
+    const half = new Float64Array(l * size)
+    for (let i = 0; i < l; i++) {
+      half.set(rows.subarray(i * width + from, i * width + to), i * size)
+      solveSkyline(system.hh, from, to, half, i * size)
+    }
+    woken.set(c, half)
+    subtract(own, rowGram(half, l, size))
+    const full = half.slice()
+    for (let i = 0; i < l; i++) solveSkylineTransposed(system.hh, from, to, full, i * size)
+    for (let r = from; r < to; r++) {
+      const charges = system.charges[r]!
+      const couplings = system.couplings[r]!
+      for (let i = 0; i < l; i++) {
+        const x = full[i * size + r - from]!
+        if (x === 0) continue
+        for (let k = 0; k < charges.length; k++) toFixed[i * f + charges[k]!]! -= x * couplings[k]!
+      }
+    }
+  }
+  const extras = new Map<number, Extra & { columns: Float64Array }>()
+  for (const [j, extra] of cross.extras) {
+    const size = 2 * (extra.to - extra.from + 1)
+    const columns = new Float64Array(l * size)
+    for (let k = 0; k < size; k++) {
+      const m = extra.from + (k >> 1)
+      const scale = 1 / Math.sqrt(harmonicSelf(m, segmentLength(system.segments, j)))
+      for (let i = 0; i < l; i++) columns[i * size + k] = scale * rows[i * width + extra.column + k]!
+    }
+    extras.set(j, { ...extra, columns })
+    subtract(own, rowGram(columns, l, size))
+  }
+  return { woken, extras }
+}
+
+/** The lead alone against glass, bars and face. Its own harmonics follow its own charges. */
+export function leadField(fixed: FixedField, lead: LeadBody): LeadField {
+  if (lead.conduit === 'metal') {
+    return { kind: 'conduit', lead, capacitance: conduitCapacitance(lead) * lead.line.length }
+  }
+  const { options, system: glass } = fixed
+  const segments = cutLead(fixed, lead)
+  const { charges: toFixed, near } = bareCross(
+    segments,
+    glass.segments,
+    glass.images,
+    jointRule(fixed, lead, segments),
+  )
+  const least = new Int32Array(segments.count).fill(Math.min(leadHarmonics, options.harmonics))
+  const orders = crossOrders(segments, glass.segments, near, least, options.harmonics)
+  const system = chargeSystem(segments, fixed.plane, orders, options.harmonics)
+  const response = ownResponse(system)
+  const cross = crossHarmonics(system, glass, near, options.harmonics)
+  const l = segments.count
+  const f = glass.segments.count
+  followCharges(toFixed, cross.toCharges, f, response, l)
+  const rows = cross.toHarmonics.subarray(0, l * cross.width)
+  followCharges(rows, cross.toHarmonics.subarray(l * cross.width), cross.width, response, l)
+  const own = system.potential.slice()
+  const answer = answerOfFixed(fixed, cross, rows, toFixed, own)
+  const solved = toFixed.slice()
+  solveLowerRows(fixed.factor, f, solved, l)
+  const schur = own.slice()
+  subtract(schur, rowGram(solved, l, f))
+  const toNodes = rowProducts(fixed.solvedWeights, fixed.nodes.count, solved, l, f)
+  return { kind: 'open', lead, system, response, toFixed, solved, toNodes, own, schur, ...answer }
+}

@@ -1,0 +1,229 @@
+/** The capacitance matrix of a wiring: fixed bodies and all its leads. */
+import { leadNode } from '../geometry/nodes.js'
+import { factorCholesky, rowGram, rowProducts, solveLowerRows } from '../math/dense.js'
+import { fourPiEpsilon } from './constants.js'
+import { bareCross, crossHarmonics, noJoint } from './cross-system.js'
+import type { NodeCapacitance } from './field.js'
+import type { FixedField } from './fixed-field.js'
+import { followCharges, type LeadField, type OpenField, subtract } from './lead-field.js'
+import { solveSkyline } from './skyline.js'
+
+/** What two open leads do to each other; over K = 1/4πε0. */
+export interface LeadPair {
+  /** a × b: coefficients with all harmonics eliminated, and with the fixed charges eliminated as well */
+  readonly between: Float64Array
+  readonly schur: Float64Array
+  /** change of a × a and of b × b: each has the other's harmonics near it. Absent: none */
+  readonly onA?: Float64Array
+  readonly onB?: Float64Array
+}
+
+/** P_qh P_hh⁻¹ P_hq with the harmonics of `lead` and the charges of another; `toCharges`: harmonics × charges. */
+function answerOfLead(
+  { system }: OpenField,
+  toCharges: Float64Array,
+  charges: number,
+): Float64Array | undefined {
+  if (toCharges.every((x) => x === 0)) return undefined
+  const h = system.hh.count
+  const rows = new Float64Array(charges * h)
+  for (let r = 0; r < h; r++) for (let i = 0; i < charges; i++) rows[i * h + r] = toCharges[r * charges + i]!
+  for (let i = 0; i < charges; i++) solveSkyline(system.hh, 0, h, rows, i * h)
+  return rowGram(rows, charges, h)
+}
+
+function transposed(a: Float64Array, rows: number, columns: number): Float64Array {
+  const out = new Float64Array(a.length)
+  for (let r = 0; r < rows; r++) for (let c = 0; c < columns; c++) out[c * rows + r] = a[r * columns + c]!
+  return out
+}
+
+/** Takes off what both leads share through the fixed harmonics. */
+function shareFixed(a: OpenField, b: OpenField, between: Float64Array): void {
+  const na = a.system.segments.count
+  const nb = b.system.segments.count
+  for (const [c, rows] of a.woken) {
+    const other = b.woken.get(c)
+    if (other) subtract(between, rowProducts(rows, na, other, nb, rows.length / na))
+  }
+  for (const [j, extra] of a.extras) {
+    const other = b.extras.get(j)
+    if (!other) continue
+    const sizeA = extra.columns.length / na
+    const sizeB = other.columns.length / nb
+    for (let i = 0; i < na; i++)
+      for (let k = 0; k < nb; k++)
+        for (let h = 0; h < Math.min(sizeA, sizeB); h++)
+          between[i * nb + k]! -= extra.columns[i * sizeA + h]! * other.columns[k * sizeB + h]!
+  }
+}
+
+function makePair(fixed: FixedField, a: OpenField, b: OpenField): LeadPair {
+  const na = a.system.segments.count
+  const nb = b.system.segments.count
+  const { charges: between, near } = bareCross(a.system.segments, b.system.segments, b.system.images, noJoint)
+  const ab = crossHarmonics(a.system, b.system, near, 0)
+  // harmonics of a follow the charges of a and act on b, and the other way round
+  followCharges(between, ab.toCharges, nb, a.response, na)
+  const harmonicsOfB = transposed(ab.toHarmonics.subarray(0, na * ab.width), na, ab.width)
+  const turned = transposed(between, na, nb)
+  followCharges(turned, harmonicsOfB, na, b.response, nb)
+  const reduced = transposed(turned, nb, na)
+  shareFixed(a, b, reduced)
+  const schur = reduced.slice()
+  subtract(schur, rowProducts(a.solved, na, b.solved, nb, fixed.system.segments.count))
+  const onB = answerOfLead(a, ab.toCharges, nb)
+  const onA = answerOfLead(b, harmonicsOfB, na)
+  return { between: reduced, schur, ...(onA && { onA }), ...(onB && { onB }) }
+}
+
+/** The same pair seen from b. */
+function turnedPair({ between, schur, onA, onB }: LeadPair, na: number, nb: number): LeadPair {
+  return {
+    between: transposed(between, na, nb),
+    schur: transposed(schur, na, nb),
+    ...(onB && { onA: onB }),
+    ...(onA && { onB: onA }),
+  }
+}
+
+/** The pair of two leads, worked out once. */
+export function leadPair(fixed: FixedField, a: OpenField, b: OpenField): LeadPair {
+  const known = fixed.pairs.get(a)?.get(b)
+  if (known) return known
+  const pair = makePair(fixed, a, b)
+  keepPair(fixed, a, b, pair)
+  keepPair(fixed, b, a, turnedPair(pair, a.system.segments.count, b.system.segments.count))
+  return pair
+}
+
+function keepPair({ pairs }: FixedField, a: OpenField, b: OpenField, pair: LeadPair): void {
+  const kept = pairs.get(a) ?? new WeakMap<LeadField, LeadPair>()
+  pairs.set(a, kept)
+  kept.set(b, pair)
+}
+
+/** Puts the lead blocks together: `part` picks what goes on the diagonal and between. */
+function assembled(
+  fixed: FixedField,
+  leads: readonly OpenField[],
+  part: 'own' | 'schur',
+): { matrix: Float64Array; starts: number[]; count: number } {
+  const starts: number[] = []
+  let count = 0
+  for (const lead of leads) {
+    starts.push(count)
+    count += lead.system.segments.count
+  }
+  const matrix = new Float64Array(count * count)
+  const add = (rows: Float64Array, p: number, q: number, sign: number): void => {
+    const n = leads[p]!.system.segments.count
+    const m = leads[q]!.system.segments.count
+    for (let i = 0; i < n; i++)
+      for (let j = 0; j < m; j++)
+        matrix[(starts[p]! + i) * count + starts[q]! + j]! += sign * rows[i * m + j]!
+  }
+  leads.forEach((a, p) => {
+    add(a[part], p, p, 1)
+    for (let q = 0; q < p; q++) {
+      const pair = leadPair(fixed, a, leads[q]!)
+      add(part === 'own' ? pair.between : pair.schur, p, q, 1)
+      if (pair.onA) add(pair.onA, p, p, -1)
+      if (pair.onB) add(pair.onB, q, q, -1)
+    }
+  })
+  for (let i = 0; i < count; i++) for (let j = 0; j < i; j++) matrix[j * count + i] = matrix[i * count + j]!
+  return { matrix, starts, count }
+}
+
+/** The whole reduced matrix of coefficients of potential, fixed charges first, over K: for tests and for study. */
+export function reducedPotential(
+  fixed: FixedField,
+  leads: readonly OpenField[],
+): { count: number; matrix: Float64Array } {
+  const f = fixed.system.segments.count
+  const block = assembled(fixed, leads, 'own')
+  const count = f + block.count
+  const matrix = new Float64Array(count * count)
+  for (let i = 0; i < f; i++)
+    for (let j = 0; j < f; j++) matrix[i * count + j] = fixed.system.potential[i * f + j]!
+  leads.forEach((lead, p) => {
+    for (let l = 0; l < lead.system.segments.count; l++)
+      for (let j = 0; j < f; j++) {
+        const row = f + block.starts[p]! + l
+        matrix[row * count + j] = lead.toFixed[l * f + j]!
+        matrix[j * count + row] = lead.toFixed[l * f + j]!
+      }
+  })
+  for (let i = 0; i < block.count; i++)
+    for (let j = 0; j < block.count; j++) matrix[(f + i) * count + f + j] = block.matrix[i * block.count + j]!
+  return { count, matrix }
+}
+
+/** Rows of Gᵀ: for every fixed node and every lead, how it drives the lead charges once the fixed ones are gone. */
+function leadDrives(
+  fixed: FixedField,
+  leads: readonly OpenField[],
+  starts: readonly number[],
+  count: number,
+): Float64Array {
+  const nodes = fixed.nodes.count
+  const rows = new Float64Array((nodes + leads.length) * count)
+  leads.forEach((lead, p) => {
+    const n = lead.system.segments.count
+    for (let v = 0; v < nodes; v++) {
+      for (let l = 0; l < n; l++) rows[v * count + starts[p]! + l] = -lead.toNodes[v * n + l]!
+    }
+    rows.fill(1, (nodes + p) * count + starts[p]!, (nodes + p) * count + starts[p]! + n)
+  })
+  return rows
+}
+
+/**
+ * Maxwell matrix of all nodes for these leads, in the order of the wiring; F. Only the lead charges are solved here:
+ * with the fixed charges eliminated, S = P_ll − P_lf P_ff⁻¹ P_fl, C = C_fixed + Gᵀ S⁻¹ G.
+ */
+export function nodeCapacitance(fixed: FixedField, leads: readonly LeadField[]): NodeCapacitance {
+  const open = leads.filter((lead) => lead.kind === 'open')
+  const { matrix: schur, starts, count: charges } = assembled(fixed, open, 'schur')
+  if (!factorCholesky(schur, charges)) throw new Error('coefficients of the leads are not positive definite')
+  const drives = leadDrives(fixed, open, starts, charges)
+  const rows = fixed.nodes.count + open.length
+  solveLowerRows(schur, charges, drives, rows)
+  const solved = rowGram(drives, rows, charges)
+  // from fixed nodes and open leads to the order of the wiring
+  const count = fixed.nodes.count + leads.length
+  const matrix = new Float64Array(count * count)
+  const place: number[] = Array.from({ length: fixed.nodes.count }, (_, v) => v)
+  leads.forEach((lead, k) => {
+    if (lead.kind === 'open') place.push(leadNode(fixed.nodes, k))
+  })
+  const f = fixed.nodes.count
+  for (let i = 0; i < rows; i++) {
+    const row = place[i]! * count
+    for (let j = 0; j < rows; j++) {
+      const base = i < f && j < f ? fixed.nodeMatrix[i * f + j]! : 0
+      matrix[row + place[j]!] = fourPiEpsilon * (base + solved[i * rows + j]!)
+    }
+  }
+  if (fixed.nodes.face !== undefined) floatFace(matrix, count, fixed.nodes.face, fixed.plate)
+  // conduit counts as grounded, whatever the face does
+  leads.forEach((lead, k) => {
+    if (lead.kind === 'conduit') matrix[leadNode(fixed.nodes, k) * (count + 1)] = lead.capacitance
+  })
+  return { count, matrix }
+}
+
+/** The floating face takes the place of ground for all that sees it, and has its own capacitance to ground. */
+function floatFace(matrix: Float64Array, count: number, face: number, plate: number): void {
+  let total = 0
+  for (let i = 0; i < count; i++) {
+    let sum = 0
+    for (let j = 0; j < count; j++) sum += matrix[i * count + j]!
+    if (i === face) continue
+    matrix[i * count + face] = -sum
+    matrix[face * count + i] = -sum
+    total += sum
+  }
+  matrix[face * count + face] = total + plate
+}

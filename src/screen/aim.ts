@@ -1,0 +1,240 @@
+/** What the cursor is on and how it moves: over the worst list, and freely over the map. */
+import type { Body } from '../geometry/conductors.js'
+import { pointAt } from '../geometry/polyline.js'
+import type { BodyRef } from '../geometry/runs.js'
+import type { PairFinding } from '../rules/findings.js'
+import { probeFinding } from '../rules/pairs.js'
+import {
+  cellAt,
+  fitWindow,
+  type MapWindow,
+  placeAt,
+  resized,
+  revealed,
+  turnedOver,
+  zoomed,
+} from '../view/map-window.js'
+import { bodiesNear, type Near } from '../view/sight.js'
+import { frame } from './frame.js'
+import type { Action } from './keys.js'
+import { type Foot, listedPairs, type Next, type State, selectedPair } from './state.js'
+
+/** cells round the cursor in which it still catches a conductor */
+const reachInCells = 1.6
+
+/** The part of the sign on the map: the user's window, or the whole sign fitted. */
+export function mapWindow(state: State): MapWindow {
+  const { map } = frame(state.columns, state.rows, state.present.sign.wiring.circuits.length)
+  const { window, behind } = state.view
+  const base = window
+    ? resized(window, map.width, map.height)
+    : fitWindow(signBounds(state), map.width, map.height)
+  return base.mirrored === behind ? base : turnedOver(base)
+}
+
+/** The rectangle round all glass, leads, metal and the supply. */
+function signBounds({ inspection }: State) {
+  const { bodies, leads } = inspection.context
+  let [left, top, right, bottom] = [Infinity, Infinity, -Infinity, -Infinity]
+  for (const { line } of [...bodies, ...leads])
+    for (let i = 0; i < line.points.length; i += 3) {
+      left = Math.min(left, line.points[i]!)
+      right = Math.max(right, line.points[i]!)
+      top = Math.min(top, line.points[i + 1]!)
+      bottom = Math.max(bottom, line.points[i + 1]!)
+    }
+  return { left, top, right, bottom }
+}
+
+export const bodyOf = ({ inspection }: Pick<State, 'inspection'>, ref: BodyRef): Body | undefined =>
+  ref.kind === 'fixed'
+    ? inspection.context.bodies[ref.index]
+    : ref.kind === 'lead'
+      ? inspection.context.leads[ref.index]
+      : undefined
+
+/** The two places of the pair the cursor is on. */
+export function footsOfPair(state: State): { a: Foot; b: Foot } | undefined {
+  if (state.cursor.on !== 'pair') return undefined
+  const found = selectedPair(state)
+  return (
+    found && {
+      a: { body: found.pair.a.body, at: found.pair.a.at },
+      b: { body: found.pair.b.body, at: found.pair.b.at },
+    }
+  )
+}
+
+/** Bodies under a free cursor, the one it has picked first. */
+export function underCursor(state: State): readonly Near[] {
+  const { cursor, inspection } = state
+  if (cursor.on !== 'map') return []
+  const { bodies, leads } = inspection.context
+  const reach = reachInCells * mapWindow(state).step * 2
+  const found = bodiesNear(bodies, leads, cursor.x, cursor.y, reach)
+  const first = found.length > 0 ? cursor.pick % found.length : 0
+  return [...found.slice(first), ...found.slice(0, first)]
+}
+
+/** The place on a conductor that the cursor is on. */
+export function footUnderCursor(state: State): Foot | undefined {
+  const pair = footsOfPair(state)
+  if (pair && state.cursor.on === 'pair') return pair[state.cursor.side]
+  return underCursor(state)[0]
+}
+
+/** Where the cursor is in the drawing, m. */
+export function placeOfCursor(state: State): { x: number; y: number } | undefined {
+  if (state.cursor.on === 'map') return { x: state.cursor.x, y: state.cursor.y }
+  const found = selectedPair(state)
+  if (!found) return undefined
+  const spot = state.cursor.side === 'a' ? found.pair.a : found.pair.b
+  // the face has no place of its own: stay with the part in front of it
+  const [x, y] = (spot.kind === 'face' ? found.pair.a : spot).point
+  return { x, y }
+}
+
+/** The finding between mark and cursor, or of the pair the cursor is on. */
+export function findingInView(state: State): PairFinding | undefined {
+  if (state.cursor.on === 'pair') return selectedPair(state)?.pair
+  const here = footUnderCursor(state)
+  if (!state.mark || !here) return undefined
+  return findingBetween(state, state.mark, here)
+}
+
+function findingBetween(state: State, a: Foot, b: Foot): PairFinding | undefined {
+  const [one, two] = [bodyOf(state, a.body), bodyOf(state, b.body)]
+  if (!one || !two) return undefined
+  const [p, q] = [pointAt(one.line, a.at), pointAt(two.line, b.at)]
+  const apart = Math.hypot(p[0] - q[0], p[1] - q[1], p[2] - q[2])
+  return probeFinding(state.inspection.context, {
+    a: a.body,
+    b: b.body,
+    atA: Float64Array.of(a.at),
+    atB: Float64Array.of(b.at),
+    gap: Float64Array.of(Math.max(0, apart - one.outerRadius - two.outerRadius)),
+    pointA: Float64Array.from(p),
+    pointB: Float64Array.from(q),
+  })
+}
+
+/** Keys that move the cursor or the view; undefined where the key does something else. */
+export function aimByKey(state: State, action: Action): State | undefined {
+  switch (action) {
+    case 'next-pair':
+      return stepped(state, 1)
+    case 'previous-pair':
+      return stepped(state, -1)
+    case 'next-page':
+      return stepped(state, 10, false)
+    case 'previous-page':
+      return stepped(state, -10, false)
+    case 'worst-pair':
+      return onPair(state, 0)
+    case 'other-side':
+      return otherSide(state)
+    case 'left':
+      return moved(state, -1, 0)
+    case 'right':
+      return moved(state, 1, 0)
+    case 'up':
+      return moved(state, 0, -1)
+    case 'down':
+      return moved(state, 0, 1)
+    case 'far-left':
+      return moved(state, -10, 0)
+    case 'far-right':
+      return moved(state, 10, 0)
+    case 'far-up':
+      return moved(state, 0, -5)
+    case 'far-down':
+      return moved(state, 0, 5)
+    case 'zoom-in':
+      return zoomedBy(state, 1.5)
+    case 'zoom-out':
+      return zoomedBy(state, 1 / 1.5)
+    default:
+      return undefined
+  }
+}
+
+/** Steps along the list; round its ends with a single step, not with a page. */
+function stepped(state: State, by: number, round = true): State {
+  const count = listedPairs(state).length
+  if (count === 0) return state
+  // coming back from the map, the first step goes to where the list was left
+  if (state.cursor.on === 'map') return onPair(state, 0)
+  const index = (selectedPair(state)?.index ?? 0) + by
+  return onPair(state, round ? ((index % count) + count) % count : Math.min(count - 1, Math.max(0, index)))
+}
+
+export function onPair(state: State, index: number): State {
+  const pair = listedPairs(state)[index]
+  const { mark: _, ...unmarked } = state
+  return inView({ ...unmarked, cursor: { on: 'pair', key: pair?.key, side: 'a' } })
+}
+
+function otherSide(state: State): State {
+  const { cursor } = state
+  return cursor.on === 'pair'
+    ? inView({ ...state, cursor: { ...cursor, side: cursor.side === 'a' ? 'b' : 'a' } })
+    : { ...state, cursor: { ...cursor, pick: cursor.pick + 1 } }
+}
+
+function moved(state: State, columns: number, rows: number): State {
+  const from = placeOfCursor(state) ?? { x: mapWindow(state).x, y: mapWindow(state).y }
+  const window = mapWindow(state)
+  const cell = cellAt(window, from.x, from.y)
+  const to = placeAt(window, { column: cell.column + columns, row: cell.row + rows })
+  return inView({ ...state, cursor: { on: 'map', x: to.x, y: to.y, pick: 0 } })
+}
+
+/** A zoomed view follows the cursor. */
+export function inView(state: State): State {
+  const place = placeOfCursor(state)
+  if (!state.view.window || !place) return state
+  return { ...state, view: { ...state.view, window: revealed(mapWindow(state), place.x, place.y) } }
+}
+
+function zoomedBy(state: State, factor: number): State {
+  const window = mapWindow(state)
+  const place = placeOfCursor(state) ?? { x: window.x, y: window.y }
+  return {
+    ...state,
+    view: { ...state.view, window: zoomed(window, factor, cellAt(window, place.x, place.y)) },
+  }
+}
+
+/** Marks the place under the cursor, or takes the mark away when it is there already. */
+export function marked(state: State): Next {
+  const foot = footUnderCursor(state)
+  const say = (text: string): NonNullable<State['message']> => ({ text, level: 'plain' })
+  if (
+    state.mark &&
+    (!foot || (sameBody(foot.body, state.mark.body) && Math.abs(foot.at - state.mark.at) < 1e-6))
+  ) {
+    const { mark: _, ...rest } = state
+    return { state: { ...rest, message: say('Mark taken away.') }, effects: [] }
+  }
+  if (!foot)
+    return {
+      state: { ...state, message: say('Nothing to mark here: move the cursor onto glass, a lead or metal.') },
+      effects: [],
+    }
+  const body = bodyOf(state, foot.body)
+  const place = placeOfCursor(state)
+  const cursor: State['cursor'] =
+    state.cursor.on === 'map' || !place ? state.cursor : { on: 'map', x: place.x, y: place.y, pick: 0 }
+  return {
+    state: {
+      ...state,
+      cursor,
+      mark: { body: foot.body, at: foot.at },
+      message: say(`Marked ${body?.name ?? 'face'}. Move the cursor to probe from here; m or Esc ends it.`),
+    },
+    effects: [],
+  }
+}
+
+const sameBody = (a: BodyRef, b: BodyRef): boolean =>
+  a.kind === b.kind && (a.kind === 'face' || (b.kind !== 'face' && a.index === b.index))

@@ -1,0 +1,35 @@
+/** What an edit did to the worst pair and to the load, in one line. */
+import type { Inspection } from '../inspection.js'
+import { kvFigure, percent, severityFigure } from '../view/words.js'
+import type { Message } from './state.js'
+
+export function editChange(said: string, before: Inspection, after: Inspection): Message {
+  const [was, is] = [before.pairs[0], after.pairs[0]]
+  const difference = (p: typeof was) => (p ? kvFigure(p.difference.lit ?? p.difference.nameplate) : '–')
+  const parts = [said]
+  if (was && is)
+    parts.push(
+      `worst pair ${difference(was)} → ${difference(is)} kV (${severityFigure(was.severity)} → ${severityFigure(is.severity)} x its limit)`,
+    )
+  parts.push(`to fix ${toFix(before)} → ${toFix(after)}`)
+  parts.push(...after.circuits.map((c, i) => loadChange(before.circuits[i], c)))
+  return { text: parts.filter((p) => p !== '').join(' · '), level: level(before, after) }
+}
+
+const toFix = ({ pairs, circuits }: Inspection): number =>
+  pairs.filter((p) => p.verdict === 'fix').length + circuits.filter((c) => c.verdict === 'fix').length
+
+function loadChange(
+  was: Inspection['circuits'][number] | undefined,
+  is: Inspection['circuits'][number],
+): string {
+  const load = (c: typeof was) => (!c ? '–' : !c.lit ? 'dark' : c.load === undefined ? '–' : percent(c.load))
+  return `${is.supply} load ${load(was)} → ${load(is)}`
+}
+
+function level(before: Inspection, after: Inspection): Message['level'] {
+  const worse = (one: Inspection, other: Inspection) =>
+    toFix(one) - toFix(other) || (one.pairs[0]?.severity ?? 0) - (other.pairs[0]?.severity ?? 0)
+  const difference = worse(after, before)
+  return difference < -1e-9 ? 'good' : difference > 1e-9 ? 'bad' : 'plain'
+}

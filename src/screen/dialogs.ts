@@ -1,0 +1,230 @@
+/** Dialogs: what they ask, how an answer is read, and what follows. Figures typed carry the unit of their prompt. */
+import type { Fill, Grounding, SupplyType } from '../layout/layout.js'
+import { kvFigure, lengthFigure, maFigure, supplyShort } from '../view/words.js'
+import { onPair } from './aim.js'
+import {
+  circuitUnderCursor,
+  feedAt,
+  figureTyped,
+  fillChosen,
+  heightTyped,
+  linkName,
+  onTube,
+  say,
+  stay,
+  variantChosen,
+  variantKept,
+} from './editing.js'
+import type { Action } from './keys.js'
+import type { Choice, Dialog, Next, PickKind, PromptKind, State, SupplyFigure } from './state.js'
+
+const open = (state: State, dialog: Dialog): Next => {
+  const { message: _, ...rest } = state
+  return stay({ ...rest, dialog })
+}
+const ask = (state: State, prompt: PromptKind, title: string, text: string): Next =>
+  open(state, { kind: 'prompt', prompt, title, text })
+const choose = (state: State, pick: PickKind, title: string, choices: readonly Choice[]): Next =>
+  open(state, { kind: 'pick', pick, title, choices })
+
+export function closed(state: State): State {
+  const { dialog: _, ...rest } = state
+  return rest
+}
+
+/** Keys that open a dialog; undefined where the key does something else. */
+export function dialogByKey(state: State, action: Action): Next | undefined {
+  switch (action) {
+    case 'help':
+      return open(state, { kind: 'help', scroll: 0 })
+    case 'cautions':
+      return open(state, { kind: 'cautions', scroll: 0 })
+    case 'filter':
+      return ask(state, { for: 'filter' }, 'Show only pairs that name (empty: all)', state.filter)
+    case 'tube-height':
+      return onTube(state, (tube) => askHeight(state, tube))
+    case 'tube-fill':
+      return onTube(state, (tube) => chooseFill(state, tube))
+    case 'keep-variant':
+      return ask(state, { for: 'variant-name' }, 'Keep this wiring as variant', '')
+    case 'variants':
+      return chooseVariant(state)
+    case 'feed-here':
+      return chooseLink(state)
+    case 'supply-figures':
+      return chooseSupply(state)
+    default:
+      return undefined
+  }
+}
+
+function askHeight(state: State, tube: string): Next {
+  const { layout } = state.present.sign
+  const height = layout.tubes.find((t) => t.id === tube)?.height ?? 0
+  return ask(
+    state,
+    { for: 'tube-height', tube },
+    `Height of ${tube}, ${layout.units}`,
+    lengthFigure(height, layout.units),
+  )
+}
+
+const fills: readonly Fill[] = ['neon', 'argon-mercury', 'neon-mercury']
+const chooseFill = (state: State, tube: string): Next =>
+  choose(
+    state,
+    { for: 'fill', tube },
+    `Fill of ${tube}`,
+    fills.map((fill) => ({ label: fill, value: fill })),
+  )
+
+function chooseVariant(state: State): Next {
+  const { variants } = state.present.sign.layout
+  if (variants.length === 0)
+    return say(state, 'This file keeps no variants yet. V keeps the wiring on screen as one.')
+  return choose(
+    state,
+    { for: 'variant' },
+    'Variant',
+    variants.map((v) => ({ label: v.name, value: v.name })),
+  )
+}
+
+function chooseLink(state: State): Next {
+  const circuit = circuitUnderCursor(state)
+  const { string } = state.present.sign.wiring.circuits[circuit]!
+  const links = string
+    .slice(1)
+    .map((_, i) => ({ label: linkName(state, circuit, i + 1), value: String(i + 1) }))
+  if (links.length === 0)
+    return say(state, 'One tube only: the feed has nowhere else to go. Swap the terminals (x) instead.')
+  return choose(state, { for: 'link', circuit }, 'Move the feed to the jumper', links)
+}
+
+function chooseSupply(state: State): Next {
+  const { supplies } = state.present.sign.layout
+  return supplies.length === 1
+    ? chooseFigure(state, supplies[0]!.id)
+    : choose(
+        state,
+        { for: 'supply' },
+        'Supply',
+        supplies.map((s) => ({ label: `${s.id}  ${supplyShort(s)}`, value: s.id })),
+      )
+}
+
+const figureTitles: Record<SupplyFigure, string> = {
+  no_load_kv: 'No-load voltage, kV rms',
+  short_circuit_ma: 'Short-circuit current, mA',
+  frequency_hz: 'Frequency, Hz',
+}
+
+function chooseFigure(state: State, supply: string): Next {
+  const s = state.present.sign.layout.supplies.find((one) => one.id === supply)
+  if (!s) return say(state, `There is no supply ${supply}.`, 'bad')
+  return choose(state, { for: 'supply-figure', supply }, `Figures of ${supply}`, [
+    { label: `no-load voltage  ${kvFigure(s.noLoadVoltage)} kV`, value: 'no_load_kv' },
+    { label: `short-circuit current  ${maFigure(s.shortCircuitCurrent)} mA`, value: 'short_circuit_ma' },
+    { label: `frequency  ${s.frequency} Hz`, value: 'frequency_hz' },
+    { label: `type  ${s.type}`, value: 'type' },
+    { label: `grounding  ${s.grounding}`, value: 'grounding' },
+  ])
+}
+
+const types: readonly SupplyType[] = ['electronic', 'core-and-coil']
+const groundings: readonly Grounding[] = ['midpoint', 'one-end', 'none']
+const plain = (values: readonly string[]): Choice[] => values.map((value) => ({ label: value, value }))
+
+/** What follows when a choice is made. */
+export function picked(state: State, pick: PickKind, value: string): Next {
+  const after = closed(state)
+  switch (pick.for) {
+    case 'variant':
+      return variantChosen(after, value)
+    case 'link':
+      return feedAt(after, pick.circuit, Number(value))
+    case 'supply':
+      return chooseFigure(after, value)
+    case 'supply-figure':
+      return figureChosen(after, pick.supply, value)
+    case 'supply-type':
+      return figureTyped(after, pick.supply, { type: types.find((t) => t === value) ?? 'electronic' })
+    case 'grounding':
+      return figureTyped(after, pick.supply, { grounding: groundings.find((g) => g === value) ?? 'none' })
+    case 'fill':
+      return fillChosen(after, pick.tube, fills.find((f) => f === value) ?? 'neon')
+  }
+}
+
+function figureChosen(state: State, supply: string, value: string): Next {
+  if (value === 'type')
+    return choose(state, { for: 'supply-type', supply }, `Type of ${supply}`, plain(types))
+  if (value === 'grounding')
+    return choose(state, { for: 'grounding', supply }, `Grounding of ${supply}`, plain(groundings))
+  const s = state.present.sign.layout.supplies.find((one) => one.id === supply)
+  const figure = (['no_load_kv', 'short_circuit_ma', 'frequency_hz'] as const).find((f) => f === value)
+  if (!s || !figure) return stay(state)
+  const now = {
+    no_load_kv: s.noLoadVoltage / 1000,
+    short_circuit_ma: s.shortCircuitCurrent * 1000,
+    frequency_hz: s.frequency,
+  }[figure]
+  return ask(
+    state,
+    { for: 'supply-figure', supply, figure },
+    `${figureTitles[figure]} of ${supply}`,
+    String(Number(now.toPrecision(6))),
+  )
+}
+
+/** What follows when a value is typed: the dialog stays open, with the reason, where it cannot be read. */
+export function submitted(state: State, prompt: PromptKind, text: string): Next {
+  const after = closed(state)
+  switch (prompt.for) {
+    case 'filter':
+      return filtered(after, text)
+    case 'variant-name':
+      return variantKept(after, text)
+    case 'tube-height': {
+      const number = numberOf(text)
+      if (number === undefined)
+        return say(
+          state,
+          `"${text}" is not a number. Type the height in ${state.present.sign.layout.units}.`,
+          'bad',
+        )
+      return heightTyped(
+        after,
+        prompt.tube,
+        number * (state.present.sign.layout.units === 'in' ? 0.0254 : 0.001),
+      )
+    }
+    case 'supply-figure': {
+      const number = numberOf(text)
+      if (number === undefined)
+        return say(state, `"${text}" is not a number. ${figureTitles[prompt.figure]}.`, 'bad')
+      const figures = {
+        no_load_kv: { noLoadVoltage: number * 1000 },
+        short_circuit_ma: { shortCircuitCurrent: number / 1000 },
+        frequency_hz: { frequency: number },
+      }[prompt.figure]
+      return figureTyped(after, prompt.supply, figures)
+    }
+  }
+}
+
+/** a decimal comma is as good as a point */
+function numberOf(text: string): number | undefined {
+  const clean = text.trim().replace(',', '.')
+  const value = Number(clean)
+  return clean === '' || !Number.isFinite(value) ? undefined : value
+}
+
+function filtered(state: State, text: string): Next {
+  const next = onPair({ ...state, filter: text.trim() }, 0)
+  const found = next.cursor.on === 'pair' && next.cursor.key !== undefined
+  if (text.trim() === '') return stay(next)
+  return found
+    ? stay(next)
+    : say(next, `No pair names "${text.trim()}". / with nothing typed shows all again.`)
+}

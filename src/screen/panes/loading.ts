@@ -1,0 +1,128 @@
+/** The supply loading, live: needed voltage, mA, chart, mains and trip as bars with the limit marked. */
+import { magnitude } from '../../math/complex.js'
+import { supplyOf } from '../../rules/circuits.js'
+import type { CircuitFinding, Loading, Verdict } from '../../rules/findings.js'
+import type { Meaning } from '../../view/theme.js'
+import { hertz, kvFigure, ma, maFigure, metres, percent, supplyShort, watts } from '../../view/words.js'
+import { fitted, type Line, line, span } from '../lines.js'
+import type { State } from '../state.js'
+import { dots } from './words.js'
+
+const verdictMeaning = (verdict: Verdict): Meaning => verdict
+
+export function loadingLines(state: State, width: number, height: number): Line[] {
+  const { inspection, present } = state
+  const { circuits } = inspection
+  const each = Math.max(1, Math.floor(height / Math.max(1, circuits.length)))
+  const lines = circuits.flatMap((circuit, i) => circuitLines(state, circuit, i, width).slice(0, each))
+  if (height <= 2 && circuits[0])
+    return [
+      compactLine(state, circuits[0], width),
+      line(supplyShort(supplyOf(present.sign.layout, inspection.wiring.circuits[0]!)), 'dim'),
+    ].slice(0, height)
+  return lines.slice(0, height).map((spans) => fitted(spans, width, dots(state)))
+}
+
+/** everything that must stay in view in one row */
+function compactLine(state: State, c: CircuitFinding, width: number): Line {
+  return fitted(
+    [span(`${c.supply} `, 'title'), ...stateSpans(c), span(`  ${currents(c)}`)],
+    width,
+    dots(state),
+  )
+}
+
+function stateSpans(c: CircuitFinding): Line {
+  if (!c.solved) return [span('solving: nameplate only', 'watch')]
+  if (!c.lit) return [span('NOT LIT ', 'fix'), span(c.dark.length > 0 ? `dark from ${c.dark[0]}` : '', 'fix')]
+  return [
+    span(
+      `${kvFigure(c.neededVoltage ?? 0)} of ${kvFigure(c.noLoadVoltage)} kV rms ${percent(c.load ?? 0)}`,
+      verdictMeaning(voltageVerdict(c)),
+    ),
+  ]
+}
+
+const voltageVerdict = (c: CircuitFinding): Verdict =>
+  c.loadings.find((l) => l.by === 'voltage')?.verdict ?? 'within'
+const currents = (c: CircuitFinding): string =>
+  c.lit ? `out ${c.terminals.map((t) => maFigure(magnitude(t.current))).join(' / ')} mA` : ''
+
+function circuitLines(state: State, c: CircuitFinding, index: number, width: number): Line[] {
+  const supply = supplyOf(state.present.sign.layout, state.inspection.wiring.circuits[index]!)
+  const name: Line = [
+    span(`${c.supply} `, 'title'),
+    span(
+      `${supply.type === 'electronic' ? 'electronic' : 'core-and-coil'} ${ma(supply.shortCircuitCurrent)} ${hertz(supply.frequency)}`,
+      'dim',
+    ),
+  ]
+  if (!c.solved) return [name, line('lit solution: solving', 'watch')]
+  if (!c.lit)
+    return [
+      name,
+      line('NOT LIT', 'fix'),
+      line(c.dark.length > 0 ? `dark first: ${c.dark.join(' ')}` : 'the whole string stays dark', 'fix'),
+      ...(c.neededVoltage !== undefined
+        ? [line(`needs ${kvFigure(c.neededVoltage)} of ${kvFigure(c.noLoadVoltage)} kV rms`, 'fix')]
+        : []),
+    ]
+  const bars = c.loadings.map((l) => barLine(state, l, width))
+  return [
+    name,
+    ...bars.slice(0, 2),
+    [
+      span(`out ${c.terminals.map((t) => maFigure(magnitude(t.current))).join(' / ')} mA  `),
+      span(`stray ${ma(c.stray ?? 0)}`),
+    ],
+    [span(`residual ${ma(c.residual ?? 0)}  `), ...dimmest(c)],
+    ...bars.slice(2),
+    line(`glass ${metres(c.tubeLength)}, ${c.electrodePairs} pairs, ${watts(c.power ?? 0)}`, 'dim'),
+  ]
+}
+
+function dimmest(c: CircuitFinding): Line {
+  const [worst] = c.tubes
+    .filter((t) => t.least)
+    .sort((a, b) => (a.least?.current ?? 0) - (b.least?.current ?? 0))
+  return worst?.least ? [span(`dimmest ${worst.id} ${maFigure(worst.least.current)}`)] : []
+}
+
+const barNames: Record<Loading['by'], string> = {
+  voltage: 'volts',
+  chart: 'chart',
+  mains: 'mains',
+  residual: 'trip',
+  lead: 'lead',
+}
+
+/** `volts ████████▌···|· 64% 5.1/8.0kV`: the limit stands at the mark, more than it runs over */
+function barLine({ ascii }: State, l: Loading, width: number): Line {
+  const figures = `${percent(l.share).replace(' ', '').padStart(5)} ${barFigures(l)}`
+  const room = Math.max(6, width - 6 - figures.length - 1)
+  const limit = Math.max(3, Math.round(room * 0.8))
+  const full = Math.min(room, Math.round(l.share * limit))
+  const cells = Array.from({ length: room }, (_, i) =>
+    i === limit ? '|' : i < full ? (ascii ? '#' : '█') : ascii ? '.' : '·',
+  )
+  return [
+    span(barNames[l.by].padEnd(6), 'dim'),
+    span(cells.join(''), verdictMeaning(l.verdict)),
+    span(figures, verdictMeaning(l.verdict)),
+  ]
+}
+
+function barFigures({ by, value, limit }: Loading): string {
+  switch (by) {
+    case 'voltage':
+      return `${kvFigure(value)}/${kvFigure(limit)}kV`
+    case 'chart':
+      return `${value.toFixed(1)}/${limit.toFixed(1)}m`
+    case 'mains':
+      return `${value.toFixed(0)}/${limit.toFixed(0)}VA`
+    case 'residual':
+      return `${maFigure(value)}/${maFigure(limit)}mA`
+    case 'lead':
+      return `${(value * 1000).toFixed(0)}/${(limit * 1000).toFixed(0)}mm`
+  }
+}

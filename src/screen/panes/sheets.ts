@@ -1,0 +1,76 @@
+/** Long texts shown over the map: the help from the key table, and all cautions and assumptions. */
+import { generalCautions } from '../../rules/common-practice.js'
+import type { Meaning } from '../../view/theme.js'
+import { wrap } from '../../view/wrap.js'
+import { type KeyGroup, keyTable, keyText } from '../keys.js'
+import { fitted, type Line, line, span } from '../lines.js'
+import type { State } from '../state.js'
+import { asciiOnly, dots } from './words.js'
+
+const groupTitles: Record<KeyGroup, string> = {
+  find: 'Find and probe',
+  map: 'Map',
+  wiring: 'Wiring and figures',
+  file: 'File',
+}
+
+const marksHelp = [
+  'Colour and glyph of the glass say its potential at the instant: = ~ - negative, o about 0, + * # positive.',
+  '( and ) are the electrodes at ends a and b, 1 and 2 the terminals. Underlined: several conductors share the cell; the one furthest from 0 V is drawn.',
+  'Verdicts: ! fix, ~ watch, blank within the rule sets asked; ? means the verdict flips inside the +-30 % band of the default gradient law.',
+  'x limit: the difference there over the difference this gap may have. n: not lit, judged on nameplate.',
+]
+
+export function sheetLines(state: State, width: number): Line[] {
+  return state.dialog?.kind === 'help' ? helpLines(state, width) : cautionSheet(state, width)
+}
+
+function helpLines(state: State, width: number): Line[] {
+  const groups = Object.entries(groupTitles).flatMap(([group, title]) => [
+    line(title, 'title'),
+    ...keyTable
+      .filter((entry) => entry.group === group)
+      .map(
+        (entry): Line => [span(`  ${entry.keys.map(keyText).join(' ').padEnd(14)}`, 'key'), span(entry.does)],
+      ),
+    line(''),
+  ])
+  const always: Line[] = [
+    [span('  Esc           ', 'key'), span('take back mark, free cursor, filter; leave a dialog')],
+    [span('  Ctrl-C        ', 'key'), span('leave at once')],
+    [span('  Ctrl-Z        ', 'key'), span('suspend (fg comes back)')],
+    line(''),
+    line('Reading the screen', 'title'),
+  ]
+  return [...groups, ...always, ...paragraphs(marksHelp, width, 'text')].map((l) =>
+    fitted(l, width, dots(state)),
+  )
+}
+
+function cautionSheet(state: State, width: number): Line[] {
+  const { cautions } = state.inspection
+  const { assumed } = state.present.sign.layout
+  const text = (s: string) => (state.ascii ? asciiOnly(s) : s)
+  const lines: Line[] = [
+    line('Cautions about this sign, the most pressing first', 'title'),
+    ...(cautions.length === 0 ? [line('  none beyond the general ones')] : []),
+    ...cautions.flatMap((c) => paragraphs([text(`${c.level}: ${c.text}`)], width, `banner-${c.level}`)),
+    line(''),
+    line('Always', 'title'),
+    ...paragraphs(generalCautions.map(text), width, 'text'),
+    line(''),
+    line('Assumed, because the layout does not say', 'title'),
+    ...(assumed.length === 0 ? [line('  nothing')] : []),
+    ...paragraphs(
+      assumed.map((a) => text(`${a.about}: ${a.text}`)),
+      width,
+      'text',
+    ),
+  ]
+  return lines.map((l) => fitted(l, width, dots(state)))
+}
+
+const paragraphs = (texts: readonly string[], width: number, as: Meaning): Line[] =>
+  texts.flatMap((text) =>
+    wrap(text, width - 4).map((part, i) => line(`${i === 0 ? '  - ' : '    '}${part}`, as)),
+  )

@@ -1,0 +1,26 @@
+/** First row: the program, the sign, what has to be fixed, and which condition and instant is shown. */
+import { type Line, span, spread } from '../lines.js'
+import { type State, unsaved } from '../state.js'
+import { activeVariant, dots } from './words.js'
+
+export function titleLine(state: State, width: number): Line {
+  const { inspection, opened, condition, instant, solving, present } = state
+  const fix = inspection.pairs.filter((p) => p.verdict === 'fix').length
+  const dark = inspection.circuits.some((c) => c.solved && !c.lit)
+  const variant = activeVariant(state)
+  const left: Line = [
+    span(' tubewright ', 'title', 4),
+    span(` ${present.sign.layout.title || opened.name}`, 'title'),
+    ...(variant ? [span(` / ${variant}`, 'text')] : []),
+    ...(unsaved(state) ? [span(' (not saved)', 'watch')] : []),
+  ]
+  const right: Line = [
+    span(' '),
+    ...(dark ? [span('DARK ', 'fix')] : []),
+    ...(inspection.solved ? [fix > 0 ? span(`${fix} TO FIX `, 'fix') : span('0 to fix ', 'within')] : []),
+    span(`${condition.toUpperCase()} `, 'key'),
+    span(`now ${String(instant * 30).padStart(3)}${state.ascii ? ' deg' : '°'} `, 'text'),
+    ...(solving ? [span('SOLVING ', 'watch')] : []),
+  ]
+  return spread(left, right, width, dots(state))
+}

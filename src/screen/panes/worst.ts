@@ -1,0 +1,85 @@
+/** The worst list: ranked, live, scrolling so that the selected pair stays in view. */
+import type { PairFinding, Verdict } from '../../rules/findings.js'
+import { kvFigure, lengthFigure, severityFigure, spotText } from '../../view/words.js'
+import { fitted, inverse, type Line, line, span } from '../lines.js'
+import { listedPairs, type State } from '../state.js'
+import { dots } from './words.js'
+
+/** a sign for the verdict that needs no colour */
+export const verdictMark: Record<Verdict, string> = { fix: '!', watch: '~', within: ' ' }
+
+export function worstLines(state: State, width: number, height: number): Line[] {
+  const pairs = listedPairs(state)
+  const { cursor, present } = state
+  const units = present.sign.layout.units
+  const selected =
+    cursor.on === 'pair'
+      ? Math.max(
+          0,
+          pairs.findIndex((p) => p.key === cursor.key),
+        )
+      : -1
+  const head = headLine(state, pairs, width)
+  if (height <= 1) return [head]
+  if (pairs.length === 0)
+    return [
+      head,
+      line(state.filter ? ' no pair names this text' : ' no two conductors pass within reach', 'dim'),
+    ]
+  const room = height - 1
+  const first = scrollTo(selected, pairs.length, room)
+  const rows = pairs.slice(first, first + room).map((pair, i) => {
+    const chosen = first + i === selected
+    const spans = rowSpans(pair, units, width, state.condition)
+    return fitted(
+      chosen ? spans.map((s) => ({ ...s, marks: inverse })) : spans,
+      width,
+      dots(state),
+      chosen ? span('', 'text', inverse) : undefined,
+    )
+  })
+  return [head, ...rows]
+}
+
+/** the first row shown: the list stands still until the selected row would leave it */
+function scrollTo(selected: number, count: number, room: number): number {
+  if (selected < 0 || count <= room) return 0
+  return Math.min(count - room, Math.max(0, selected - Math.floor(room / 2)))
+}
+
+function headLine(state: State, pairs: readonly PairFinding[], width: number): Line {
+  const count = (verdict: Verdict) => pairs.filter((p) => p.verdict === verdict).length
+  const units = state.present.sign.layout.units
+  const name = state.filter ? `/${state.filter} ` : 'worst '
+  const counts = `${count('fix')} fix ${count('watch')} watch`
+  const columns = `${units.padStart(6)} ${(state.condition === 'lit' ? 'kV rms' : 'kV n.p.').padStart(7)} x limit`
+  const left: Line = [span(name, 'title'), span(counts, count('fix') > 0 ? 'fix' : 'dim')]
+  const wide = width >= name.length + counts.length + columns.length + 2
+  return wide
+    ? [...fitted(left, width - columns.length, dots(state)), span(columns, 'dim')]
+    : [
+        ...fitted(left, width - 14, dots(state)),
+        span(
+          ' mm kVrms    x'
+            .replace('mm', units)
+            .replace('kVrms', state.condition === 'lit' ? 'kVrms' : 'kV np'),
+          'dim',
+        ),
+      ]
+}
+
+function rowSpans(pair: PairFinding, units: 'mm' | 'in', width: number, condition: State['condition']): Line {
+  const wide = width >= 45
+  const shown =
+    condition === 'lit' ? (pair.difference.lit ?? pair.difference.nameplate) : pair.difference.nameplate
+  const kv = kvFigure(shown) + (condition === 'lit' && pair.difference.lit === undefined ? 'n' : '')
+  const figures = wide
+    ? `${lengthFigure(pair.gap, units).padStart(6)} ${kv.padStart(7)} ${severityFigure(pair.severity).padStart(7)}`
+    : `${lengthFigure(pair.gap, units).padStart(4)} ${kv.padStart(5)} ${severityFigure(pair.severity).padStart(4)}`
+  const names = `${spotText(pair.a, units)} ${spotText(pair.b, units)}`
+  return [
+    span(`${verdictMark[pair.verdict]}${pair.unsure ? '?' : ' '}`, pair.verdict),
+    ...fitted([span(names)], width - figures.length - 3, '~'),
+    span(` ${figures}`, pair.verdict === 'within' ? 'text' : pair.verdict),
+  ]
+}

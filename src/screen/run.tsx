@@ -1,0 +1,162 @@
+/** The inspector on a real terminal: store, worker, keys and screen put together. */
+import { render } from 'ink'
+import { type LayoutFile, saveSign } from '../files.js'
+import { inspection, prepare } from '../inspection.js'
+import { defaultGlyphs } from '../view/map.js'
+import type { Theme } from '../view/theme.js'
+import { frame, smallest } from './frame.js'
+import { Inspector, type Store } from './inspector.js'
+import { mapPane } from './map-pane.js'
+import { type Event, reduce } from './reduce.js'
+import type { Solving } from './solving.js'
+import type { Effect, State } from './state.js'
+import { frameSink } from './terminal/frame-sink.js'
+import { keyPump } from './terminal/key-pump.js'
+import { openScreen } from './terminal/open-screen.js'
+
+export interface RunOptions {
+  readonly theme: Theme
+  readonly ascii: boolean
+  /** prints bytes and times of the run when it is over */
+  readonly measure: boolean
+}
+
+export function initialState(
+  file: LayoutFile,
+  options: Pick<RunOptions, 'theme' | 'ascii'>,
+  columns: number,
+  rows: number,
+): State {
+  const prepared = prepare(file.layout)
+  const sign = { layout: file.layout, wiring: file.layout.wiring }
+  const found = inspection(prepared, sign.wiring)
+  return {
+    columns,
+    rows,
+    ascii: options.ascii,
+    opened: { path: file.path, name: file.name, source: file.source, sign },
+    present: { sign, said: 'as filed' },
+    past: [],
+    future: [],
+    prepared,
+    inspection: found,
+    solving: true,
+    revision: 0,
+    condition: 'lit',
+    instant: 0,
+    filter: '',
+    cursor: { on: 'pair', key: undefined, side: 'a' },
+    view: { glyphs: defaultGlyphs(options.theme.level), names: true, behind: false },
+  }
+}
+
+export function runInspector(file: LayoutFile, options: RunOptions, worker: Solving): void {
+  const out = process.stdout
+  let state = initialState(file, options, out.columns || 80, out.rows || 24)
+  let glass = 0
+  let quitAfterSave = false
+  const listeners = new Set<() => void>()
+
+  const screen = openScreen({ onResume: () => sink.repaint() })
+  const sink = frameSink(out)
+  const map = mapPane(options.theme)
+  const pump = keyPump(process.stdin, { onKey, onPaste: () => state.dialog?.kind !== 'prompt' })
+
+  const store: Store = {
+    subscribe(listener) {
+      listeners.add(listener)
+      return () => listeners.delete(listener)
+    },
+    state: () => state,
+    dispatch,
+  }
+
+  function dispatch(event: Event): void {
+    const before = state
+    const next = reduce(state, event)
+    state = next.state
+    if (state.prepared.runs !== before.prepared.runs) glass++
+    showMap()
+    for (const listener of listeners) listener()
+    for (const effect of next.effects) perform(effect)
+  }
+
+  /** The map lies over the frame, except where a dialog is open in front of it. */
+  function showMap(): void {
+    const { columns, rows, dialog } = state
+    const small = columns < smallest.columns || rows < smallest.rows
+    if (small || dialog?.kind === 'help' || dialog?.kind === 'cautions') {
+      sink.setOverlay('map', undefined)
+      return
+    }
+    const box = frame(columns, rows, state.present.sign.wiring.circuits.length).map
+    const grid = map.grid(state, box)
+    const height =
+      dialog?.kind === 'prompt'
+        ? 2
+        : dialog?.kind === 'pick'
+          ? Math.min(box.height, dialog.choices.length + 1)
+          : 0
+    sink.setOverlay('map', height > 0 ? { ...grid, holes: [{ ...box, height }] } : grid)
+  }
+
+  function perform(effect: Effect): void {
+    switch (effect.do) {
+      case 'solve':
+        worker.request({ revision: state.revision, glass, ...state.present.sign })
+        return
+      case 'save':
+        save(effect.force)
+        return
+      case 'quit':
+        // after a save that failed the work stays on the screen
+        if (!quitAfterSave || state.present.sign === state.opened.sign || state.dialog?.kind === 'quit') end()
+        return
+      case 'suspend':
+        screen.suspend()
+    }
+  }
+
+  function save(force: boolean): void {
+    const { path, name, source, sign } = state.opened
+    const saved = saveSign(path, source, sign, state.present.sign, force)
+    quitAfterSave = !saved.ok
+    if (saved.ok)
+      dispatch({ type: 'saved', opened: { path, name, source: saved.source, sign: state.present.sign } })
+    else dispatch({ type: 'not-saved', why: saved.why, changedOnDisk: saved.changedOnDisk })
+  }
+
+  function end(): void {
+    const { frames, updates, bytes } = sink.counts()
+    sink.close()
+    worker.close()
+    screen.leave()
+    if (options.measure) process.stderr.write(`frames ${frames}, updates ${updates}, bytes ${bytes}\n`)
+    process.exit(0)
+  }
+
+  /** Typed text and choices go on to Ink; everything else is the reducer's. */
+  function onKey(name: string): boolean {
+    sink.hurry()
+    if (name === 'ctrl-c') screen.end('SIGINT')
+    const typing = state.dialog?.kind === 'prompt' || state.dialog?.kind === 'pick'
+    if (typing && name !== 'escape' && name !== 'ctrl-z') return false
+    dispatch({ type: 'key', key: name })
+    return true
+  }
+
+  worker.onAnswer(({ revision, solved }) => dispatch({ type: 'solved', revision, solved }))
+  perform({ do: 'solve' })
+  showMap()
+  render(<Inspector store={store} theme={options.theme} />, {
+    stdout: sink.stream,
+    stdin: pump.stream,
+    debug: true,
+    patchConsole: false,
+    exitOnCtrlC: false,
+  })
+  sink.stream.on('resize', () =>
+    dispatch({ type: 'resized', columns: out.columns || 80, rows: out.rows || 24 }),
+  )
+  pump.start()
+}

@@ -1,0 +1,149 @@
+/** What the inspector holds between two keys. Plain read-only values; the reducer makes the next one. */
+
+import type { BodyRef } from '../geometry/runs.js'
+import type { Inspection, Prepared, Solved } from '../inspection.js'
+import type { PairFinding } from '../rules/findings.js'
+import type { MapWindow } from '../view/map-window.js'
+import type { Sign } from '../wiring/edits.js'
+
+/** The file as it was read. */
+export interface Opened {
+  readonly path: string
+  readonly name: string
+  readonly source: string
+  readonly sign: Sign
+}
+
+/** A place on a body: what the cursor or a mark is on. */
+export interface Foot {
+  readonly body: BodyRef
+  readonly at: number
+}
+
+/** On a pair of the list (one of its two places), or free on the map. */
+export type Cursor =
+  | { readonly on: 'pair'; readonly key: string | undefined; readonly side: 'a' | 'b' }
+  | { readonly on: 'map'; readonly x: number; readonly y: number; readonly pick: number }
+
+/** What an edit replaces, kept until the new solution is there so that before and after can be told. */
+export interface Pending {
+  readonly said: string
+  readonly before: Inspection
+}
+
+export interface Step {
+  readonly sign: Sign
+  /** what led to this sign */
+  readonly said: string
+}
+
+export type PromptKind =
+  | { readonly for: 'filter' }
+  | { readonly for: 'tube-height'; readonly tube: string }
+  | { readonly for: 'variant-name' }
+  | { readonly for: 'supply-figure'; readonly supply: string; readonly figure: SupplyFigure }
+
+export type SupplyFigure = 'no_load_kv' | 'short_circuit_ma' | 'frequency_hz'
+
+export type PickKind =
+  | { readonly for: 'variant' }
+  | { readonly for: 'link'; readonly circuit: number }
+  | { readonly for: 'supply' }
+  | { readonly for: 'supply-figure'; readonly supply: string }
+  | { readonly for: 'supply-type'; readonly supply: string }
+  | { readonly for: 'grounding'; readonly supply: string }
+  | { readonly for: 'fill'; readonly tube: string }
+
+export interface Choice {
+  readonly label: string
+  readonly value: string
+}
+
+export type Dialog =
+  | { readonly kind: 'prompt'; readonly prompt: PromptKind; readonly title: string; readonly text: string }
+  | {
+      readonly kind: 'pick'
+      readonly pick: PickKind
+      readonly title: string
+      readonly choices: readonly Choice[]
+    }
+  | { readonly kind: 'help'; readonly scroll: number }
+  | { readonly kind: 'cautions'; readonly scroll: number }
+  | { readonly kind: 'quit' }
+  | { readonly kind: 'overwrite' }
+
+export interface Message {
+  readonly text: string
+  readonly level: 'good' | 'plain' | 'bad'
+}
+
+export interface MapView {
+  /** absent: the whole sign, fitted */
+  readonly window?: MapWindow
+  readonly glyphs: 'stroke' | 'level'
+  readonly names: boolean
+  readonly behind: boolean
+}
+
+export interface State {
+  readonly columns: number
+  readonly rows: number
+  readonly ascii: boolean
+  readonly opened: Opened
+  readonly present: Step
+  readonly past: readonly Step[]
+  readonly future: readonly Step[]
+  readonly prepared: Prepared
+  /** of the present sign; while `solving`, lit figures are those of the wiring before */
+  readonly inspection: Inspection
+  readonly solved?: Solved
+  readonly solving: boolean
+  /** counts signs shown; an answer for an older one is dropped */
+  readonly revision: number
+  readonly condition: 'lit' | 'nameplate'
+  /** of twelve steps of 30 degrees */
+  readonly instant: number
+  readonly filter: string
+  readonly cursor: Cursor
+  readonly mark?: Foot
+  readonly view: MapView
+  readonly dialog?: Dialog
+  readonly message?: Message
+  readonly pending?: Pending
+}
+
+/** What the reducer asks the world to do. */
+export type Effect =
+  | { readonly do: 'solve' }
+  | { readonly do: 'save'; readonly force: boolean }
+  | { readonly do: 'quit' }
+  | { readonly do: 'suspend' }
+
+export interface Next {
+  readonly state: State
+  readonly effects: readonly Effect[]
+}
+
+export const unsaved = ({ present, opened }: State): boolean => present.sign !== opened.sign
+
+/** The pairs that pass the filter, worst first. */
+export function listedPairs({
+  inspection,
+  filter,
+}: Pick<State, 'inspection' | 'filter'>): readonly PairFinding[] {
+  if (filter === '') return inspection.pairs
+  const wanted = filter.toLowerCase()
+  return inspection.pairs.filter((p) =>
+    `${p.a.part} ${p.b.part} ${p.kind} ${p.verdict} ${p.governs}`.toLowerCase().includes(wanted),
+  )
+}
+
+/** The pair the cursor is on: by its key, else the worst. */
+export function selectedPair(state: State): { pair: PairFinding; index: number } | undefined {
+  const pairs = listedPairs(state)
+  const { cursor } = state
+  const found = cursor.on === 'pair' ? pairs.findIndex((p) => p.key === cursor.key) : -1
+  const index = Math.max(0, found)
+  const pair = pairs[index]
+  return pair && { pair, index }
+}

@@ -1,0 +1,56 @@
+/** The worker thread: prepares the capacitances of the glass and solves wirings, off the thread that reads keys. */
+import { parentPort } from 'node:worker_threads'
+import { prepare, type Solved, solver } from './inspection.js'
+import type { Layout, Wiring } from './layout/layout.js'
+
+export interface SolveJob {
+  readonly revision: number
+  /** counts changes of the glass: as long as it stays, the prepared capacitances serve */
+  readonly glass: number
+  readonly layout: Layout
+  readonly wiring: Wiring
+}
+
+export interface SolveAnswer {
+  readonly revision: number
+  readonly solved: Solved
+  /** what it took, ms */
+  readonly prepareMs: number
+  readonly solveMs: number
+}
+
+interface Ready {
+  readonly glass: number
+  readonly layout: Layout
+  readonly solve: (wiring: Wiring, layout?: Layout) => Solved
+}
+let ready: Ready | undefined
+
+parentPort?.on('message', (job: SolveJob) => {
+  const start = performance.now()
+  if (ready?.glass !== job.glass)
+    ready = { glass: job.glass, layout: job.layout, solve: solver(prepare(job.layout)) }
+  const prepared = performance.now()
+  const solved = ready.solve(job.wiring, onKnownGlass(ready.layout, job.layout))
+  const answer: SolveAnswer = {
+    revision: job.revision,
+    solved,
+    prepareMs: prepared - start,
+    solveMs: performance.now() - prepared,
+  }
+  parentPort?.postMessage(answer)
+})
+
+/** A layout that crossed between threads is a copy: what did not change is put back as the values known here. */
+function onKnownGlass(known: Layout, { supplies, ...layout }: Layout): Layout {
+  const same = (i: number) =>
+    JSON.stringify(known.supplies[i]?.terminals) === JSON.stringify(supplies[i]?.terminals)
+  return {
+    ...layout,
+    tubes: known.tubes,
+    metal: known.metal,
+    face: known.face,
+    routes: known.routes,
+    supplies: supplies.map((s, i) => (same(i) ? { ...s, terminals: known.supplies[i]!.terminals } : s)),
+  }
+}
