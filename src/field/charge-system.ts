@@ -10,9 +10,17 @@
 import { lineStride } from '../geometry/closest-approach.js'
 import type { Segments } from '../geometry/segments.js'
 import { rowGram } from '../math/dense.js'
-import { harmonicSelf, mutualReach, neededOrder, ringBlock } from './harmonics.js'
+import { dipoleMeans, dipoleReach, harmonicSelf, mutualReach, neededOrder, ringBlock } from './harmonics.js'
 import { lineMean, selfMean } from './line-mean.js'
-import { continuous, imagePair, mirrored, type NearPair, nearPair, pairOrder } from './near-pairs.js'
+import {
+  continuous,
+  imagePair,
+  middleDistance,
+  mirrored,
+  type NearPair,
+  nearPair,
+  pairOrder,
+} from './near-pairs.js'
 import { bandOrder, factorSkyline, type Skyline, skyline, solveSkyline } from './skyline.js'
 
 export interface ChargeSystem {
@@ -40,14 +48,19 @@ export function shiftedMean(a: Segments, b: Segments, pair: NearPair): number {
   return lineMean(a.lines, pair.i, moved, 0, 0)
 }
 
-/** P_qq before elimination, and all pairs that are near. */
+/** bits of `settled`: no dipole rule for this pair, or for its image */
+export const directSettled = 1
+export const imageSettled = 2
+
+/** P_qq before elimination, all pairs that are near, and which pairs (j ≤ i) need no dipole rule. */
 function bareSystem(
   segments: Segments,
   images: Segments | undefined,
-): { potential: Float64Array; near: NearPair[] } {
+): { potential: Float64Array; near: NearPair[]; settled: Uint8Array } {
   const { count, lines, radius, body, side } = segments
   const potential = new Float64Array(count * count)
   const near: NearPair[] = []
+  const settled = new Uint8Array(count * count)
   const continued = (i: number, j: number): number =>
     i === j ? selfMean(lines[lineStride * i + 6]!, radius[i]!) : lineMean(lines, i, lines, j, radius[i]! ** 2)
   for (let i = 0; i < count; i++) {
@@ -56,6 +69,7 @@ function bareSystem(
       const one = i === j || (body[i] === body[j] && continuous(segments, i, j))
       const pair = one ? undefined : nearPair(segments, i, segments, j, false)
       if (pair) near.push(pair)
+      if (one || pair) settled[i * count + j]! |= directSettled
       let mean = one
         ? continued(i, j)
         : pair
@@ -64,13 +78,14 @@ function bareSystem(
       if (images) {
         const image = imagePair(segments, i, images, j, pair)
         if (image) near.push(image)
+        if (image) settled[i * count + j]! |= imageSettled
         mean -= lineMean(lines, i, images.lines, j, 0)
       }
       potential[i * count + j] = mean
       potential[j * count + i] = mean
     }
   }
-  return { potential, near }
+  return { potential, near, settled }
 }
 
 /** Highest harmonic of every segment: what its near pairs need, at least `least`. */
@@ -134,7 +149,7 @@ export function chargeSystem(
   most: number,
 ): ChargeSystem {
   const images = plane ? mirrored(segments) : undefined
-  const { potential, near } = bareSystem(segments, images)
+  const { potential, near, settled } = bareSystem(segments, images)
   const orders = segmentOrders(segments, near, least, most)
   const { rows, hh, components } = layOut(segments, near, orders)
   const charges: number[][] = Array.from({ length: hh.count }, () => [])
@@ -173,6 +188,10 @@ export function chargeSystem(
       for (let v = 1; v <= 2 * mj; v++) couple(rows[j]! + v - 1, i, sign * block[v]!)
     }
   }
+  coupleDipoles(segments, images, orders, settled, (i, j, cosine, sine) => {
+    couple(rows[i]!, j, cosine)
+    couple(rows[i]! + 1, j, sine)
+  })
   factorComponents(hh, components, couplings)
   const system = {
     segments,
@@ -187,6 +206,30 @@ export function chargeSystem(
   }
   eliminate(system)
   return system
+}
+
+/** The first harmonics of all segments and the charges of others further away. */
+function coupleDipoles(
+  segments: Segments,
+  images: Segments | undefined,
+  orders: Int32Array,
+  settled: Uint8Array,
+  couple: (i: number, j: number, cosine: number, sine: number) => void,
+): void {
+  const { count, side, radius } = segments
+  const means = new Float64Array(2)
+  for (let i = 0; i < count; i++) {
+    if (orders[i] === 0) continue
+    for (let j = 0; j < count; j++) {
+      const done = settled[j <= i ? i * count + j : j * count + i]!
+      if (done === 3 || side[i] !== side[j]) continue
+      if (middleDistance(segments, i, segments, j) > dipoleReach * radius[i]!) continue
+      means.fill(0)
+      if (!(done & directSettled)) dipoleMeans(segments, i, segments, j, 1, means)
+      if (images && !(done & imageSettled)) dipoleMeans(segments, i, images, j, -1, means)
+      couple(i, j, means[0]!, means[1]!)
+    }
+  }
 }
 
 /** Adds the harmonic part of `block` (rows of i, columns of j) to the lower triangle of P_hh. */
@@ -258,13 +301,14 @@ export function componentColumns(
   to: number,
 ): { touched: number[]; columns: Float64Array } {
   const place = new Map<number, number>()
-  for (let r = from; r < to; r++) for (const i of charges[r]!) if (!place.has(i)) place.set(i, place.size)
   const size = to - from
+  for (let r = from; r < to; r++)
+    for (const i of charges[r]!) if (!place.has(i)) place.set(i, place.size * size)
   const columns = new Float64Array(place.size * size)
   for (let r = from; r < to; r++) {
-    charges[r]!.forEach((i, k) => {
-      columns[(place.get(i) ?? 0) * size + r - from]! += couplings[r]![k]!
-    })
+    const list = charges[r]!
+    const values = couplings[r]!
+    for (let k = 0; k < list.length; k++) columns[place.get(list[k]!)! + r - from]! += values[k]!
   }
   return { touched: [...place.keys()], columns }
 }

@@ -2,10 +2,10 @@
 import { lineStride } from '../geometry/closest-approach.js'
 import type { Segments } from '../geometry/segments.js'
 import type { ChargeSystem } from './charge-system.js'
-import { shiftedMean } from './charge-system.js'
-import { neededOrder, ringBlock } from './harmonics.js'
+import { directSettled, imageSettled, shiftedMean } from './charge-system.js'
+import { dipoleMeans, dipoleReach, neededOrder, ringBlock } from './harmonics.js'
 import { lineMean } from './line-mean.js'
-import { imagePair, type NearPair, nearPair, pairOrder } from './near-pairs.js'
+import { imagePair, middleDistance, mirrored, type NearPair, nearPair, pairOrder } from './near-pairs.js'
 
 /** Square to add to the distances of a pair that is joined end to end there, or 0 for separate conductors. */
 export type Joint = (i: number, j: number) => number
@@ -14,6 +14,8 @@ export const noJoint: Joint = () => 0
 export interface CrossBare {
   /** charges of a × charges of b */
   readonly charges: Float64Array
+  /** same places: bits that say where no dipole rule is needed, for the pair and for its image */
+  readonly settled: Uint8Array
   readonly near: readonly NearPair[]
 }
 
@@ -21,22 +23,28 @@ export interface CrossBare {
 export function bareCross(a: Segments, b: Segments, imagesB: Segments | undefined, joint: Joint): CrossBare {
   const charges = new Float64Array(a.count * b.count)
   const near: NearPair[] = []
+  const settled = new Uint8Array(a.count * b.count)
   for (let i = 0; i < a.count; i++) {
     for (let j = 0; j < b.count; j++) {
-      if (a.side[i] !== b.side[j]) continue
+      if (a.side[i] !== b.side[j]) {
+        settled[i * b.count + j] = directSettled | imageSettled
+        continue
+      }
       const extra = joint(i, j)
       const pair = extra > 0 ? undefined : nearPair(a, i, b, j, false)
       if (pair) near.push(pair)
+      if (pair || extra > 0) settled[i * b.count + j]! |= directSettled
       let mean = pair ? shiftedMean(a, b, pair) : lineMean(a.lines, i, b.lines, j, extra)
       if (imagesB) {
         const image = imagePair(a, i, imagesB, j, pair)
         if (image) near.push(image)
+        if (image) settled[i * b.count + j]! |= imageSettled
         mean -= lineMean(a.lines, i, imagesB.lines, j, 0)
       }
       charges[i * b.count + j] = mean
     }
   }
-  return { charges, near }
+  return { charges, near, settled }
 }
 
 /** Highest harmonic each segment of a needs because of b, at least `least`. */
@@ -99,7 +107,7 @@ const block = new Float64Array(64 * 64)
 export function crossHarmonics(
   a: ChargeSystem,
   b: ChargeSystem,
-  near: readonly NearPair[],
+  { near, settled }: CrossBare,
   most: number,
 ): CrossHarmonics {
   const extras = extraHarmonics(a.segments, b, near, most)
@@ -128,7 +136,35 @@ export function crossHarmonics(
     }
     if (mj > 0 && b.orders[j]! > 0) touchedRows.add(b.rows[j]!)
   }
+  dipolesOfB(a.segments, b, settled, (i, j, cosine, sine) => {
+    toHarmonics[i * width + b.rows[j]!]! += cosine
+    toHarmonics[i * width + b.rows[j]! + 1]! += sine
+    touchedRows.add(b.rows[j]!)
+  })
   return { toCharges, toHarmonics, width, extras, components: componentsOf(b, touchedRows) }
+}
+
+/** The first harmonics of b and the charges of a further away. */
+function dipolesOfB(
+  a: Segments,
+  b: ChargeSystem,
+  settled: Uint8Array,
+  couple: (i: number, j: number, cosine: number, sine: number) => void,
+): void {
+  const { segments, orders, images } = b
+  const imagesA = images && mirrored(a)
+  const means = new Float64Array(2)
+  for (let j = 0; j < segments.count; j++) {
+    if (orders[j] === 0) continue
+    for (let i = 0; i < a.count; i++) {
+      const done = settled[i * segments.count + j]!
+      if (done === 3 || middleDistance(a, i, segments, j) > dipoleReach * segments.radius[j]!) continue
+      means.fill(0)
+      if (!(done & directSettled)) dipoleMeans(segments, j, a, i, 1, means)
+      if (imagesA && !(done & imageSettled)) dipoleMeans(segments, j, imagesA, i, -1, means)
+      couple(i, j, means[0]!, means[1]!)
+    }
+  }
 }
 
 /** Components of the system that hold these rows. */

@@ -26,15 +26,19 @@ export function neededOrder(a1: number, a2: number, axes: number, most: number):
   if (h <= a1) return most
   const t = (h - Math.sqrt(h * h - a1 * a1)) / a1
   let order = 0
-  for (let left = t * t; left > 0.003 && order < most; left *= t * t) order++
+  for (let left = t * t; left > 0.0015 && order < most; left *= t * t) order++
   return order
 }
 
 /** Distances, in radii, below which each order of a cylinder is felt: index m − 1. */
 const reaches = Float64Array.from({ length: 16 }, (_, k) => ((k + 1) ** 1.5 / 0.07) ** (1 / (k + 1)))
-reaches[0] = Number(process.env.REACH ?? 14)
-/** Beyond this many radii no harmonic is felt. */
+/** Beyond this many radii no harmonic but the first is felt, and that as a point dipole. */
 export const harmonicReach = reaches[0]!
+/**
+ * Point dipoles are felt up to this many radii. Where other glass shields two conductors from each other almost
+ * completely, what is left between them would get the wrong sign without the dipoles of the glass between.
+ */
+export const dipoleReach = 60
 
 /** Highest order of a cylinder of radius a that something at axis distance D feels, at most `most`. */
 export function feltOrder(a: number, axes: number, most: number): number {
@@ -144,4 +148,31 @@ export function ringBlock(
       for (let p = 0; p < na; p++) sum += ringA.weights[u * na + p]! * half[p * wide + v]!
       out[u * wide + v] = sum
     }
+}
+
+/**
+ * Coefficients between the first harmonic of segment i (cosine, sine: a dipole a·e at its middle) and the charge of a
+ * far segment j, 1/m, added to out[0] and out[1] with this sign.
+ */
+export function dipoleMeans(
+  a: RingSource,
+  i: number,
+  b: RingSource,
+  j: number,
+  sign: number,
+  out: Float64Array,
+): void {
+  const p = i * lineStride
+  const q = j * lineStride
+  const l = a.lines[p + 6]! / 2
+  const m = b.lines[q + 6]! / 2
+  const x = b.lines[q]! + m * b.lines[q + 3]! - a.lines[p]! - l * a.lines[p + 3]!
+  const y = b.lines[q + 1]! + m * b.lines[q + 4]! - a.lines[p + 1]! - l * a.lines[p + 4]!
+  const z = b.lines[q + 2]! + m * b.lines[q + 5]! - a.lines[p + 2]! - l * a.lines[p + 5]!
+  const square = x * x + y * y + z * z
+  const scale = (sign * a.radius[i]!) / (square * Math.sqrt(square))
+  const e = 6 * i
+  const { frames } = a
+  out[0]! += scale * (x * frames[e]! + y * frames[e + 1]! + z * frames[e + 2]!)
+  out[1]! += scale * (x * frames[e + 3]! + y * frames[e + 4]! + z * frames[e + 5]!)
 }

@@ -191,17 +191,13 @@ export function leadField(fixed: FixedField, lead: LeadBody): LeadField {
   }
   const { options, system: glass } = fixed
   const segments = cutLead(fixed, lead)
-  const { charges: toFixed, near } = bareCross(
-    segments,
-    glass.segments,
-    glass.images,
-    jointRule(fixed, lead, segments),
-  )
+  const bare = bareCross(segments, glass.segments, glass.images, jointRule(fixed, lead, segments))
+  const { charges: toFixed, near } = bare
   const least = new Int32Array(segments.count).fill(Math.min(leadHarmonics, options.harmonics))
   const orders = crossOrders(segments, glass.segments, near, least, options.harmonics)
   const system = chargeSystem(segments, fixed.plane, orders, options.harmonics)
   const response = ownResponse(system)
-  const cross = crossHarmonics(system, glass, near, options.harmonics)
+  const cross = crossHarmonics(system, glass, bare, options.harmonics)
   const l = segments.count
   const f = glass.segments.count
   followCharges(toFixed, cross.toCharges, f, response, l)

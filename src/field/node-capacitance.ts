@@ -61,8 +61,9 @@ function shareFixed(a: OpenField, b: OpenField, between: Float64Array): void {
 function makePair(fixed: FixedField, a: OpenField, b: OpenField): LeadPair {
   const na = a.system.segments.count
   const nb = b.system.segments.count
-  const { charges: between, near } = bareCross(a.system.segments, b.system.segments, b.system.images, noJoint)
-  const ab = crossHarmonics(a.system, b.system, near, 0)
+  const bare = bareCross(a.system.segments, b.system.segments, b.system.images, noJoint)
+  const between = bare.charges
+  const ab = crossHarmonics(a.system, b.system, bare, 0)
   // harmonics of a follow the charges of a and act on b, and the other way round
   followCharges(between, ab.toCharges, nb, a.response, na)
   const harmonicsOfB = transposed(ab.toHarmonics.subarray(0, na * ab.width), na, ab.width)

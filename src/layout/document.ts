@@ -5,12 +5,13 @@
 import {
   type Alias,
   Composer,
-  CST,
+  type CST,
   type Document,
   isAlias,
   isMap,
   isScalar,
   isSeq,
+  Lexer,
   type Node,
   type Pair,
   Parser,
@@ -49,10 +50,9 @@ export function readDocument(text: string): DocumentReading {
 
   refuseText(text, report)
   if (problems.length > 0) return refused()
-  const tokens = [...new Parser().parse(text)]
-  const deep = tooDeep(tokens)
-  if (deep !== undefined) {
-    report(deep, { code: 'too-deep', limit: limits.depth })
+  const tokens = documentTokens(text)
+  if (!Array.isArray(tokens)) {
+    report(tokens.tooDeep, { code: 'too-deep', limit: limits.depth })
     return refused()
   }
 
@@ -109,18 +109,21 @@ function refuseText(text: string, report: (offset: number, facts: Facts) => void
   if (at >= 0) report(at, { code: 'unreadable-character', character: text.charCodeAt(at) })
 }
 
-/** Offset of the first token under more levels than a layout can have: composing it would overflow the stack. */
-function tooDeep(tokens: readonly CST.Token[]): number | undefined {
-  let level: CST.Token[] = tokens.flatMap((t) => (t.type === 'document' && t.value ? [t.value] : []))
-  for (let depth = 0; level.length > 0; depth++) {
-    if (depth > limits.depth) return level[0]?.offset
-    level = level.flatMap((token) =>
-      CST.isCollection(token)
-        ? token.items.flatMap(({ key, value }) => [key, value].filter((t) => t !== undefined && t !== null))
-        : [],
-    )
+/**
+ * The syntax tree of the text, or where it goes deeper than any layout does: composing that would overflow the stack,
+ * and building it alone can exhaust the memory.
+ */
+function documentTokens(text: string): CST.Token[] | { readonly tooDeep: number } {
+  const parser = new Parser()
+  const tokens: CST.Token[] = []
+  for (const lexeme of new Lexer().lex(text)) {
+    const start = parser.offset
+    for (const token of parser.next(lexeme)) tokens.push(token)
+    // the lowest of the stack is the document itself
+    if (parser.stack.length - 1 > limits.depth) return { tooDeep: start }
   }
-  return undefined
+  for (const token of parser.end()) tokens.push(token)
+  return tokens
 }
 
 const secondStart = (text: string, offset: number): number => {

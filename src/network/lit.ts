@@ -160,8 +160,7 @@ function startedProblem(
   solved: CircuitOutcome,
 ): PhasorProblem {
   const problem = phasorProblem(network, c)
-  const electronic = network.circuits[c]!.supply.type === 'electronic'
-  startFrom(problem, field.re, field.im, electronic ? 1 / (solved.neededVoltage ?? 1) : 1)
+  startFrom(problem, field, solved.neededVoltage ?? 1)
   return problem
 }
 

@@ -9,7 +9,7 @@
  */
 import type { Network } from './network.js'
 import type { PhasorProblem } from './phasors.js'
-import { phasorProblem, placeCurrent, solvePhasors } from './phasors.js'
+import { phasorProblem, placeCurrent, scaleHalves, solvePhasors } from './phasors.js'
 
 /** A circuit that burns and how: `factor` multiplies gradient and electrode drop of its tubes. */
 export interface Burning {
@@ -60,6 +60,8 @@ interface Work extends Burning {
   readonly active: Int32Array
   readonly circuit: Int32Array
   products: number
+  /** how far halves that hold their own current were from it, share */
+  unbalance: number
 }
 
 /**
@@ -105,6 +107,7 @@ function prepare(network: Network, { lit, factors }: Burning, earlier?: Operatin
     active: Int32Array.from(active),
     circuit: Int32Array.from(circuit),
     products: 0,
+    unbalance: 0,
   }
 }
 
@@ -116,12 +119,21 @@ function pass(work: Work, u: Float64Array, tolerance: number): Float64Array | un
     conductance[k] = current ** network.exponent[k]! / (factors[circuit[a]!]! * network.coefficient[k]!)
   }
   power.fill(0)
+  work.unbalance = 0
   for (const [c, problem] of problems.entries()) {
     if (problem === undefined) continue
     const products = solvePhasors(problem, conductance, tolerance)
     if (products === undefined) return undefined
     work.products += products
-    scales[c] = sourceScale(problem, conductance)
+    scales[c] = 1
+    if (problem.network.circuits[c]!.supply.type === 'electronic') {
+      const [one, two] = terminalScales(problem, conductance)
+      if (problem.halves === undefined) scales[c] = Math.min(one, two)
+      else {
+        scaleHalves(problem, one, two)
+        work.unbalance = Math.max(work.unbalance, Math.abs(one - 1), Math.abs(two - 1))
+      }
+    }
     addPower(work, problem, scales[c]!)
   }
   return Float64Array.from(
@@ -130,13 +142,12 @@ function pass(work: Work, u: Float64Array, tolerance: number): Float64Array | un
   )
 }
 
-/** An electronic supply holds its short-circuit current in the terminal that carries more. */
-function sourceScale(problem: PhasorProblem, conductance: Float64Array): number {
+/** What would bring the current of either terminal to the short-circuit current, which the greater of them keeps. */
+function terminalScales(problem: PhasorProblem, conductance: Float64Array): readonly [number, number] {
   const { supply, from, to } = problem.network.circuits[problem.source]!
-  if (supply.type !== 'electronic') return 1
-  const one = Math.hypot(...placeCurrent(problem, conductance, from))
-  const two = Math.hypot(...placeCurrent(problem, conductance, to))
-  return supply.shortCircuitCurrent / Math.max(one, two)
+  const scale = (place: number) =>
+    supply.shortCircuitCurrent / Math.hypot(...placeCurrent(problem, conductance, place))
+  return [scale(from), scale(to)]
 }
 
 /** Adds |I|² of one supply to every stretch. */
@@ -166,7 +177,7 @@ function settle(work: Work, u: Float64Array, { settled, mostPasses }: Effort): n
     const next = pass(work, u, tolerance)
     if (next === undefined) return { failed: weakest(work, u).circuit }
     const change = difference(next, u)
-    const size = largest(change)
+    const size = Math.max(largest(change), work.unbalance)
     if (size < settled) {
       if (mixing === undefined || mixing.ratio < 0.5 || attracts(work, next, mixing.mode)) {
         u.set(next)

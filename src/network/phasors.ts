@@ -38,6 +38,12 @@ export interface PhasorProblem {
   readonly merged: readonly (readonly [number, number])[]
   /** supplies' susceptance of each node to ground, and between pairs of nodes, S */
   readonly susceptance: Float64Array
+  /**
+   * Place of the joint at the midpoint, of an electronic source: either half then holds the short-circuit current by
+   * itself (one ideal voltage over two falling columns side by side has no stable state). Volts are as they are, not
+   * of 1 V.
+   */
+  readonly halves?: number
   readonly bridges: readonly { readonly nodes: readonly [number, number]; readonly susceptance: number }[]
   /** imaginary part of the current that sources behind reactances drive into each node, A; the real part is 0 */
   readonly drive: Float64Array
@@ -67,6 +73,9 @@ export function phasorProblem(network: Network, source: number, grounded?: numbe
   const susceptance = new Float64Array(n)
   const drive = new Float64Array(n)
   const volts = vector(n)
+  const fed = network.circuits[source]!
+  const halves =
+    fed.supply.type === 'electronic' && fed.supply.grounding === 'midpoint' ? fed.midpointReturn : undefined
 
   for (const node of network.grounded) held[node] = 1
   if (grounded !== undefined) held[grounded] = 1
@@ -104,6 +113,7 @@ export function phasorProblem(network: Network, source: number, grounded?: numbe
   return {
     network,
     source,
+    ...(halves === undefined ? {} : { halves }),
     omega: 2 * Math.PI * frequency,
     held,
     merged,
@@ -138,21 +148,53 @@ function chainRanges(network: Network, merged: readonly (readonly [number, numbe
   )
 }
 
-/** Takes over potentials that are near the solution: those of another factor, scaled to this problem's source. */
-export function startFrom(problem: PhasorProblem, re: Float64Array, im: Float64Array, scale: number): void {
-  const { volts, charge, held, merged, network } = problem
-  const n = network.capacitance.count
+/**
+ * Takes over potentials that are near the solution, as those of another factor. `field` is of the sign; a problem
+ * whose source gives 1 V gets it divided by `needed`, the voltage between the terminals.
+ */
+export function startFrom(
+  problem: PhasorProblem,
+  field: { readonly re: Float64Array; readonly im: Float64Array },
+  needed: number,
+): void {
+  const { volts, held, merged, network, halves, source } = problem
+  const scale = 1 / sourceVolts(problem, needed)
   const offsets = merged.map(([kept, dropped]) => volts.re[kept]! - volts.re[dropped]!)
-  for (let i = 0; i < n; i++) {
+  for (let i = 0; i < held.length; i++) {
     if (held[i] === 1) continue
-    volts.re[i] = re[i]! * scale
-    volts.im[i] = im[i]! * scale
+    volts.re[i] = field.re[i]! * scale
+    volts.im[i] = field.im[i]! * scale
   }
   for (const [k, [kept, dropped]] of merged.entries()) {
     volts.re[dropped] = volts.re[kept]! - offsets[k]!
     volts.im[dropped] = volts.im[kept]!
   }
-  realTimesComplex(network.capacitance.matrix, n, volts.re, volts.im, charge.re, charge.im)
+  if (halves !== undefined) {
+    const { from, to } = network.circuits[source]!
+    for (const place of [from, to]) volts.re[network.node[place]!] = field.re[network.node[place]!]!
+  }
+  chargeNodes(problem)
+}
+
+/** What a problem's potentials are to be multiplied by, where the supply needs `needed` between its terminals. */
+export const sourceVolts = ({ network, source, halves }: PhasorProblem, needed: number): number =>
+  network.circuits[source]!.supply.type === 'electronic' && halves === undefined ? needed : 1
+
+/** Multiplies the potentials of the two halves of a string, to either side of the joint at the midpoint. */
+export function scaleHalves(problem: PhasorProblem, first: number, second: number): void {
+  const { network, source, volts, halves } = problem
+  const { from, to } = network.circuits[source]!
+  for (let k = from; k <= to; k++) {
+    const node = network.node[k]!
+    const scale = k < (halves ?? 0) ? first : second
+    volts.re[node] = volts.re[node]! * scale
+    volts.im[node] = volts.im[node]! * scale
+  }
+  chargeNodes(problem)
+}
+
+function chargeNodes({ network: { capacitance }, volts, charge }: PhasorProblem): void {
+  realTimesComplex(capacitance.matrix, capacitance.count, volts.re, volts.im, charge.re, charge.im)
 }
 
 /** out = currents into the strings and, with `loads`, into the supplies' reactances, plus what charges the nodes. */
@@ -412,7 +454,7 @@ export function solveDirectly(problem: PhasorProblem, conductance: Float64Array)
 
   // twice: the second pass takes off the rounding of the first
   for (let pass = 0; pass < 2; pass++) {
-    realTimesComplex(matrix, n, volts.re, volts.im, charge.re, charge.im)
+    chargeNodes(problem)
     currents(problem, conductance, volts, charge, r, true)
     for (let i = 0; i < n; i++) {
       r.re[i] = -r.re[i]!
@@ -428,7 +470,7 @@ export function solveDirectly(problem: PhasorProblem, conductance: Float64Array)
       volts.im[i] = volts.im[i]! + xIm[unknown[i]!]!
     }
   }
-  realTimesComplex(matrix, n, volts.re, volts.im, charge.re, charge.im)
+  chargeNodes(problem)
   return true
 }
 

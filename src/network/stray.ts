@@ -3,7 +3,7 @@ import type { Complex } from '../math/complex.js'
 import { magnitude, minus } from '../math/complex.js'
 import { realTimesComplex } from '../math/complex-symmetric.js'
 import type { Network } from './network.js'
-import { nodeCurrent, phasorProblem, solvePhasors } from './phasors.js'
+import { nodeCurrent, phasorProblem, solvePhasors, sourceVolts, startFrom } from './phasors.js'
 import type { CircuitSolution, LitState, PotentialField } from './solution.js'
 
 /** Capacitive current of one part in the field of its own supply. */
@@ -98,15 +98,16 @@ function floatingMetal(network: Network, state: LitState): readonly FloatingMeta
 function touchCurrent(
   network: Network,
   state: LitState,
-  { supply }: PotentialField,
+  field: PotentialField,
   node: number,
   conductance: Float64Array,
 ): number {
-  const c = network.circuits.findIndex((circuit) => circuit.supply.id === supply)
+  const c = network.circuits.findIndex(({ supply }) => supply.id === field.supply)
+  const needed = state.circuits[c]!.neededVoltage ?? 0
   const problem = phasorProblem(network, c, node)
+  startFrom(problem, field, needed)
   if (solvePhasors(problem, conductance, 1e-9) === undefined) return Number.NaN
-  const electronic = network.circuits[c]!.supply.type === 'electronic'
-  return (electronic ? (state.circuits[c]!.neededVoltage ?? 0) : 1) * nodeCurrent(problem, node)
+  return sourceVolts(problem, needed) * nodeCurrent(problem, node)
 }
 
 /** One resistor of a string. Ω, between two nodes. */

@@ -12,7 +12,7 @@ export const commonPractice = {
     gap: 0.025,
     /** V rms that a full thumb may have; less in proportion to the gap (ours) */
     voltage: 3000,
-    advice: 'about a thumb (25 mm) of air between glass and whatever is at a very different potential',
+    advice: 'keep a thumb (25 mm) of air to what differs much in potential',
   },
   outputLeads: {
     clause: 'output leads apart',

@@ -6,14 +6,15 @@ import type { Message } from './state.js'
 export function editChange(said: string, before: Inspection, after: Inspection): Message {
   const [was, is] = [before.pairs[0], after.pairs[0]]
   const difference = (p: typeof was) => (p ? kvFigure(p.difference.lit ?? p.difference.nameplate) : '–')
-  const parts = [said]
+  const parts: string[] = []
   if (was && is)
     parts.push(
-      `worst pair ${difference(was)} → ${difference(is)} kV (${severityFigure(was.severity)} → ${severityFigure(is.severity)} x its limit)`,
+      `worst ${difference(was)} → ${difference(is)} kV rms (${severityFigure(was.severity)} → ${severityFigure(is.severity)} x limit)`,
     )
   parts.push(`to fix ${toFix(before)} → ${toFix(after)}`)
   parts.push(...after.circuits.map((c, i) => loadChange(before.circuits[i], c)))
-  return { text: parts.filter((p) => p !== '').join(' · '), level: level(before, after) }
+  // the figures come first: the words are what a narrow screen may cut
+  return { text: [...parts, said].join(' · '), level: level(before, after) }
 }
 
 const toFix = ({ pairs, circuits }: Inspection): number =>
@@ -24,7 +25,7 @@ function loadChange(
   is: Inspection['circuits'][number],
 ): string {
   const load = (c: typeof was) => (!c ? '–' : !c.lit ? 'dark' : c.load === undefined ? '–' : percent(c.load))
-  return `${is.supply} load ${load(was)} → ${load(is)}`
+  return `${is.supply} ${load(was)} → ${load(is)}`
 }
 
 function level(before: Inspection, after: Inspection): Message['level'] {

@@ -26,6 +26,12 @@ export const smallest = { columns: 40, rows: 10 }
 const sideBySide = 70
 const bannerRows = 2
 
+/** The room of a long text: everything between the title and the message row. */
+export const sheetBox = (columns: number, rows: number): Box => {
+  const { title, message } = frame(columns, rows)
+  return { x: 0, y: title.height, width: columns, height: message.y - title.height }
+}
+
 /** rows of the supply loading for one circuit at its fullest */
 const loadingRows = 6
 

@@ -2,14 +2,14 @@
 import { Box, Text, Transform } from 'ink'
 import SelectInput from 'ink-select-input'
 import TextInput from 'ink-text-input'
-import { useSyncExternalStore } from 'react'
+import { type ReactNode, useSyncExternalStore } from 'react'
 import type { Theme } from '../view/theme.js'
-import { frame, type Box as Place, smallest } from './frame.js'
-import { fitted, type Line, line, lineText, span } from './lines.js'
+import { frame, type Box as Place, sheetBox, smallest } from './frame.js'
+import { fitted, type Line, line, lineText } from './lines.js'
 import { bannerLines, footerLine, legendLine, messageLine } from './panes/edges.js'
 import { loadingLines } from './panes/loading.js'
 import { readoutLines } from './panes/readout.js'
-import { sheetLines } from './panes/sheets.js'
+import { sheetPage } from './panes/sheets.js'
 import { titleLine } from './panes/title.js'
 import { asciiOnly } from './panes/words.js'
 import { worstLines } from './panes/worst.js'
@@ -28,10 +28,36 @@ export function Inspector({ store, theme }: { readonly store: Store; readonly th
   const { columns, rows } = state
   if (columns < smallest.columns || rows < smallest.rows) return <TooSmall columns={columns} rows={rows} />
   const boxes = frame(columns, rows, state.present.sign.wiring.circuits.length)
-  const beside = boxes.worst.x > 0
   const draw = (place: Place, lines: readonly Line[]) => (
     <Rows place={place} lines={state.ascii ? lines.map(asciiLine) : lines} theme={theme} />
   )
+  const sheet = state.dialog?.kind === 'help' || state.dialog?.kind === 'cautions'
+  return (
+    <Box flexDirection="column" width={columns} height={rows}>
+      {draw(boxes.title, [titleLine(state, columns)])}
+      {sheet ? (
+        draw(sheetBox(columns, rows), sheetPage(state))
+      ) : (
+        <Panes state={state} store={store} theme={theme} draw={draw} />
+      )}
+      {draw(boxes.message, [messageLine(state, columns)])}
+      {boxes.footer.height > 0 && draw(boxes.footer, [footerLine(state, columns)])}
+      {draw(boxes.banners, bannerLines(state, columns))}
+    </Box>
+  )
+}
+
+interface PanesProps {
+  readonly state: State
+  readonly store: Store
+  readonly theme: Theme
+  readonly draw: (place: Place, lines: readonly Line[]) => ReactNode
+}
+
+/** Map, worst list and loading – beside each other or stacked – then legend and readout. */
+function Panes({ state, store, theme, draw }: PanesProps) {
+  const { columns, rows } = state
+  const boxes = frame(columns, rows, state.present.sign.wiring.circuits.length)
   const worst = draw(boxes.worst, worstLines(state, boxes.worst.width, boxes.worst.height))
   const loading = draw(boxes.loading, loadingLines(state, boxes.loading.width, boxes.loading.height))
   const center = (
@@ -40,9 +66,8 @@ export function Inspector({ store, theme }: { readonly store: Store; readonly th
     </Box>
   )
   return (
-    <Box flexDirection="column" width={columns} height={rows}>
-      {draw(boxes.title, [titleLine(state, columns)])}
-      {beside ? (
+    <>
+      {boxes.worst.x > 0 ? (
         <Box>
           {center}
           <Box width={1} height={boxes.map.height} />
@@ -60,10 +85,7 @@ export function Inspector({ store, theme }: { readonly store: Store; readonly th
       )}
       {boxes.legend.height > 0 && draw(boxes.legend, [legendLine(state, columns)])}
       {draw(boxes.readout, readoutLines(state, columns, boxes.readout.height))}
-      {draw(boxes.message, [messageLine(state, columns)])}
-      {boxes.footer.height > 0 && draw(boxes.footer, [footerLine(state, columns)])}
-      {draw(boxes.banners, bannerLines(state, columns))}
-    </Box>
+    </>
   )
 }
 
@@ -147,15 +169,6 @@ function Dialogs({
           />
         </Box>
       )
-    case 'help':
-    case 'cautions': {
-      const all = sheetLines(state, place.width)
-      const from = Math.min(dialog.scroll, Math.max(0, all.length - place.height + 1))
-      const shown = all.slice(from, from + place.height - 1)
-      const more = all.length - from - shown.length
-      const foot = more > 0 ? `  ${more} more lines: Down, PgDn` : ''
-      return <Rows place={place} lines={[...shown, [span(foot, 'dim')]]} theme={theme} />
-    }
     default:
       return <Text> </Text>
   }

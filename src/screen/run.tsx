@@ -148,13 +148,15 @@ export function runInspector(file: LayoutFile, options: RunOptions, worker: Solv
   worker.onAnswer(({ revision, solved }) => dispatch({ type: 'solved', revision, solved }))
   perform({ do: 'solve' })
   showMap()
-  render(<Inspector store={store} theme={options.theme} />, {
+  const app = render(<Inspector store={store} theme={options.theme} />, {
     stdout: sink.stream,
     stdin: pump.stream,
     debug: true,
     patchConsole: false,
     exitOnCtrlC: false,
   })
+  // a throw while drawing ends the program like any other bug: as an unhandled rejection
+  void app.waitUntilExit()
   sink.stream.on('resize', () =>
     dispatch({ type: 'resized', columns: out.columns || 80, rows: out.rows || 24 }),
   )

@@ -27,13 +27,22 @@ const free = -1
 /** owner of cells that hold a terminal or a label */
 const reserved = -2
 
-/** where a label may sit beside a cell, as the direction of that side */
-const sides = [
+type Sides = readonly (readonly [number, number])[]
+
+/** where the name of a tube may sit beside a cell of its glass */
+const besideGlass: Sides = [
   [-1, 0],
   [1, 0],
   [0, -1],
   [0, 1],
-] as const
+]
+/** the name of a supply never touches the number of its terminal: `S1` and `2` would read as `S12` */
+const besideTerminal: Sides = [
+  [0, -1],
+  [0, 1],
+  [2, 0],
+  [-2, 0],
+]
 /** places along a tube that are tried at most */
 const tries = 48
 
@@ -48,17 +57,18 @@ export function labelPlaces(
   for (const { cell, body } of passes) if (owner[cell] === free) owner[cell] = body
   for (const { cell } of terminals) owner[cell] = reserved
   const places: LabelPlace[] = []
-  const place = (name: string, cells: readonly number[], own: number) => {
-    const found = bestPlace(cellText(name), cells, own, owner, window)
+  const place = (name: string, cells: readonly number[], own: number, sides: Sides) => {
+    const found = bestPlace(cellText(name), cells, own, sides, owner, window)
     if (found === undefined) return
     places.push(found)
     owner.fill(reserved, found.cell, found.cell + found.text.length)
   }
-  for (const [supply, cells] of grouped(terminals, ({ supply }) => supply)) place(supply, cells, free)
+  for (const [supply, cells] of grouped(terminals, ({ supply }) => supply))
+    place(supply, cells, free, besideTerminal)
   const inPathOrder = [...passes].sort((p, q) => p.at - q.at)
   for (const [body, cells] of grouped(inPathOrder, ({ body }) => body)) {
     const { kind, name } = bodies[body]!
-    if (kind === 'tube') place(name, cells, body)
+    if (kind === 'tube') place(name, cells, body, besideGlass)
   }
   return places
 }
@@ -82,6 +92,7 @@ function bestPlace(
   text: string,
   cells: readonly number[],
   own: number,
+  sides: Sides,
   owner: Int32Array,
   { columns, rows }: MapWindow,
 ): LabelPlace | undefined {

@@ -39,7 +39,7 @@ export function cellChains(line: Polyline, window: MapWindow): Visit[][] {
     if (piece.s1 < line.at[k + 1]!) close()
   }
   close()
-  return chains.map(withoutBumps)
+  return chains.map((visits) => withoutBumps(visits, bumpLength * window.step * window.aspect))
 }
 
 /** A straight piece in cells, with its path lengths. */
@@ -136,13 +136,19 @@ function addVisit(chain: Visit[], visit: Visit): void {
 const sameCell = (a: Visit, b: Visit): boolean => a.column === b.column && a.row === b.row
 const lengthOf = (visit: Visit): number => visit.to - visit.from
 
-/** Drops short touches of a cell beside the line: out of a cell and straight back into it. */
-function withoutBumps(chain: Visit[]): Visit[] {
+/** in heights of a row: longer than the chord of a round end across a cell, shorter than both sides of a hairpin */
+const bumpLength = 1.1
+
+/**
+ * Drops short touches of a cell beside the line, out of a cell and straight back into it. What is left of a hairpin
+ * is longer than `bump`, so that a doubled-back tube loses its tip at most.
+ */
+function withoutBumps(chain: readonly Visit[], bump: number): Visit[] {
   const kept: Visit[] = []
   for (const visit of chain) {
-    const bump = kept[kept.length - 1]
+    const touch = kept[kept.length - 1]
     const before = kept[kept.length - 2]
-    const short = bump !== undefined && before !== undefined && lengthOf(bump) < lengthOf(before)
+    const short = touch !== undefined && before !== undefined && lengthOf(touch) < bump
     if (short && sameCell(before, visit)) kept.splice(-2, 2, { ...before, to: visit.to })
     else kept.push(visit)
   }

@@ -104,7 +104,7 @@ it('a valid layout with pieces put in, taken out or replaced', () => {
       const text = edits.reduce((t, { at, take, put }) => t.slice(0, at) + put + t.slice(at + take), kiosk)
       seen[holds(text)]++
     }),
-    { numRuns: 600, seed: 5 },
+    { numRuns: 250, seed: 5 },
   )
   // both outcomes were really met
   expect(Math.min(seen.layout, seen.problems)).toBeGreaterThan(5)
@@ -117,7 +117,7 @@ it('a valid layout with single words replaced by other values', () => {
     fc.property(fc.constantFrom(...words), fc.constantFrom(...scraps), ([at, length], put) => {
       seen[holds(kiosk.slice(0, at) + put + kiosk.slice(at + length))]++
     }),
-    { numRuns: 600, seed: 9 },
+    { numRuns: 250, seed: 9 },
   )
   expect(Math.min(seen.layout, seen.problems)).toBeGreaterThan(5)
 })
@@ -127,12 +127,12 @@ it('a layout cut off anywhere', () => {
 })
 
 it('nests, alias bombs and long lists are refused without reading them out', () => {
-  for (const open of ['[', '{a: ', '- ', '? ', '[{a: ']) expect(holds(open.repeat(50_000))).toBe('problems')
+  for (const open of ['[', '{a: ', '- ', '? ', '[{a: ']) expect(holds(open.repeat(400_000))).toBe('problems')
   const level = (name: string, of: string) => `${name}: &${name} [${`*${of},`.repeat(9)}]\n`
   const names = 'bcdefghijklmnopqrstuvwxyz'.split('')
   const bomb = `a: &a [x,x,x]\n${names.map((name, i) => level(name, i === 0 ? 'a' : names[i - 1]!)).join('')}`
   expect(holds(bomb)).toBe('problems')
-  expect(holds(`layout: 1\n${Array.from({ length: 20_000 }, (_, i) => `k${i}: 1`).join('\n')}`)).toBe(
+  expect(holds(`layout: 1\n${Array.from({ length: 5000 }, (_, i) => `k${i}: 1`).join('\n')}`)).toBe(
     'problems',
   )
 })

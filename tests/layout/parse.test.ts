@@ -270,8 +270,8 @@ describe('the same sign written in another way is the same layout', () => {
     const inches = layoutOf(
       bare
         .replace('layout: 1', 'layout: 1\nunits: in')
-        .replace(/200/g, String(200 / 25.4))
-        .replace(/80/g, String(80 / 25.4))
+        .replace(/\b200\b/g, String(200 / 25.4))
+        .replace(/\b80\b/g, String(80 / 25.4))
         .replace('diameter: 15', `diameter: ${15 / 25.4}`)
         .replace('grounding: one-end', 'grounding: one-end, max_lead_mm: 900'),
     )

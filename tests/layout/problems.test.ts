@@ -43,7 +43,10 @@ const second =
 const cases: Record<Exclude<Facts['code'], 'internal'>, string[]> = {
   'file-too-big': [`‸# ${'x'.repeat(5_000_000)}`, `‸# ${'é'.repeat(2_500_000)}`],
   'unreadable-character': [added('# a ‸\0 b'), '‸\u001f'],
-  'too-deep': [`a: ${'['.repeat(64)}‸[${'['.repeat(100_000)}`, `${'- '.repeat(65)}‸${'- '.repeat(9000)}1`],
+  'too-deep': [
+    `a: ${'['.repeat(63)}‸[${'['.repeat(1_000_000)}`,
+    `${'- '.repeat(64)}‸${'- '.repeat(900_000)}1`,
+  ],
   yaml: [
     added('metal: [‸'),
     added('metal:\n‸\t- {}'),

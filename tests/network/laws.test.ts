@@ -431,25 +431,47 @@ describe('stray shares', () => {
   })
 })
 
-test('a joint at the midpoint stands at 0 V and its conductor carries the difference of the halves', () => {
-  const parts = sketch(
-    tubes,
-    [supplyOf('S', electronic)],
-    [wired('S', 'K -I O -Z', { midpointReturn: 'I.a' })],
-  )
-  const net = networkOf(parts)
-  const state = solveLit(net, { factor: 1 })
-  const joint = parts.nodes.count + 2
-  expect(Math.hypot(state.fields[0]!.re[joint]!, state.fields[0]!.im[joint]!)).toBe(0)
-  // what returns through ground is what capacitance takes
-  const { residual } = litOf(state)
-  const { count, matrix } = net.capacitance
-  const { re, im } = state.fields[0]!
-  let charge = { re: 0, im: 0 }
-  for (let i = 0; i < count; i++)
-    for (let j = 0; j < count; j++) {
-      const c = matrix[i * count + j]! * 2 * Math.PI * 24000
-      charge = { re: charge.re - c * im[j]!, im: charge.im + c * re[j]! }
-    }
-  expect(magnitude(minus(charge, residual))).toBeLessThan(1e-10)
-})
+test.each([
+  ['electronic', electronic],
+  ['core-and-coil', coreAndCoil],
+])(
+  'a joint at the midpoint of %s stands at 0 V, its conductor carries the difference of the halves',
+  (_type, figures) => {
+    const parts = sketch(
+      tubes,
+      [supplyOf('S', figures)],
+      [wired('S', 'K -I O -Z', { midpointReturn: 'I.a' })],
+      {
+        bars: [false],
+      },
+    )
+    const net = networkOf(parts)
+    const state = solveLit(net, { factor: 1 })
+    const joint = parts.nodes.count + 2
+    const { re, im } = state.fields[0]!
+    expect(Math.hypot(re[joint]!, im[joint]!)).toBe(0)
+    const { residual, terminalVoltage, terminalCurrent, power } = litOf(state)
+    if (figures === electronic) expect(terminalCurrent.map(magnitude)).toEqual([closeTo(0.03), closeTo(0.03)])
+    const watts = [0, 1].map(
+      (t) =>
+        terminalVoltage[t]!.re * terminalCurrent[t]!.re + terminalVoltage[t]!.im * terminalCurrent[t]!.im,
+    )
+    expect((watts[0]! + watts[1]!) / power).toBeCloseTo(1, 8)
+    // what returns through ground is what capacitance takes
+    const { count, matrix } = net.capacitance
+    const omega = 2 * Math.PI * state.fields[0]!.frequency
+    let charge = { re: 0, im: 0 }
+    for (let i = 0; i < count; i++)
+      for (let j = 0; j < count; j++) {
+        const c = matrix[i * count + j]! * omega
+        charge = { re: charge.re - c * im[j]!, im: charge.im + c * re[j]! }
+      }
+    expect(magnitude(minus(charge, residual))).toBeLessThan(1e-10)
+    // the same from the state at another factor
+    const [warm, cold] = [solveLit(net, { factor: 0.8, start: state }), solveLit(net, { factor: 0.8 })]
+    expect(apart(warm.fields[0]!, cold.fields[0]!)).toBeLessThan(1e-8)
+    expect(strayShares(net, state).floating[0]!.touch).toBeGreaterThan(0)
+  },
+)
+
+const closeTo = (value: number) => expect.closeTo(value, 10)

@@ -55,7 +55,7 @@ test('metal stands at 0 V, peak over √2 replaces a smaller rms voltage', () =>
   const { field, nodes } = fieldOf('A B C D E F', 'midpoint')
   for (let i = nodes.firstBar; i < nodes.count; i++) expect(field.re[i]).toBe(0)
   expect(Math.max(...field.im.map(Math.abs))).toBe(0)
-  const supply = supplyOf('S', { noLoadVoltage: 9000, noLoadPeak: 14142.135623730951 })
+  const supply = supplyOf('S', { noLoadVoltage: 9000, noLoadPeak: 10000 * Math.SQRT2 })
   const parts = sketch(six, [supply], [wired('S', 'A B C D E F')])
   const [peak] = nameplateField(parts.layout, parts.wiring, parts.tubes, parts.nodes, 7)
   expect(peak!.re[parts.nodes.count]).toBeCloseTo(5000, 6)

@@ -1,9 +1,8 @@
 import { expect, test } from 'vitest'
 import { defaultGlyphs, type MapGrid, mapFrame, mapGrid } from '../../src/view/map.js'
 import { mapRaster } from '../../src/view/map-raster.js'
-import { gridRuns, gridText, styledRows } from '../../src/view/map-runs.js'
-import { mapScene, sceneBounds } from '../../src/view/map-scene.js'
-import { columnAt, fitWindow, rowAt } from '../../src/view/map-window.js'
+import { gridText } from '../../src/view/map-runs.js'
+import { columnAt, rowAt } from '../../src/view/map-window.js'
 import { marks, meaningIndex, meanings } from '../../src/view/theme.js'
 import { arc, bar, lead, letterO, options, plainWindow, scene, terminals, tube } from './map-signs.js'
 
@@ -25,8 +24,8 @@ test('a letter in box drawing: round glass, dashed leads with the feed heavy, a 
     '   ╲        ╏    ╱    ╎',
     '    ╰╮      ╏  ╭╯     ╎',
     '     ╰──────╏──╯      ╎',
-    '            ╏   S1    ╎',
-    '            ┗╍╍╍╍1    2',
+    '            ╏         ╎',
+    '            ┗╍╍╍╍1    2 S1',
     ' ═══════════════════════',
     '',
   ])
@@ -45,8 +44,8 @@ test('the same letter in ASCII', () => {
     '   \\        !    /    :',
     "    '.      !  .'     :",
     "     '------!--'      :",
-    '            !   S1    :',
-    '            !!!!!1    2',
+    '            !         :',
+    '            !!!!!1    2 S1',
     ' %%%%%%%%%%%%%%%%%%%%%%%',
     '',
   ])
@@ -70,8 +69,8 @@ test('the same letter by steps of potential: glass in every cell, leads in every
     '   +        !    -    #',
     '    ++      !  --     :',
     '     ++++ooo!---      :',
-    '            =   S1    :',
-    '            !!!=!1    2',
+    '            =         :',
+    '            !!!=!1    2 S1',
     ' %%%%%%%%%%%%%%%%%%%%%%%',
     '',
   ])
@@ -106,6 +105,17 @@ test('a loop of script that crosses itself, in both character sets', () => {
     '      \\        /',
     "       '.-----'-.",
     "[-------'       '----]",
+    '',
+  ])
+})
+
+test('a round end that just reaches into the next column stays one stroke', () => {
+  const bent = scene([tube('T', [[15, 30], [95, 30], ...arc(95, 50, 16, 20, -90, 90), [15, 70]])])
+  expect(text(mapFrame(bent, () => 0, plainWindow(13, 5), options()))).toEqual([
+    '',
+    ' [────────╮',
+    '          │',
+    ' ]────────╯',
     '',
   ])
 })
@@ -217,68 +227,6 @@ test('labels touch no glass of others, and stay away when switched off', () => {
   expect(
     text(mapFrame(narrow, () => 0, plainWindow(4, 3), options({ labels: true }))).join(''),
   ).not.toContain('K')
-})
-
-test('the face is a faint outline behind everything', () => {
-  const outlined = mapScene(
-    {
-      title: '',
-      units: 'mm',
-      altitude: 0,
-      face: { metal: 'grounded', size: [0.18, 0.08] },
-      tubes: [],
-      lead: { conductor: 0.001, diameter: 0.007, permittivity: 3, height: 0.02 },
-      supplies: [],
-      metal: [],
-      wiring: { circuits: [] },
-      routes: [],
-      variants: [],
-      rules: [],
-      assumed: [],
-    },
-    [
-      tube('A', [
-        [-15, 30],
-        [100, 30],
-      ]),
-    ],
-  )
-  const window = fitWindow(sceneBounds(outlined), 24, 6)
-  const frame = (charset: 'box' | 'ascii') => text(mapFrame(outlined, () => 0, window, options({ charset })))
-  expect(frame('box')).toEqual([
-    '',
-    '   ┼┈┈┈┈┈┈┈┈┈┈┈┈┈┈┈┈┈┼',
-    '  [──────────]       ┊',
-    '   ┊                 ┊',
-    '   ┼┈┈┈┈┈┈┈┈┈┈┈┈┈┈┈┈┈┼',
-    '',
-  ])
-  expect(frame('ascii')).toEqual([
-    '',
-    '   .. . . . . . . . ..',
-    '  [----------]       .',
-    '   .                 .',
-    '   .. . . . . . . . ..',
-    '',
-  ])
-})
-
-test('the runs of a row spell the row, and an empty cell starts no run of its own', () => {
-  const grid = mapFrame(letterO, alongO, plainWindow(26, 14), options({ labels: true }))
-  gridText(grid).forEach((row, k) => {
-    const runs = gridRuns(grid, k)
-    expect(runs.map((run) => run.text).join('')).toBe(row)
-    expect(runs.slice(1).every((run) => run.text.trim() !== '')).toBe(true)
-  })
-  expect(gridRuns(grid, 1).map((run) => [run.text, run.meaning, run.marks])).toEqual([
-    ['     ', 'blank', 0],
-    ['╭──', 'plus-3', 0],
-    [']   ', 'plus-3', marks.bold],
-    ['[', 'minus-3', marks.bold],
-    ['──╮      ', 'minus-3', 0],
-    ['╎   ', 'plus-3', 0],
-  ])
-  expect(styledRows(grid, { level: 0, ground: 'dark' })[12]).toBe(gridText(grid)[12])
 })
 
 test('few colours ask for characters that say sign and size', () => {

@@ -46,7 +46,7 @@ function stateSpans(c: CircuitFinding): Line {
 const voltageVerdict = (c: CircuitFinding): Verdict =>
   c.loadings.find((l) => l.by === 'voltage')?.verdict ?? 'within'
 const currents = (c: CircuitFinding): string =>
-  c.lit ? `out ${c.terminals.map((t) => maFigure(magnitude(t.current))).join(' / ')} mA` : ''
+  c.lit ? `out ${c.terminals.map((t) => maFigure(magnitude(t.current))).join('/')} mA` : ''
 
 function circuitLines(state: State, c: CircuitFinding, index: number, width: number): Line[] {
   const supply = supplyOf(state.present.sign.layout, state.inspection.wiring.circuits[index]!)
@@ -71,10 +71,7 @@ function circuitLines(state: State, c: CircuitFinding, index: number, width: num
   return [
     name,
     ...bars.slice(0, 2),
-    [
-      span(`out ${c.terminals.map((t) => maFigure(magnitude(t.current))).join(' / ')} mA  `),
-      span(`stray ${ma(c.stray ?? 0)}`),
-    ],
+    line(`${currents(c)}  stray ${maFigure(c.stray ?? 0)}`),
     [span(`residual ${ma(c.residual ?? 0)}  `), ...dimmest(c)],
     ...bars.slice(2),
     line(`glass ${metres(c.tubeLength)}, ${c.electrodePairs} pairs, ${watts(c.power ?? 0)}`, 'dim'),
@@ -85,7 +82,7 @@ function dimmest(c: CircuitFinding): Line {
   const [worst] = c.tubes
     .filter((t) => t.least)
     .sort((a, b) => (a.least?.current ?? 0) - (b.least?.current ?? 0))
-  return worst?.least ? [span(`dimmest ${worst.id} ${maFigure(worst.least.current)}`)] : []
+  return worst?.least ? [span(`least ${maFigure(worst.least.current)} in ${worst.id}`)] : []
 }
 
 const barNames: Record<Loading['by'], string> = {

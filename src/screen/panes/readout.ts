@@ -39,7 +39,7 @@ function pairReadout(state: State, pair: PairFinding): Line[] {
       ),
       span(`  gap ${length(pair.gap, layout.units)}`, 'title'),
       span(
-        `  ${verdict.toUpperCase() === 'FIX' ? 'FIX' : verdict}${pair.unsure ? ' (or not: inside the band)' : ''} `,
+        `  ${pair.verdict === 'within' ? verdict : verdict.toUpperCase()}${pair.unsure ? '?' : ''} `,
         pair.verdict,
       ),
       span(`${severityFigure(pair.severity)} x its limit`, pair.verdict),
@@ -47,20 +47,20 @@ function pairReadout(state: State, pair: PairFinding): Line[] {
     differenceLine(state, pair),
     [
       span(
-        need === undefined ? 'needs no more: ' : `needs ${length(need, layout.units)}: `,
+        need === undefined ? 'gap is enough: ' : `needs ${length(need, layout.units)}: `,
         need === undefined ? 'within' : 'fix',
       ),
       span(`${pair.governs}`),
       span(ruleAdvice(pair), 'dim'),
     ],
     [
-      span(`air takes ${kv(pair.air.peak)} peak of ${kv(pair.air.startsAt)} peak where a discharge starts: `),
+      span(`air ${kv(pair.air.peak)} peak, a discharge starts at ${kv(pair.air.startsAt)} peak: `),
       span(
         outcomeText[pair.air.outcome] ?? pair.air.outcome,
         pair.air.outcome === 'nothing' ? 'within' : 'fix',
       ),
     ],
-    [...spotSpans(state, 'a', pair.a), span('   '), ...spotSpans(state, 'b', pair.b)],
+    [...spotSpans(state, 'a', pair.a), span('  '), ...spotSpans(state, 'b', pair.b)],
     ...pair.rules.map(
       (r): Line =>
         line(
@@ -114,7 +114,7 @@ const placeText = (state: State, spot: Spot): string => {
 function spotSpans(state: State, name: string, spot: Spot): Line {
   const active = state.cursor.on === 'pair' && state.cursor.side === name
   return [
-    span(`${active ? '>' : ' '}${name} ${spot.part}: `, active ? 'cursor' : 'dim'),
+    span(`${active ? '>' : ' '}${name} ${spot.part} `, active ? 'cursor' : 'dim'),
     span(`${potentialText(state, { body: spot.body, at: spot.at })}`),
   ]
 }
@@ -124,7 +124,7 @@ function potentialText(state: State, foot: Foot): string {
   const mix = nodeMix(state.inspection.probe, foot.body, foot.at)
   const now = instantPotential(fields, mix, phaseShown(state))
   const current = currentAt(state, foot)
-  return `${kv(rmsPotential(fields, mix))} rms, now ${signedKv(now)}${current === undefined ? '' : `, ${ma(current)}`}`
+  return `${kv(rmsPotential(fields, mix))} rms, ${signedKv(now)} now${current === undefined ? '' : `, ${ma(current)}`}`
 }
 
 /** magnitude of the current of a lit tube at a path length, A */

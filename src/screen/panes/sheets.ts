@@ -2,6 +2,7 @@
 import { generalCautions } from '../../rules/common-practice.js'
 import type { Meaning } from '../../view/theme.js'
 import { wrap } from '../../view/wrap.js'
+import { sheetBox } from '../frame.js'
 import { type KeyGroup, keyTable, keyText } from '../keys.js'
 import { fitted, type Line, line, span } from '../lines.js'
 import type { State } from '../state.js'
@@ -21,7 +22,18 @@ const marksHelp = [
   'x limit: the difference there over the difference this gap may have. n: not lit, judged on nameplate.',
 ]
 
-export function sheetLines(state: State, width: number): Line[] {
+/** What of the open sheet is in view, with a last row that says how much follows. */
+export function sheetPage(state: State): Line[] {
+  const { width, height } = sheetBox(state.columns, state.rows)
+  const all = sheetLines(state, width)
+  const scroll = state.dialog?.kind === 'help' || state.dialog?.kind === 'cautions' ? state.dialog.scroll : 0
+  const from = Math.min(scroll, Math.max(0, all.length - height + 1))
+  const shown = all.slice(from, from + height - 1)
+  const more = all.length - from - shown.length
+  return more > 0 ? [...shown, line(`  ${more} more lines: Down, PgDn`, 'dim')] : shown
+}
+
+function sheetLines(state: State, width: number): Line[] {
   return state.dialog?.kind === 'help' ? helpLines(state, width) : cautionSheet(state, width)
 }
 

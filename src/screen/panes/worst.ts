@@ -50,33 +50,33 @@ function scrollTo(selected: number, count: number, room: number): number {
 function headLine(state: State, pairs: readonly PairFinding[], width: number): Line {
   const count = (verdict: Verdict) => pairs.filter((p) => p.verdict === verdict).length
   const units = state.present.sign.layout.units
-  const name = state.filter ? `/${state.filter} ` : 'worst '
   const counts = `${count('fix')} fix ${count('watch')} watch`
-  const columns = `${units.padStart(6)} ${(state.condition === 'lit' ? 'kV rms' : 'kV n.p.').padStart(7)} x limit`
-  const left: Line = [span(name, 'title'), span(counts, count('fix') > 0 ? 'fix' : 'dim')]
-  const wide = width >= name.length + counts.length + columns.length + 2
-  return wide
-    ? [...fitted(left, width - columns.length, dots(state)), span(columns, 'dim')]
-    : [
-        ...fitted(left, width - 14, dots(state)),
-        span(
-          ' mm kVrms    x'
-            .replace('mm', units)
-            .replace('kVrms', state.condition === 'lit' ? 'kVrms' : 'kV np'),
-          'dim',
-        ),
-      ]
+  const as = count('fix') > 0 ? 'fix' : count('watch') > 0 ? 'watch' : 'within'
+  const kv = state.condition === 'lit' ? 'kV rms' : 'kV n.p.'
+  const columns = isWide(width)
+    ? `${units.padStart(6)} ${kv.padStart(7)} x limit`
+    : `${units.padStart(4)} ${kv.replace(' ', '').slice(-5)}    x`
+  const left: Line = [...(state.filter ? [span(`/${state.filter} `, 'key')] : []), span(counts, as)]
+  return [...fitted(left, width - columns.length, dots(state)), span(columns, 'dim')]
 }
 
+/** room for the places along the parts beside their names */
+const isWide = (width: number): boolean => width >= 45
+
 function rowSpans(pair: PairFinding, units: 'mm' | 'in', width: number, condition: State['condition']): Line {
-  const wide = width >= 45
+  const wide = isWide(width)
   const shown =
     condition === 'lit' ? (pair.difference.lit ?? pair.difference.nameplate) : pair.difference.nameplate
   const kv = kvFigure(shown) + (condition === 'lit' && pair.difference.lit === undefined ? 'n' : '')
   const figures = wide
     ? `${lengthFigure(pair.gap, units).padStart(6)} ${kv.padStart(7)} ${severityFigure(pair.severity).padStart(7)}`
     : `${lengthFigure(pair.gap, units).padStart(4)} ${kv.padStart(5)} ${severityFigure(pair.severity).padStart(4)}`
-  const names = `${spotText(pair.a, units)} ${spotText(pair.b, units)}`
+  // a narrow list names the parts only: the places stand in the readout
+  const names = wide
+    ? `${spotText(pair.a, units)} – ${spotText(pair.b, units)}`
+    : pair.a.part === pair.b.part
+      ? `${pair.a.part} itself`
+      : `${pair.a.part} ${pair.b.part}`
   return [
     span(`${verdictMark[pair.verdict]}${pair.unsure ? '?' : ' '}`, pair.verdict),
     ...fitted([span(names)], width - figures.length - 3, '~'),

@@ -70,6 +70,8 @@ export function openScreen(
   function end(ending: Ending, complaint = ''): never {
     leave(ending)
     writeNow(2, complaint)
+    // with the terminal gone, exiting would trip over it (Node resets its modes): let the signal itself end us
+    if (ending === 'SIGHUP') process.kill(process.pid, 'SIGHUP')
     process.exit(statusOf(ending))
   }
 
