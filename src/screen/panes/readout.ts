@@ -71,8 +71,10 @@ function pairReadout(state: State, pair: PairFinding): Line[] {
   ]
 }
 
+const brokenRule = (pair: PairFinding) => pair.rules.find((r) => !r.ok)
+
 function ruleAdvice(pair: PairFinding): string {
-  const broken = pair.rules.find((r) => !r.ok)
+  const broken = brokenRule(pair)
   return broken ? ` – ${broken.advice}` : ''
 }
 

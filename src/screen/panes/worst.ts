@@ -1,5 +1,6 @@
 /** The worst list: ranked, live, scrolling so that the selected pair stays in view. */
 import type { PairFinding, Verdict } from '../../rules/findings.js'
+import type { Meaning } from '../../view/theme.js'
 import { kvFigure, lengthFigure, severityFigure, spotText } from '../../view/words.js'
 import { fitted, inverse, type Line, line, span } from '../lines.js'
 import { listedPairs, type State } from '../state.js'
@@ -32,10 +33,10 @@ export function worstLines(state: State, width: number, height: number): Line[] 
     const chosen = first + i === selected
     const spans = rowSpans(pair, units, width, state.condition)
     return fitted(
-      chosen ? spans.map((s) => ({ ...s, marks: inverse })) : spans,
+      chosen ? spans.map((s) => ({ ...s, as: rowMeaning(pair), marks: inverse })) : spans,
       width,
       dots(state),
-      chosen ? span('', 'text', inverse) : undefined,
+      chosen ? span('', rowMeaning(pair), inverse) : undefined,
     )
   })
   return [head, ...rows]
@@ -63,6 +64,8 @@ function headLine(state: State, pairs: readonly PairFinding[], width: number): L
 /** room for the places along the parts beside their names */
 const isWide = (width: number): boolean => width >= 45
 
+const rowMeaning = ({ verdict }: PairFinding): Meaning => (verdict === 'within' ? 'text' : verdict)
+
 function rowSpans(pair: PairFinding, units: 'mm' | 'in', width: number, condition: State['condition']): Line {
   const wide = isWide(width)
   const shown =
@@ -80,6 +83,6 @@ function rowSpans(pair: PairFinding, units: 'mm' | 'in', width: number, conditio
   return [
     span(`${verdictMark[pair.verdict]}${pair.unsure ? '?' : ' '}`, pair.verdict),
     ...fitted([span(names)], width - figures.length - 3, '~'),
-    span(` ${figures}`, pair.verdict === 'within' ? 'text' : pair.verdict),
+    span(` ${figures}`, rowMeaning(pair)),
   ]
 }
