@@ -26,18 +26,30 @@ import {
 } from '../wiring/edits.js'
 import { footsOfPair, footUnderCursor, placeOfCursor } from './aim.js'
 import type { Action } from './keys.js'
-import type { Foot, Next, State, Step } from './state.js'
+import { type Foot, type Next, type State, type Step, selectedPair } from './state.js'
 
 export const stay = (state: State): Next => ({ state, effects: [] })
 export const say = (state: State, text: string, level: 'good' | 'plain' | 'bad' = 'plain'): Next =>
   stay({ ...state, message: { text, level } })
 
 /** Shows a sign: the wiring is in force at once, its figures follow when the solution is there. */
-function shown(state: State, present: Step, past: readonly Step[], future: readonly Step[]): Next {
+function shown(
+  state: State,
+  present: Step,
+  past: readonly Step[],
+  future: readonly Step[],
+  said = present.said,
+): Next {
   const prepared = preparedAgain(state.prepared, present.sign.layout)
   const moved = prepared !== state.prepared
+  const { mark, solved, ...rest } = state
   const next: State = {
-    ...state,
+    ...rest,
+    cursor: pinned(state),
+    // a lead that is marked may be another one in the new wiring
+    ...(mark && mark.body.kind !== 'lead' && { mark }),
+    // a solution of the old glass must not be read with the new
+    ...(solved && !moved && { solved }),
     present,
     past,
     future,
@@ -48,10 +60,16 @@ function shown(state: State, present: Step, past: readonly Step[], future: reado
       : state.inspection,
     solving: true,
     revision: state.revision + 1,
-    pending: { said: present.said, before: state.pending?.before ?? state.inspection },
-    message: { text: `${present.said} – solving`, level: 'plain' },
+    pending: { said, before: state.pending?.before ?? state.inspection },
+    message: { text: `${said} – solving`, level: 'plain' },
   }
   return { state: next, effects: [{ do: 'solve' }] }
+}
+
+/** The cursor stays on the pair it is on, so that a second key acts on the same tube whatever is worst now. */
+function pinned(state: State): State['cursor'] {
+  const { cursor } = state
+  return cursor.on === 'pair' ? { ...cursor, key: cursor.key ?? selectedPair(state)?.pair.key } : cursor
 }
 
 function commit(state: State, sign: Sign, said: string): Next {
@@ -78,20 +96,15 @@ function withChange(state: State, wiring: Wiring, said: string): string {
 export function undo(state: State): Next {
   const last = state.past[state.past.length - 1]
   if (!last) return say(state, 'Nothing to undo.')
-  const next = shown(state, last, state.past.slice(0, -1), [state.present, ...state.future])
-  return renamed(next, `undone: ${state.present.said}`)
+  const { present, past, future } = state
+  return shown(state, last, past.slice(0, -1), [present, ...future], `undone: ${present.said}`)
 }
 
 export function redo(state: State): Next {
   const [first, ...rest] = state.future
   if (!first) return say(state, 'Nothing to redo.')
-  return renamed(shown(state, first, [...state.past, state.present], rest), `again: ${first.said}`)
+  return shown(state, first, [...state.past, state.present], rest, `again: ${first.said}`)
 }
-
-const renamed = ({ state, effects }: Next, said: string): Next => ({
-  state: { ...state, ...(state.pending && { pending: { ...state.pending, said } }) },
-  effects,
-})
 
 export function asFiled(state: State): Next {
   const { sign } = state.opened

@@ -184,3 +184,22 @@ const shownKeys: Record<string, string> = {
   'shift-down': 'Shift-Down',
 }
 export const keyText = (key: string): string => shownKeys[key] ?? key
+
+export const groupTitles: Record<KeyGroup, string> = {
+  find: 'Find and probe',
+  map: 'Map',
+  wiring: 'Wiring and figures',
+  file: 'File',
+}
+
+/** One group of the table as rows of plain text: what the README prints. */
+export const keyRows = (group: KeyGroup): string[] =>
+  keyTable
+    .filter((entry) => entry.group === group)
+    .map(({ keys, does }) => `  ${keys.map(keyText).join(' ').padEnd(14)}${does}`)
+
+/** The whole table as plain text. */
+export const keyTableText = (): string =>
+  (['find', 'map', 'wiring', 'file'] as const)
+    .map((group) => [groupTitles[group], ...keyRows(group)].join('\n'))
+    .join('\n\n')

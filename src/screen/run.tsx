@@ -1,15 +1,14 @@
 /** The inspector on a real terminal: store, worker, keys and screen put together. */
 import { render } from 'ink'
 import { type LayoutFile, saveSign } from '../files.js'
-import { inspection, prepare } from '../inspection.js'
-import { defaultGlyphs } from '../view/map.js'
 import type { Theme } from '../view/theme.js'
 import { frame, smallest } from './frame.js'
 import { Inspector, type Store } from './inspector.js'
 import { mapPane } from './map-pane.js'
 import { type Event, reduce } from './reduce.js'
 import type { Solving } from './solving.js'
-import type { Effect, State } from './state.js'
+import { initialState } from './start.js'
+import type { Effect } from './state.js'
 import { frameSink } from './terminal/frame-sink.js'
 import { keyPump } from './terminal/key-pump.js'
 import { openScreen } from './terminal/open-screen.js'
@@ -19,35 +18,6 @@ export interface RunOptions {
   readonly ascii: boolean
   /** prints bytes and times of the run when it is over */
   readonly measure: boolean
-}
-
-export function initialState(
-  file: LayoutFile,
-  options: Pick<RunOptions, 'theme' | 'ascii'>,
-  columns: number,
-  rows: number,
-): State {
-  const prepared = prepare(file.layout)
-  const sign = { layout: file.layout, wiring: file.layout.wiring }
-  const found = inspection(prepared, sign.wiring)
-  return {
-    columns,
-    rows,
-    ascii: options.ascii,
-    opened: { path: file.path, name: file.name, source: file.source, sign },
-    present: { sign, said: 'as filed' },
-    past: [],
-    future: [],
-    prepared,
-    inspection: found,
-    solving: true,
-    revision: 0,
-    condition: 'lit',
-    instant: 0,
-    filter: '',
-    cursor: { on: 'pair', key: undefined, side: 'a' },
-    view: { glyphs: defaultGlyphs(options.theme.level), names: true, behind: false },
-  }
 }
 
 export function runInspector(file: LayoutFile, options: RunOptions, worker: Solving): void {

@@ -3,17 +3,10 @@ import { generalCautions } from '../../rules/common-practice.js'
 import type { Meaning } from '../../view/theme.js'
 import { wrap } from '../../view/wrap.js'
 import { sheetBox } from '../frame.js'
-import { type KeyGroup, keyTable, keyText } from '../keys.js'
+import { groupTitles, keyTable, keyText } from '../keys.js'
 import { fitted, type Line, line, span } from '../lines.js'
 import type { State } from '../state.js'
 import { asciiOnly, dots } from './words.js'
-
-const groupTitles: Record<KeyGroup, string> = {
-  find: 'Find and probe',
-  map: 'Map',
-  wiring: 'Wiring and figures',
-  file: 'File',
-}
 
 const marksHelp = [
   'Colour and glyph of the glass say its potential at the instant: = ~ - negative, o about 0, + * # positive.',

@@ -1,0 +1,35 @@
+/** The state that the inspector opens with: the file's wiring on paper, its solution asked for. */
+import type { LayoutFile } from '../files.js'
+import { inspection, prepare } from '../inspection.js'
+import { defaultGlyphs } from '../view/map.js'
+import type { Theme } from '../view/theme.js'
+import type { State } from './state.js'
+
+export function initialState(
+  file: LayoutFile,
+  { theme, ascii }: { readonly theme: Theme; readonly ascii: boolean },
+  columns: number,
+  rows: number,
+): State {
+  const prepared = prepare(file.layout)
+  const sign = { layout: file.layout, wiring: file.layout.wiring }
+  const found = inspection(prepared, sign.wiring)
+  return {
+    columns,
+    rows,
+    ascii,
+    opened: { path: file.path, name: file.name, source: file.source, sign },
+    present: { sign, said: 'as filed' },
+    past: [],
+    future: [],
+    prepared,
+    inspection: found,
+    solving: true,
+    revision: 0,
+    condition: 'lit',
+    instant: 0,
+    filter: '',
+    cursor: { on: 'pair', key: undefined, side: 'a' },
+    view: { glyphs: defaultGlyphs(theme.level), names: true, behind: false },
+  }
+}
