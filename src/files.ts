@@ -1,21 +1,27 @@
 /** Layout files on disk: read with everything that is wrong with them, saved whole or not at all. */
 import {
+  accessSync,
   closeSync,
+  constants,
   fchmodSync,
+  fchownSync,
   fsyncSync,
   openSync,
   readFileSync,
   realpathSync,
   renameSync,
+  rmSync,
+  type Stats,
   statSync,
-  unlinkSync,
-  writeSync,
+  writeFileSync,
 } from 'node:fs'
 import { basename, dirname, join } from 'node:path'
 import type { Layout } from './layout/layout.js'
 import { parseLayout } from './layout/parse.js'
+import { printable } from './layout/printable.js'
 import { problemText } from './layout/problem-text.js'
-import { type Sign, sameWiring } from './wiring/edits.js'
+import type { Sign } from './wiring/edits.js'
+import { holdsSign } from './wiring/same-sign.js'
 import { editedText } from './wiring/text.js'
 
 export interface LayoutFile {
@@ -33,23 +39,33 @@ export type Read =
 const largest = 5_000_000
 
 export function readLayoutFile(path: string): Read {
-  let source: string
+  const shown = printable(path)
+  let source: string | undefined
   try {
     const { size } = statSync(path)
     if (size > largest)
       return refusal(
-        `${path}: ${(size / 1e6).toFixed(1)} MB is too large for a layout; at most 5 MB are read`,
+        `${shown}: ${(size / 1e6).toFixed(1)} MB is too large for a layout; at most 5 MB are read`,
       )
-    source = readFileSync(path, 'utf8')
+    source = textOf(path)
   } catch (fault) {
-    return refusal(`${path}: cannot be read: ${reason(fault)}`)
+    return refusal(`${shown}: cannot be read: ${reason(fault)}`)
   }
+  if (source === undefined)
+    return refusal(`${shown}: is not UTF-8 text, expected a layout in YAML; save it as UTF-8`)
   const { layout, problems } = parseLayout(source, path)
   if (layout && problems.length === 0)
     return { ok: true, file: { path, name: basename(path), source, layout } }
-  const texts = problems.map((p) => problemText(p, path, source))
+  const texts = problems.map((p) => problemText(p, shown, source))
   const count = problems.length === 1 ? '1 problem' : `${problems.length} problems`
-  return refusal(`${texts.join('\n\n')}\n\n${path}: ${count}; the layout is not used`)
+  return refusal(`${texts.join('\n\n')}\n\n${shown}: ${count}; the layout is not used`)
+}
+
+/** The bytes as text that gives the same bytes again, byte order mark included; undefined where they are no UTF-8. */
+function textOf(path: string): string | undefined {
+  const bytes = readFileSync(path)
+  const text = bytes.toString('utf8')
+  return Buffer.from(text).equals(bytes) ? text : undefined
 }
 
 const refusal = (complaint: string): Read => ({ ok: false, complaint })
@@ -64,6 +80,9 @@ function reason(fault: unknown): string {
     EISDIR: 'it is a folder',
     EROFS: 'the disk is read-only',
     ENOSPC: 'the disk is full',
+    ENOTDIR: 'there is no such file',
+    ELOOP: 'its links go round in a circle',
+    ENAMETOOLONG: 'the name is too long',
   }
   return words[code] ?? (fault instanceof Error ? fault.message : String(fault))
 }
@@ -79,62 +98,66 @@ export type Saved =
 export function saveSign(path: string, source: string, from: Sign, to: Sign, force: boolean): Saved {
   const failed = (why: string, changedOnDisk = false): Saved => ({ ok: false, why, changedOnDisk })
   const text = editedText(source, from, to)
-  if (!readsBackAs(text, path, to))
+  // the safety net of every save: what will be in the file is what is on the screen
+  const { layout: back, problems } = parseLayout(text, path)
+  if (!back || problems.length > 0 || !holdsSign(back, to))
     return failed(
       'This edit cannot be written into the file as it stands (does it use anchors or aliases?). Nothing was written.',
     )
   try {
-    const target = realpathSync(path)
-    if (!force && readFileSync(target, 'utf8') !== source)
-      return failed('The file changed on disk since it was read.', true)
-    replaceFile(target, text)
+    const target = existing(path)
+    if (target === undefined) {
+      if (!force) return failed('The file is no longer where it was read from.', true)
+      replaceFile(path, text)
+    } else {
+      if (!force && !readFileSync(target).equals(Buffer.from(source)))
+        return failed('The file changed on disk since it was read.', true)
+      accessSync(target, constants.W_OK)
+      replaceFile(target, text, statSync(target))
+    }
     return { ok: true, source: text }
   } catch (fault) {
     return failed(`Not saved: ${reason(fault)}. Your work is still here.`)
   }
 }
 
-/** the safety net of every save: what will be in the file is what is on the screen */
-function readsBackAs(text: string, path: string, { layout, wiring }: Sign): boolean {
-  const back = parseLayout(text, path)
-  if (!back.layout || back.problems.length > 0) return false
-  const close = (a: number | undefined, b: number | undefined) =>
-    a === b || (a !== undefined && b !== undefined && Math.abs(a - b) <= 1e-7 * Math.max(1, Math.abs(a)))
-  return (
-    sameWiring(back.layout.wiring, wiring) &&
-    back.layout.variants.length === layout.variants.length &&
-    back.layout.variants.every(
-      (v, i) => v.name === layout.variants[i]?.name && sameWiring(v, layout.variants[i]),
-    ) &&
-    back.layout.tubes.every(
-      (t, i) => close(t.height, layout.tubes[i]?.height) && t.fill === layout.tubes[i]?.fill,
-    ) &&
-    back.layout.supplies.every((s, i) => {
-      const wanted = layout.supplies[i]
-      return (
-        close(s.noLoadVoltage, wanted?.noLoadVoltage) &&
-        close(s.shortCircuitCurrent, wanted?.shortCircuitCurrent) &&
-        close(s.frequency, wanted?.frequency) &&
-        s.type === wanted?.type &&
-        s.grounding === wanted.grounding
-      )
-    })
-  )
-}
-
-/** A new file beside the old one takes its place in one step; the mode stays. */
-function replaceFile(target: string, text: string): void {
-  const { mode } = statSync(target)
-  const beside = join(dirname(target), `.${basename(target)}.${process.pid}.new`)
-  const handle = openSync(beside, 'wx', mode)
+/** Where the bytes of a file really lie, behind links; undefined where there is none. */
+function existing(path: string): string | undefined {
   try {
-    fchmodSync(handle, mode & 0o7777)
-    writeSync(handle, text)
-    fsyncSync(handle)
-    closeSync(handle)
-    renameSync(beside, target)
+    return realpathSync(path)
   } catch (fault) {
-    unlinkSync(beside)
+    if (fault instanceof Error && 'code' in fault && fault.code === 'ENOENT') return undefined
     throw fault
   }
+}
+
+/** A new file beside the old one takes its place in one step; mode and owner stay. */
+function replaceFile(target: string, text: string, old?: Stats): void {
+  // short, as the name of the layout may be as long as names can be
+  const beside = join(dirname(target), `.tubewright-${process.pid}.new`)
+  // what a crash left behind under this number is of no use to anybody
+  rmSync(beside, { force: true })
+  const handle = openSync(beside, 'wx', old === undefined ? 0o666 : 0o600)
+  try {
+    try {
+      writeFileSync(handle, text)
+      if (old) keepRights(handle, old)
+      fsyncSync(handle)
+    } finally {
+      closeSync(handle)
+    }
+    renameSync(beside, target)
+  } catch (fault) {
+    rmSync(beside, { force: true })
+    throw fault
+  }
+}
+
+function keepRights(handle: number, { uid, gid, mode }: Stats): void {
+  try {
+    fchownSync(handle, uid, gid)
+  } catch {
+    // only the superuser gives files away; then the file is the user's from now on
+  }
+  fchmodSync(handle, mode & 0o7777)
 }

@@ -6,7 +6,7 @@
  *   inspection(prepared, wiring)       potentials as shared out on paper, and what follows            at once
  *   inspection(prepared, wiring, s)    the same with the lit solution s = solve(wiring)               per edit
  */
-import { prepareField } from './field/fixed-field.js'
+import { type FieldOptions, prepareField, usualField } from './field/fixed-field.js'
 import { type LeadField, leadField } from './field/lead-field.js'
 import { nodeCapacitance } from './field/node-capacitance.js'
 import { fixedBodies } from './geometry/bodies.js'
@@ -16,9 +16,10 @@ import { leadBody } from './geometry/leads.js'
 import { type FixedNodes, fixedNodes } from './geometry/nodes.js'
 import type { CloseRun } from './geometry/runs.js'
 import type { EndName, Layout, Wiring } from './layout/layout.js'
+import { calibrations } from './network/calibration.js'
 import { solveBand } from './network/lit.js'
 import { nameplateField } from './network/nameplate.js'
-import { network } from './network/network.js'
+import { type Network, network } from './network/network.js'
 import { type Probe, probe } from './network/potentials.js'
 import type { CircuitOutcome, LitState, PotentialField } from './network/solution.js'
 import { type StrayShares, strayShares } from './network/stray.js'
@@ -106,11 +107,21 @@ function runsOfLeads(prepared: Prepared, placed: readonly PlacedLead[]): CloseRu
   return runs
 }
 
-/** Prepares the capacitances of the glass (the slow part) and gives the function that solves a wiring. */
-export function solver(prepared: Prepared): (wiring: Wiring, layout?: Layout) => Solved {
+/** The network of a wiring and its lit states: with the nominal law, and at the ends of its band. */
+export interface SolvedNetwork {
+  readonly net: Network
+  readonly nominal: LitState
+  readonly others: readonly LitState[]
+}
+
+/** Prepares the capacitances of the glass (the slow part) and gives the function that solves the network of a wiring. */
+export function networkSolver(
+  prepared: Prepared,
+  options: FieldOptions = usualField,
+): (wiring: Wiring, layout?: Layout) => SolvedNetwork {
   const { bodies, tubes, nodes } = prepared
   const bars = bodies.filter((body) => body.kind === 'bar')
-  const fixed = prepareField(bodies, nodes, prepared.layout.face)
+  const fixed = prepareField(bodies, nodes, prepared.layout.face, options)
   const known = new WeakMap<LeadBody, LeadField>()
   const fieldOf = (body: LeadBody): LeadField => {
     const field = known.get(body) ?? leadField(fixed, body)
@@ -123,7 +134,18 @@ export function solver(prepared: Prepared): (wiring: Wiring, layout?: Layout) =>
     const leads = circuitLeads(wiring).map(({ between }) => placedLead(now, between).body)
     const capacitance = nodeCapacitance(fixed, leads.map(fieldOf))
     const net = network(layout, wiring, tubes, bars, nodes, capacitance)
-    const { nominal, others } = solveBand(net)
+    return { net, ...solveBand(net, calibrations(layout, wiring, net)) }
+  }
+}
+
+/** The same with what the findings need of the solution. */
+export function solver(
+  prepared: Prepared,
+  options: FieldOptions = usualField,
+): (wiring: Wiring, layout?: Layout) => Solved {
+  const solveNetwork = networkSolver(prepared, options)
+  return (wiring, layout = prepared.layout) => {
+    const { net, nominal, others } = solveNetwork(wiring, layout)
     const noLoads = wiring.circuits.map((circuit) => noLoadVoltage(supplyOf(layout, circuit)))
     return {
       ...litFields(nominal, others, noLoads),

@@ -50,7 +50,8 @@ export async function openCommand(args: readonly string[]): Promise<number | und
     import('chalk'),
     ground ?? backgroundOf(process.stdin, process.stdout, process.env),
   ])
-  chalk.level = chalkLevel(level)
+  // the widgets show their cursor by inverse, which chalk knows from level 1 on; no colour is asked of it
+  chalk.level = chalkLevel(level) || 1
   runInspector(
     read.file,
     {

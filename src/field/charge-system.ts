@@ -10,16 +10,25 @@
 import { lineStride } from '../geometry/closest-approach.js'
 import type { Segments } from '../geometry/segments.js'
 import { rowGram } from '../math/dense.js'
-import { dipoleMeans, dipoleReach, harmonicSelf, mutualReach, neededOrder, ringBlock } from './harmonics.js'
+import { type Couplings, couplingRows, denseColumns } from './couplings.js'
+import {
+  dipoleMeans,
+  dipoleReach,
+  feltOrder,
+  harmonicSelf,
+  mutualReach,
+  neededOrder,
+  ringBlock,
+} from './harmonics.js'
 import { lineMean, selfMean } from './line-mean.js'
 import {
   continuous,
-  imagePair,
+  directSettled,
+  imageSettled,
   middleDistance,
   mirrored,
   type NearPair,
   nearPair,
-  pairOrder,
 } from './near-pairs.js'
 import { bandOrder, factorSkyline, type Skyline, skyline, solveSkyline } from './skyline.js'
 
@@ -33,9 +42,7 @@ export interface ChargeSystem {
   readonly hh: Skyline
   /** first row of each component of P_hh, and the end */
   readonly components: Int32Array
-  /** P_hq by rows of P_hh: which charges, and the coefficients (a charge may appear several times) */
-  readonly charges: readonly (readonly number[])[]
-  readonly couplings: readonly (readonly number[])[]
+  readonly couplings: Couplings
   /** the reduced matrix, count × count, both triangles */
   readonly potential: Float64Array
 }
@@ -47,10 +54,6 @@ export function shiftedMean(a: Segments, b: Segments, pair: NearPair): number {
   for (let k = 0; k < 3; k++) moved[k]! += pair.shift[k]!
   return lineMean(a.lines, pair.i, moved, 0, 0)
 }
-
-/** bits of `settled`: no dipole rule for this pair, or for its image */
-export const directSettled = 1
-export const imageSettled = 2
 
 /** P_qq before elimination, all pairs that are near, and which pairs (j ≤ i) need no dipole rule. */
 function bareSystem(
@@ -76,7 +79,7 @@ function bareSystem(
           ? shiftedMean(segments, segments, pair)
           : lineMean(lines, i, lines, j, 0)
       if (images) {
-        const image = imagePair(segments, i, images, j, pair)
+        const image = nearPair(segments, i, images, j, true)
         if (image) near.push(image)
         if (image) settled[i * count + j]! |= imageSettled
         mean -= lineMean(lines, i, images.lines, j, 0)
@@ -152,24 +155,19 @@ export function chargeSystem(
   const { potential, near, settled } = bareSystem(segments, images)
   const orders = segmentOrders(segments, near, least, most)
   const { rows, hh, components } = layOut(segments, near, orders)
-  const charges: number[][] = Array.from({ length: hh.count }, () => [])
-  const couplings: number[][] = Array.from({ length: hh.count }, () => [])
+  const { add: couple, finished } = couplingRows(hh.count, segments.count)
   for (let i = 0; i < segments.count; i++) {
     for (let m = 1; m <= orders[i]!; m++) {
       const self = harmonicSelf(m, segments.lines[lineStride * i + 6]!)
       for (const r of [rows[i]! + 2 * m - 2, rows[i]! + 2 * m - 1]) hh.values[hh.base[r]! + r] = self
     }
   }
-  const couple = (row: number, charge: number, value: number): void => {
-    charges[row]!.push(charge)
-    couplings[row]!.push(value)
-  }
   for (const pair of near) {
-    const { i, j, image, shift } = pair
+    const { i, j, axes, image, shift } = pair
     const other = image && images ? images : segments
     const sign = image ? -1 : 1
-    const mi = pairOrder(pair, segments.radius[i]!, orders[i]!)
-    const mj = pairOrder(pair, segments.radius[j]!, orders[j]!)
+    const mi = feltOrder(segments.radius[i]!, axes, orders[i]!)
+    const mj = feltOrder(segments.radius[j]!, axes, orders[j]!)
     const mutual = i === j || actsMutually(pair, segments.radius[i]!, segments.radius[j]!)
     if (mutual) {
       const wide = 2 * mj + 1
@@ -192,7 +190,7 @@ export function chargeSystem(
     couple(rows[i]!, j, cosine)
     couple(rows[i]! + 1, j, sine)
   })
-  factorComponents(hh, components, couplings)
+  const couplings = finished()
   const system = {
     segments,
     ...(images && { images }),
@@ -200,7 +198,6 @@ export function chargeSystem(
     rows,
     hh,
     components,
-    charges,
     couplings,
     potential,
   }
@@ -252,63 +249,109 @@ function addMutual(
   }
 }
 
+/** the harmonics of one component may take this share off the coefficient of a charge with itself (touching: 0.7) */
+const mostTaken = 0.85
+
 /**
- * Factors every component. Glass drawn through glass can make one indefinite, since pairs are moved apart one by one:
- * its coefficients between different unknowns are then halved until it is definite.
+ * Factors one component and gives L⁻¹ P_hq of it. Glass drawn through glass can make one indefinite, or nearly so,
+ * since pairs are moved apart one by one: its coefficients between different unknowns are then halved until it is sound.
  */
-function factorComponents(hh: Skyline, components: Int32Array, couplings: number[][]): void {
-  for (let c = 0; c + 1 < components.length; c++) {
-    const from = components[c]!
-    const to = components[c + 1]!
-    if (from === to) continue
-    const start = hh.base[from]! + hh.first[from]!
-    const kept = hh.values.slice(start, hh.base[to - 1]! + to)
-    while (!factorSkyline(hh, from, to)) {
-      for (let r = from; r < to; r++) {
-        const row = hh.base[r]! - start
-        for (let k = hh.first[r]!; k < r; k++) kept[row + k]! *= 0.5
-        couplings[r] = couplings[r]!.map((value) => 0.5 * value)
-      }
-      hh.values.set(kept, start)
+function solvedComponent(
+  { hh, couplings, potential, segments }: Reducible,
+  from: number,
+  to: number,
+): { touched: Int32Array; columns: Float64Array } {
+  const start = hh.base[from]! + hh.first[from]!
+  const kept = hh.values.slice(start, hh.base[to - 1]! + to)
+  const size = to - from
+  for (;;) {
+    const sound = factorSkyline(hh, from, to)
+    const { touched, columns } = denseColumns(couplings, from, to)
+    if (
+      sound &&
+      eachSolved(
+        hh,
+        from,
+        to,
+        columns,
+        (k, taken) => taken < mostTaken * own(potential, segments, touched[k]!),
+      )
+    )
+      return { touched, columns }
+    for (let r = from; r < to; r++) {
+      const row = hh.base[r]! - start
+      for (let k = hh.first[r]!; k < r; k++) kept[row + k]! *= 0.5
     }
+    for (let k = couplings.starts[from]!; k < couplings.starts[from + size]!; k++) couplings.values[k]! *= 0.5
+    hh.values.set(kept, start)
   }
 }
 
+type Reducible = Pick<ChargeSystem, 'hh' | 'components' | 'couplings' | 'potential' | 'segments'>
+
+/** What a charge has with itself by now, or a fifth of what it has alone. */
+const own = (potential: Float64Array, { lines, radius }: Segments, i: number): number =>
+  Math.max(potential[i * (radius.length + 1)]!, 0.2 * selfMean(lines[lineStride * i + 6]!, radius[i]!))
+
+/** Solves row after row while what it takes off (its square) is accepted. */
+function eachSolved(
+  hh: Skyline,
+  from: number,
+  to: number,
+  columns: Float64Array,
+  accepted: (k: number, taken: number) => boolean,
+): boolean {
+  const size = to - from
+  for (let k = 0; k * size < columns.length; k++) {
+    solveSkyline(hh, from, to, columns, k * size)
+    let taken = 0
+    for (let h = k * size; h < (k + 1) * size; h++) taken += columns[h]! ** 2
+    if (!accepted(k, taken)) return false
+  }
+  return true
+}
+
 /** P ← P − P_qh P_hh⁻¹ P_hq, one component after the other. */
-function eliminate(
-  system: Pick<ChargeSystem, 'hh' | 'components' | 'charges' | 'couplings' | 'potential' | 'segments'>,
-): void {
-  const { hh, components, potential } = system
+function eliminate(system: Reducible): void {
+  const { components, potential } = system
   const { count } = system.segments
   for (let c = 0; c + 1 < components.length; c++) {
     const from = components[c]!
     const to = components[c + 1]!
-    const { touched, columns } = componentColumns(system, from, to)
+    if (from === to) continue
     const size = to - from
-    for (let k = 0; k < touched.length; k++) solveSkyline(hh, from, to, columns, k * size)
-    const change = rowGram(columns, touched.length, size)
-    touched.forEach((i, p) => {
-      for (let q = 0; q < touched.length; q++)
-        potential[i * count + touched[q]!]! -= change[p * touched.length + q]!
-    })
+    const { touched, columns } = solvedComponent(system, from, to)
+    if (size <= 4) takeSmall(potential, count, touched, columns, size)
+    else takeLarge(potential, count, touched, rowGram(columns, touched.length, size))
+  }
+  for (let i = 0; i < count; i++)
+    for (let j = 0; j < i; j++) potential[j * count + i] = potential[i * count + j]!
+}
+
+/** Lower triangle of P −= change at the touched charges (ascending). */
+function takeLarge(potential: Float64Array, count: number, touched: Int32Array, change: Float64Array): void {
+  for (let p = 0; p < touched.length; p++) {
+    const row = touched[p]! * count
+    const from = p * touched.length
+    for (let q = 0; q <= p; q++) potential[row + touched[q]!]! -= change[from + q]!
   }
 }
 
-/** P_hq of one component, dense: the charges it touches, and a row (length to − from) for each. */
-export function componentColumns(
-  { charges, couplings }: Pick<ChargeSystem, 'charges' | 'couplings'>,
-  from: number,
-  to: number,
-): { touched: number[]; columns: Float64Array } {
-  const place = new Map<number, number>()
-  const size = to - from
-  for (let r = from; r < to; r++)
-    for (const i of charges[r]!) if (!place.has(i)) place.set(i, place.size * size)
-  const columns = new Float64Array(place.size * size)
-  for (let r = from; r < to; r++) {
-    const list = charges[r]!
-    const values = couplings[r]!
-    for (let k = 0; k < list.length; k++) columns[place.get(list[k]!)! + r - from]! += values[k]!
+/** The same from a few columns at once, as a component of one segment has them. */
+function takeSmall(
+  potential: Float64Array,
+  count: number,
+  touched: Int32Array,
+  columns: Float64Array,
+  size: number,
+): void {
+  for (let h = 0; h < size; h += 2) {
+    for (let p = 0; p < touched.length; p++) {
+      const row = touched[p]! * count
+      const x = columns[p * size + h]!
+      const y = columns[p * size + h + 1]!
+      for (let q = 0, k = h; q <= p; q++, k += size)
+        potential[row + touched[q]!]! -= x * columns[k]! + y * columns[k + 1]!
+    }
   }
-  return { touched: [...place.keys()], columns }
 }

@@ -2,10 +2,10 @@
 import { lineStride } from '../geometry/closest-approach.js'
 import type { Segments } from '../geometry/segments.js'
 import type { ChargeSystem } from './charge-system.js'
-import { directSettled, imageSettled, shiftedMean } from './charge-system.js'
-import { dipoleMeans, dipoleReach, neededOrder, ringBlock } from './harmonics.js'
+import { shiftedMean } from './charge-system.js'
+import { dipoleMeans, dipoleReach, feltOrder, leadDipoleReach, neededOrder, ringBlock } from './harmonics.js'
 import { lineMean } from './line-mean.js'
-import { imagePair, middleDistance, mirrored, type NearPair, nearPair, pairOrder } from './near-pairs.js'
+import { directSettled, imageSettled, middleDistance, type NearPair, nearPair } from './near-pairs.js'
 
 /** Square to add to the distances of a pair that is joined end to end there, or 0 for separate conductors. */
 export type Joint = (i: number, j: number) => number
@@ -36,7 +36,7 @@ export function bareCross(a: Segments, b: Segments, imagesB: Segments | undefine
       if (pair || extra > 0) settled[i * b.count + j]! |= directSettled
       let mean = pair ? shiftedMean(a, b, pair) : lineMean(a.lines, i, b.lines, j, extra)
       if (imagesB) {
-        const image = imagePair(a, i, imagesB, j, pair)
+        const image = nearPair(a, i, imagesB, j, true)
         if (image) near.push(image)
         if (image) settled[i * b.count + j]! |= imageSettled
         mean -= lineMean(a.lines, i, imagesB.lines, j, 0)
@@ -116,12 +116,11 @@ export function crossHarmonics(
   const toCharges = new Float64Array(a.hh.count * b.segments.count)
   const toHarmonics = new Float64Array((a.segments.count + a.hh.count) * width)
   const touchedRows = new Set<number>()
-  for (const pair of near) {
-    const { i, j, image, shift } = pair
+  for (const { i, j, axes, image, shift } of near) {
     const sign = image ? -1 : 1
     const extra = extras.get(j)
-    const mi = pairOrder(pair, a.segments.radius[i]!, a.orders[i]!)
-    const mj = pairOrder(pair, b.segments.radius[j]!, extra?.to ?? b.orders[j]!)
+    const mi = feltOrder(a.segments.radius[i]!, axes, a.orders[i]!)
+    const mj = feltOrder(b.segments.radius[j]!, axes, extra?.to ?? b.orders[j]!)
     ringBlock(a.segments, i, mi, image && b.images ? b.images : b.segments, j, mj, shift, block)
     const wide = 2 * mj + 1
     const rowA = a.rows[i]!
@@ -136,32 +135,44 @@ export function crossHarmonics(
     }
     if (mj > 0 && b.orders[j]! > 0) touchedRows.add(b.rows[j]!)
   }
-  dipolesOfB(a.segments, b, settled, (i, j, cosine, sine) => {
-    toHarmonics[i * width + b.rows[j]!]! += cosine
-    toHarmonics[i * width + b.rows[j]! + 1]! += sine
-    touchedRows.add(b.rows[j]!)
+  const count = b.segments.count
+  const done = (i: number, j: number): number => settled[i * count + j]!
+  dipoles(
+    b,
+    a,
+    dipoleReach,
+    (j, i) => done(i, j),
+    (j, i, cosine, sine) => {
+      toHarmonics[i * width + b.rows[j]!]! += cosine
+      toHarmonics[i * width + b.rows[j]! + 1]! += sine
+      touchedRows.add(b.rows[j]!)
+    },
+  )
+  dipoles(a, b, leadDipoleReach, done, (i, j, cosine, sine) => {
+    toCharges[a.rows[i]! * count + j]! += cosine
+    toCharges[(a.rows[i]! + 1) * count + j]! += sine
   })
   return { toCharges, toHarmonics, width, extras, components: componentsOf(b, touchedRows) }
 }
 
-/** The first harmonics of b and the charges of a further away. */
-function dipolesOfB(
-  a: Segments,
-  b: ChargeSystem,
-  settled: Uint8Array,
+/** First harmonics of one system and the charges of the other, up to so many radii, where nothing else is settled. */
+function dipoles(
+  from: ChargeSystem,
+  { segments: others, images }: ChargeSystem,
+  reach: number,
+  settled: (i: number, j: number) => number,
   couple: (i: number, j: number, cosine: number, sine: number) => void,
 ): void {
-  const { segments, orders, images } = b
-  const imagesA = images && mirrored(a)
+  const { segments, orders } = from
   const means = new Float64Array(2)
-  for (let j = 0; j < segments.count; j++) {
-    if (orders[j] === 0) continue
-    for (let i = 0; i < a.count; i++) {
-      const done = settled[i * segments.count + j]!
-      if (done === 3 || middleDistance(a, i, segments, j) > dipoleReach * segments.radius[j]!) continue
+  for (let i = 0; i < segments.count; i++) {
+    if (orders[i] === 0) continue
+    for (let j = 0; j < others.count; j++) {
+      const done = settled(i, j)
+      if (done === 3 || middleDistance(segments, i, others, j) > reach * segments.radius[i]!) continue
       means.fill(0)
-      if (!(done & directSettled)) dipoleMeans(segments, j, a, i, 1, means)
-      if (imagesA && !(done & imageSettled)) dipoleMeans(segments, j, imagesA, i, -1, means)
+      if (!(done & directSettled)) dipoleMeans(segments, i, others, j, 1, means)
+      if (images && !(done & imageSettled)) dipoleMeans(segments, i, images, j, -1, means)
       couple(i, j, means[0]!, means[1]!)
     }
   }

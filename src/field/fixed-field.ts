@@ -3,8 +3,9 @@ import type { FixedBody } from '../geometry/conductors.js'
 import type { FixedNodes } from '../geometry/nodes.js'
 import { type CutRules, crossingWindows, cutPlaces, type Segments, segmentsAt } from '../geometry/segments.js'
 import type { Face } from '../layout/layout.js'
-import { factorCholesky, rowGram, solveLowerRows } from '../math/dense.js'
+import { rowGram, solveLowerRows } from '../math/dense.js'
 import { type ChargeSystem, chargeSystem } from './charge-system.js'
+import { definiteFactor } from './definite.js'
 import { plateCapacitance } from './face-plate.js'
 import type { LeadField } from './lead-field.js'
 import type { LeadPair } from './node-capacitance.js'
@@ -42,6 +43,8 @@ export interface FixedField {
   readonly nodeMatrix: Float64Array
   /** F; of the floating face's sheet to the surroundings, otherwise 0 */
   readonly plate: number
+  /** names of bodies drawn so far into others, or so sharply bent back on themselves, that part of them had to be isolated */
+  readonly strained: readonly string[]
   /** what was worked out between two leads before */
   readonly pairs: WeakMap<LeadField, WeakMap<LeadField, LeadPair>>
 }
@@ -141,8 +144,8 @@ export function prepareField(
   const least = new Int32Array(segments.count).fill(1)
   const system = chargeSystem(segments, plane, least, options.harmonics)
   const { count } = segments
-  const factor = system.potential.slice()
-  if (!factorCholesky(factor, count)) throw new Error('coefficients of potential are not positive definite')
+  const { factor, isolated } = definiteFactor(system.potential, count)
+  const strained = [...new Set(isolated.map((i) => bodies[segments.body[i]!]!.name))]
   const weights = nodeWeights(bodies, nodes, segments)
   const solvedWeights = weights.slice()
   solveLowerRows(factor, count, solvedWeights, nodes.count)
@@ -160,6 +163,7 @@ export function prepareField(
     solvedWeights,
     nodeMatrix,
     plate,
+    strained,
     pairs: new WeakMap(),
   }
 }

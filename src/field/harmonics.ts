@@ -26,16 +26,18 @@ export function neededOrder(a1: number, a2: number, axes: number, most: number):
   if (h <= a1) return most
   const t = (h - Math.sqrt(h * h - a1 * a1)) / a1
   let order = 0
-  for (let left = t * t; left > 0.0015 && order < most; left *= t * t) order++
+  for (let left = t * t; left > 0.003 && order < most; left *= t * t) order++
   return order
 }
 
 /** Distances, in radii, below which each order of a cylinder is felt: index m − 1. */
 const reaches = Float64Array.from({ length: 16 }, (_, k) => ((k + 1) ** 1.5 / 0.07) ** (1 / (k + 1)))
-/** Beyond this many radii no harmonic but the first is felt, and that as a point dipole. */
-export const harmonicReach = reaches[0]!
+/** Beyond this many radii only the first harmonic is felt, and that as a line of dipoles. */
+export const harmonicReach = reaches[1]!
+/** Up to here a thin lead's dipoles are worth while: they are small, and little is shielded by them. */
+export const leadDipoleReach = reaches[0]!
 /**
- * Point dipoles are felt up to this many radii. Where other glass shields two conductors from each other almost
+ * Dipoles are felt up to this many radii. Where other glass shields two conductors from each other almost
  * completely, what is left between them would get the wrong sign without the dipoles of the glass between.
  */
 export const dipoleReach = 60
@@ -150,9 +152,13 @@ export function ringBlock(
     }
 }
 
+/** places along a segment, in half lengths, that stand for all of it (Gauss) */
+const twoPoints = [-Math.sqrt(1 / 3), Math.sqrt(1 / 3)]
+const onePoint = [0]
+
 /**
- * Coefficients between the first harmonic of segment i (cosine, sine: a dipole a·e at its middle) and the charge of a
- * far segment j, 1/m, added to out[0] and out[1] with this sign.
+ * Coefficients between the first harmonic of segment i (cosine and sine: dipoles a·e along it) and the charge of a
+ * segment j further away, 1/m, added to out[0] and out[1] with this sign. Exact along i, by one or two points along j.
  */
 export function dipoleMeans(
   a: RingSource,
@@ -166,13 +172,29 @@ export function dipoleMeans(
   const q = j * lineStride
   const l = a.lines[p + 6]! / 2
   const m = b.lines[q + 6]! / 2
-  const x = b.lines[q]! + m * b.lines[q + 3]! - a.lines[p]! - l * a.lines[p + 3]!
-  const y = b.lines[q + 1]! + m * b.lines[q + 4]! - a.lines[p + 1]! - l * a.lines[p + 4]!
-  const z = b.lines[q + 2]! + m * b.lines[q + 5]! - a.lines[p + 2]! - l * a.lines[p + 5]!
-  const square = x * x + y * y + z * z
-  const scale = (sign * a.radius[i]!) / (square * Math.sqrt(square))
+  const { lines, frames } = a
   const e = 6 * i
-  const { frames } = a
-  out[0]! += scale * (x * frames[e]! + y * frames[e + 1]! + z * frames[e + 2]!)
-  out[1]! += scale * (x * frames[e + 3]! + y * frames[e + 4]! + z * frames[e + 5]!)
+  // from the middle of i to the middle of j
+  const x = b.lines[q]! + m * b.lines[q + 3]! - lines[p]! - l * lines[p + 3]!
+  const y = b.lines[q + 1]! + m * b.lines[q + 4]! - lines[p + 1]! - l * lines[p + 4]!
+  const z = b.lines[q + 2]! + m * b.lines[q + 5]! - lines[p + 2]! - l * lines[p + 5]!
+  const places = x * x + y * y + z * z > 16 * m * m ? onePoint : twoPoints
+  const scale = (sign * a.radius[i]!) / places.length
+  for (const place of places) {
+    const dx = x + place * m * b.lines[q + 3]!
+    const dy = y + place * m * b.lines[q + 4]!
+    const dz = z + place * m * b.lines[q + 5]!
+    const along = dx * lines[p + 3]! + dy * lines[p + 4]! + dz * lines[p + 5]!
+    const square = dx * dx + dy * dy + dz * dz
+    const across = square - along * along
+    // mean of 1/R³ along i, seen from there
+    const near = along - l
+    const far = along + l
+    const mean =
+      across > 1e-4 * square
+        ? (far / Math.sqrt(across + far * far) - near / Math.sqrt(across + near * near)) / (2 * l * across)
+        : 1 / (square * Math.sqrt(square))
+    out[0]! += scale * mean * (dx * frames[e]! + dy * frames[e + 1]! + dz * frames[e + 2]!)
+    out[1]! += scale * mean * (dx * frames[e + 3]! + dy * frames[e + 4]! + dz * frames[e + 5]!)
+  }
 }

@@ -2,8 +2,9 @@
 import type { LeadBody } from '../geometry/conductors.js'
 import { type CutRules, crossingWindows, cutPlaces, type Segments, segmentsAt } from '../geometry/segments.js'
 import { rowGram, rowProducts, solveLowerRows } from '../math/dense.js'
-import { type ChargeSystem, chargeSystem, componentColumns } from './charge-system.js'
+import { type ChargeSystem, chargeSystem } from './charge-system.js'
 import { conduitCapacitance } from './conduit.js'
+import { denseColumns } from './couplings.js'
 import {
   bareCross,
   type CrossHarmonics,
@@ -38,11 +39,10 @@ export interface OpenField {
   readonly solved: Float64Array
   /** nodes × l: Wᵀ P_ff⁻¹ P_fl */
   readonly toNodes: Float64Array
-  /** l × l: own coefficients with harmonics eliminated, and with the fixed charges eliminated as well */
-  readonly own: Float64Array
+  /** l × l: own coefficients with all harmonics and the fixed charges eliminated */
   readonly schur: Float64Array
-  /** L_h⁻¹ P_hl of each touched component of the fixed harmonics, l rows */
-  readonly woken: ReadonlyMap<number, Float64Array>
+  /** L_h⁻¹ P_hl of the fixed harmonics: l × h */
+  readonly woken: Float64Array
   /** the same of harmonics that only leads wake: l × 2 (to − from + 1) */
   readonly extras: ReadonlyMap<number, Extra & { readonly columns: Float64Array }>
 }
@@ -99,7 +99,7 @@ function ownResponse(system: ChargeSystem): Float64Array {
   for (let c = 0; c + 1 < components.length; c++) {
     const from = components[c]!
     const size = components[c + 1]! - from
-    const { touched, columns } = componentColumns(system, from, from + size)
+    const { touched, columns } = denseColumns(system.couplings, from, from + size)
     touched.forEach((i, k) => {
       solveSkyline(hh, from, from + size, columns, k * size)
       solveSkylineTransposed(hh, from, from + size, columns, k * size)
@@ -134,41 +134,55 @@ export function subtract(a: Float64Array, b: Float64Array): void {
   for (let k = 0; k < a.length; k++) a[k]! -= b[k]!
 }
 
-/** The fixed harmonics answer the lead: takes their part off own and fixed coefficients, and keeps it for pairs. */
-function answerOfFixed(
+/**
+ * The fixed harmonics answer the lead: turns the coefficients to them (l rows) into L_h⁻¹ P_hl and takes
+ * P_fh P_hh⁻¹ P_hl off the coefficients to the fixed charges.
+ */
+function wakeFixed(
   { system }: FixedField,
   cross: CrossHarmonics,
   rows: Float64Array,
+  l: number,
   toFixed: Float64Array,
-  own: Float64Array,
-): Pick<OpenField, 'woken' | 'extras'> {
-  const { width } = cross
-  const l = rows.length / width
-  const f = system.segments.count
-  const woken = new Map<number, Float64Array>()
+): Float64Array {
+  const { hh, components, couplings, segments } = system
+  const half = new Float64Array(l * hh.count)
+  for (let i = 0; i < l; i++)
+    half.set(rows.subarray(i * cross.width, i * cross.width + hh.count), i * hh.count)
+  // charges in rows here, so that the innermost loop runs along the lead
+  const change = new Float64Array(segments.count * l)
+  const full = new Float64Array(l)
   for (const c of cross.components) {
-    const from = system.components[c]!
-    const to = system.components[c + 1]!
-    const size = to - from
-    const half = new Float64Array(l * size)
+    const from = components[c]!
+    const to = components[c + 1]!
+    const answer = new Float64Array(l * (to - from))
     for (let i = 0; i < l; i++) {
-      half.set(rows.subarray(i * width + from, i * width + to), i * size)
-      solveSkyline(system.hh, from, to, half, i * size)
+      const place = i * hh.count + from
+      solveSkyline(hh, from, to, half, place)
+      answer.set(half.subarray(place, place + to - from), i * (to - from))
+      solveSkylineTransposed(hh, from, to, answer, i * (to - from))
     }
-    woken.set(c, half)
-    subtract(own, rowGram(half, l, size))
-    const full = half.slice()
-    for (let i = 0; i < l; i++) solveSkylineTransposed(system.hh, from, to, full, i * size)
     for (let r = from; r < to; r++) {
-      const charges = system.charges[r]!
-      const couplings = system.couplings[r]!
-      for (let i = 0; i < l; i++) {
-        const x = full[i * size + r - from]!
-        if (x === 0) continue
-        for (let k = 0; k < charges.length; k++) toFixed[i * f + charges[k]!]! -= x * couplings[k]!
+      for (let i = 0; i < l; i++) full[i] = answer[i * (to - from) + r - from]!
+      for (let k = couplings.starts[r]!; k < couplings.starts[r + 1]!; k++) {
+        const value = couplings.values[k]!
+        const row = couplings.charges[k]! * l
+        for (let i = 0; i < l; i++) change[row + i]! += value * full[i]!
       }
     }
   }
+  for (let i = 0; i < l; i++)
+    for (let j = 0; j < segments.count; j++) toFixed[i * segments.count + j]! -= change[j * l + i]!
+  return half
+}
+
+/** Coefficients to the harmonics that only this lead wakes, over the roots of their self terms. */
+function extraColumns(
+  { system }: FixedField,
+  cross: CrossHarmonics,
+  rows: Float64Array,
+  l: number,
+): OpenField['extras'] {
   const extras = new Map<number, Extra & { columns: Float64Array }>()
   for (const [j, extra] of cross.extras) {
     const size = 2 * (extra.to - extra.from + 1)
@@ -176,12 +190,11 @@ function answerOfFixed(
     for (let k = 0; k < size; k++) {
       const m = extra.from + (k >> 1)
       const scale = 1 / Math.sqrt(harmonicSelf(m, segmentLength(system.segments, j)))
-      for (let i = 0; i < l; i++) columns[i * size + k] = scale * rows[i * width + extra.column + k]!
+      for (let i = 0; i < l; i++) columns[i * size + k] = scale * rows[i * cross.width + extra.column + k]!
     }
     extras.set(j, { ...extra, columns })
-    subtract(own, rowGram(columns, l, size))
   }
-  return { woken, extras }
+  return extras
 }
 
 /** The lead alone against glass, bars and face. Its own harmonics follow its own charges. */
@@ -203,12 +216,14 @@ export function leadField(fixed: FixedField, lead: LeadBody): LeadField {
   followCharges(toFixed, cross.toCharges, f, response, l)
   const rows = cross.toHarmonics.subarray(0, l * cross.width)
   followCharges(rows, cross.toHarmonics.subarray(l * cross.width), cross.width, response, l)
-  const own = system.potential.slice()
-  const answer = answerOfFixed(fixed, cross, rows, toFixed, own)
+  const woken = wakeFixed(fixed, cross, rows, l, toFixed)
+  const extras = extraColumns(fixed, cross, rows, l)
   const solved = toFixed.slice()
   solveLowerRows(fixed.factor, f, solved, l)
-  const schur = own.slice()
+  const schur = system.potential.slice()
   subtract(schur, rowGram(solved, l, f))
+  subtract(schur, rowGram(woken, l, glass.hh.count))
+  for (const { columns } of extras.values()) subtract(schur, rowGram(columns, l, columns.length / l))
   const toNodes = rowProducts(fixed.solvedWeights, fixed.nodes.count, solved, l, f)
-  return { kind: 'open', lead, system, response, toFixed, solved, toNodes, own, schur, ...answer }
+  return { kind: 'open', lead, system, response, toFixed, solved, toNodes, schur, woken, extras }
 }

@@ -76,8 +76,12 @@ function f(z: number, d: number): number {
   return x > 0 ? x * Math.log(x) : 0
 }
 
-/** x · atanh(m / (R + R')) · 2, nothing where the factor is nothing */
-const logTerm = (x: number, m: number, r: number): number => (x === 0 ? 0 : x * Math.log((r + m) / (r - m)))
+/**
+ * 2 x · atanh(m / r), r the sum of two distances to the ends of a line of length m. Where the factor is nothing, or so
+ * small that r is m to all digits (a point on the line), the term is nothing.
+ */
+const logTerm = (x: number, m: number, r: number): number =>
+  x !== 0 && r > m ? x * Math.log((r + m) / (r - m)) : 0
 
 function skewMean(a: Float64Array, p: number, b: Float64Array, q: number, c: number, extra: number): number {
   const l = a[p + 6]!

@@ -4,7 +4,7 @@
  */
 import { closestApproach, lineStride } from '../geometry/closest-approach.js'
 import { pathBetween, type Segments } from '../geometry/segments.js'
-import { feltOrder, harmonicReach } from './harmonics.js'
+import { harmonicReach } from './harmonics.js'
 
 /** A pair that is near enough for harmonics. */
 export interface NearPair {
@@ -16,9 +16,11 @@ export interface NearPair {
   readonly axes: number
   /** j is moved by this, where the drawing has the two inside each other */
   readonly shift?: Float64Array
-  /** of an image that only goes with its pair: the axis distance of that pair */
-  readonly besides?: number
 }
+
+/** Bits that say what a pair of segments needs no dipole rule for: itself, or j's mirror image. */
+export const directSettled = 1
+export const imageSettled = 2
 
 /** The mirror images in z = 0. */
 export function mirrored(segments: Segments): Segments {
@@ -75,28 +77,6 @@ export function nearPair(
   const touching = Math.max(a.outer[i]! + b.outer[j]!, 1.03 * (a.radius[i]! + b.radius[j]!))
   if (image || axes >= touching) return { i, j, image, axes }
   return { i, j, image, axes: touching, shift: apartBy(a, i, b, j, axes, touching - axes) }
-}
-
-/**
- * The near pair with the mirror image of segment j, or nothing. Where the pair itself is near, its image always goes
- * with it: their fields cancel at a distance, and one without the other would leave a far field that is not there.
- */
-export function imagePair(
-  a: Segments,
-  i: number,
-  images: Segments,
-  j: number,
-  direct: NearPair | undefined,
-): NearPair | undefined {
-  if (!direct) return nearPair(a, i, images, j, true)
-  const axes = closestApproach(a.lines, i, images.lines, j, found)
-  return { i, j, image: true, axes, besides: direct.axes }
-}
-
-/** Highest order, up to `most`, with which a cylinder of radius a of this pair feels the other. */
-export function pairOrder({ axes, besides }: NearPair, a: number, most: number): number {
-  const order = feltOrder(a, axes, most)
-  return order === 0 && besides !== undefined ? feltOrder(a, besides, Math.min(1, most)) : order
 }
 
 /** The move of j that takes it `more` further from i: along the line of nearest approach, or across both. */

@@ -1,8 +1,9 @@
 /** The capacitance matrix of a wiring: fixed bodies and all its leads. */
 import { leadNode } from '../geometry/nodes.js'
-import { factorCholesky, rowGram, rowProducts, solveLowerRows } from '../math/dense.js'
+import { rowGram, rowProducts, solveLowerRows } from '../math/dense.js'
 import { fourPiEpsilon } from './constants.js'
 import { bareCross, crossHarmonics, noJoint } from './cross-system.js'
+import { definiteFactor } from './definite.js'
 import type { NodeCapacitance } from './field.js'
 import type { FixedField } from './fixed-field.js'
 import { followCharges, type LeadField, type OpenField, subtract } from './lead-field.js'
@@ -10,8 +11,7 @@ import { solveSkyline } from './skyline.js'
 
 /** What two open leads do to each other; over K = 1/4πε0. */
 export interface LeadPair {
-  /** a × b: coefficients with all harmonics eliminated, and with the fixed charges eliminated as well */
-  readonly between: Float64Array
+  /** a × b: coefficients with all harmonics and the fixed charges eliminated */
   readonly schur: Float64Array
   /** change of a × a and of b × b: each has the other's harmonics near it. Absent: none */
   readonly onA?: Float64Array
@@ -38,14 +38,12 @@ function transposed(a: Float64Array, rows: number, columns: number): Float64Arra
   return out
 }
 
-/** Takes off what both leads share through the fixed harmonics. */
-function shareFixed(a: OpenField, b: OpenField, between: Float64Array): void {
+/** Takes off what both leads share through fixed charges and fixed harmonics. */
+function shareFixed({ system }: FixedField, a: OpenField, b: OpenField, between: Float64Array): void {
   const na = a.system.segments.count
   const nb = b.system.segments.count
-  for (const [c, rows] of a.woken) {
-    const other = b.woken.get(c)
-    if (other) subtract(between, rowProducts(rows, na, other, nb, rows.length / na))
-  }
+  subtract(between, rowProducts(a.solved, na, b.solved, nb, system.segments.count))
+  subtract(between, rowProducts(a.woken, na, b.woken, nb, system.hh.count))
   for (const [j, extra] of a.extras) {
     const other = b.extras.get(j)
     if (!other) continue
@@ -69,19 +67,16 @@ function makePair(fixed: FixedField, a: OpenField, b: OpenField): LeadPair {
   const harmonicsOfB = transposed(ab.toHarmonics.subarray(0, na * ab.width), na, ab.width)
   const turned = transposed(between, na, nb)
   followCharges(turned, harmonicsOfB, na, b.response, nb)
-  const reduced = transposed(turned, nb, na)
-  shareFixed(a, b, reduced)
-  const schur = reduced.slice()
-  subtract(schur, rowProducts(a.solved, na, b.solved, nb, fixed.system.segments.count))
+  const schur = transposed(turned, nb, na)
+  shareFixed(fixed, a, b, schur)
   const onB = answerOfLead(a, ab.toCharges, nb)
   const onA = answerOfLead(b, harmonicsOfB, na)
-  return { between: reduced, schur, ...(onA && { onA }), ...(onB && { onB }) }
+  return { schur, ...(onA && { onA }), ...(onB && { onB }) }
 }
 
 /** The same pair seen from b. */
-function turnedPair({ between, schur, onA, onB }: LeadPair, na: number, nb: number): LeadPair {
+function turnedPair({ schur, onA, onB }: LeadPair, na: number, nb: number): LeadPair {
   return {
-    between: transposed(between, na, nb),
     schur: transposed(schur, na, nb),
     ...(onB && { onA: onB }),
     ...(onA && { onB: onA }),
@@ -104,11 +99,10 @@ function keepPair({ pairs }: FixedField, a: OpenField, b: OpenField, pair: LeadP
   kept.set(b, pair)
 }
 
-/** Puts the lead blocks together: `part` picks what goes on the diagonal and between. */
+/** The lead blocks put together: coefficients between all lead charges, the fixed ones eliminated. */
 function assembled(
   fixed: FixedField,
   leads: readonly OpenField[],
-  part: 'own' | 'schur',
 ): { matrix: Float64Array; starts: number[]; count: number } {
   const starts: number[] = []
   let count = 0
@@ -125,10 +119,10 @@ function assembled(
         matrix[(starts[p]! + i) * count + starts[q]! + j]! += sign * rows[i * m + j]!
   }
   leads.forEach((a, p) => {
-    add(a[part], p, p, 1)
+    add(a.schur, p, p, 1)
     for (let q = 0; q < p; q++) {
       const pair = leadPair(fixed, a, leads[q]!)
-      add(part === 'own' ? pair.between : pair.schur, p, q, 1)
+      add(pair.schur, p, q, 1)
       if (pair.onA) add(pair.onA, p, p, -1)
       if (pair.onB) add(pair.onB, q, q, -1)
     }
@@ -143,7 +137,7 @@ export function reducedPotential(
   leads: readonly OpenField[],
 ): { count: number; matrix: Float64Array } {
   const f = fixed.system.segments.count
-  const block = assembled(fixed, leads, 'own')
+  const block = assembled(fixed, leads)
   const count = f + block.count
   const matrix = new Float64Array(count * count)
   for (let i = 0; i < f; i++)
@@ -186,11 +180,11 @@ function leadDrives(
  */
 export function nodeCapacitance(fixed: FixedField, leads: readonly LeadField[]): NodeCapacitance {
   const open = leads.filter((lead) => lead.kind === 'open')
-  const { matrix: schur, starts, count: charges } = assembled(fixed, open, 'schur')
-  if (!factorCholesky(schur, charges)) throw new Error('coefficients of the leads are not positive definite')
+  const { matrix: schur, starts, count: charges } = assembled(fixed, open)
+  const { factor } = definiteFactor(schur, charges)
   const drives = leadDrives(fixed, open, starts, charges)
   const rows = fixed.nodes.count + open.length
-  solveLowerRows(schur, charges, drives, rows)
+  solveLowerRows(factor, charges, drives, rows)
   const solved = rowGram(drives, rows, charges)
   // from fixed nodes and open leads to the order of the wiring
   const count = fixed.nodes.count + leads.length

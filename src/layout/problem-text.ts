@@ -1,6 +1,6 @@
 /** Problems of a layout file in English, with the source line and a caret. */
 import { excerpt, printable, shortened } from './printable.js'
-import type { Facts, Form, Found, IdFault, Problem } from './problems.js'
+import type { Facts, Form, Found, IdFault, Place, Problem } from './problems.js'
 
 /** The forms that a value can be expected to have. */
 export const formWords = {
@@ -29,6 +29,13 @@ export const formWords = {
   string: 'a list of tubes, as [K, I, -O, S]',
   rules: 'a list of rule sets, as [common-practice, nec-600]',
   choice: 'one of the known words',
+  'rule-set': 'keys and values (rule_set, id, title, rules, …)',
+  'list-of-rules': 'a list of rules',
+  parts: 'a list of parts, as [tube, metal]',
+  range: 'above, up_to or both, as {above: 100}',
+  rows: 'rows of two numbers, as [[2, 2.2], [4, 7.1]]',
+  row: 'two numbers, as [2, 2.2]',
+  words: 'a list of the known words',
   mapping: 'keys and values',
 } as const
 
@@ -115,7 +122,7 @@ export function problemSentence(problem: Facts): string {
       return (
         `${problem.what} is ${foundWords(problem.found)}, ` +
         (meant(problem.nearest) ??
-          `expected ${problem.choices.join(', ')}${problem.orNumber ? ' or a number' : ''}`)
+          `expected one of ${problem.choices.join(', ')}${problem.orNumber ? ' or a number' : ''}`)
       )
     case 'empty-list':
       return `${problem.what} is an empty list, expected at least one entry`
@@ -215,8 +222,11 @@ function badEndWords({ end, part, nearest }: Of<'bad-end'>): string {
  * `file:line:column: what is wrong, what was expected`, the source line, and a caret. Nothing of the file reaches the
  * output as a control character.
  */
-export function problemText(problem: Problem, file: string, source: string): string {
-  const { line, column, offset } = problem.place
-  const sentence = printable(`${file}:${line}:${column}: ${problemSentence(problem)}`)
-  return `${sentence}\n${excerpt(source, offset)}`
+export const problemText = (problem: Problem, file: string, source: string): string =>
+  placedText(problemSentence(problem), problem.place, file, source)
+
+/** The same for a sentence about any kind of file. */
+export function placedText(sentence: string, place: Place, file: string, source: string): string {
+  const { line, column, offset } = place
+  return `${printable(`${file}:${line}:${column}: ${sentence}`)}\n${excerpt(source, offset)}`
 }

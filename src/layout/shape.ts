@@ -22,10 +22,19 @@ export interface Shaped {
   readonly metal: readonly MetalValue[]
 }
 
+/** What the words of a problem need to know about a kind of file. */
+export interface Naming {
+  /** the keys known in the mapping at a path */
+  readonly known: (path: KeyPath) => readonly string[]
+  /** what lacks a key, by the key that holds it, as `tubes` → `this tube` */
+  readonly holders: Readonly<Record<string, string>>
+}
+
 /** The typed values of the file, or problems in the reading. */
 export function shapedFile(reading: Reading): Shaped | undefined {
   const parsed = fileShape.safeParse(reading.value)
-  for (const issue of parsed.error?.issues ?? []) reportIssue(reading, issue, [])
+  const naming: Naming = { known: (path) => knownKeys[mappingName(path)] ?? [], holders }
+  for (const issue of parsed.error?.issues ?? []) reportIssue(reading, issue, [], naming)
   const metal = entriesOf(reading.value.metal, ['metal']).map(({ entry, path }) =>
     shapedMetal(reading, entry, path),
   )
@@ -50,23 +59,24 @@ function shapedMetal(reading: Reading, entry: unknown, path: KeyPath): MetalValu
     return undefined
   }
   const parsed = metalShapes[kind].safeParse(entry)
-  for (const issue of parsed.error?.issues ?? []) reportIssue(reading, issue, path, `metal.${kind}`)
+  const naming: Naming = { known: () => knownKeys[`metal.${kind}`] ?? [], holders }
+  for (const issue of parsed.error?.issues ?? []) reportIssue(reading, issue, path, naming)
   return parsed.data
 }
 
-/** Reports one issue found under `base`; `mapping` names the keys known there where the path does not. */
-function reportIssue(reading: Reading, issue: Issue, base: KeyPath, mapping?: string): void {
+/** Reports one issue of zod, found under `base`, as a problem with its place. */
+export function reportIssue(reading: Reading, issue: Issue, base: KeyPath, naming: Naming): void {
   const path = [...base, ...issue.path]
   const { places, report } = reading
   if (issue.code === 'unrecognized_keys') {
-    const known = knownKeys[mapping ?? mappingName(path)] ?? []
+    const known = naming.known(path)
     for (const key of issue.keys) report(places.key([...path, key]), unknownKey(key, known))
     return
   }
   if (issue.code === 'invalid_union') {
     const inner = innerIssues(issue)
     if (inner) {
-      for (const one of inner) reportIssue(reading, one, path, mapping)
+      for (const one of inner) reportIssue(reading, one, path, naming)
       return
     }
   }
@@ -75,7 +85,7 @@ function reportIssue(reading: Reading, issue: Issue, base: KeyPath, mapping?: st
   if (typeof key === 'string' && isKeyed(around) && !Object.hasOwn(around, key)) {
     const form = formOf(issue)
     const choices = issue.message === 'version' ? [] : choicesOf(issue)
-    report(places.value(path.slice(0, -1)), { code: 'missing-key', key, of: holder(path), form, choices })
+    report(places.value(path.slice(0, -1)), { code: 'missing-key', key, of: holder(path, naming), form, choices })
     return
   }
   report(places.value(path), valueFacts(issue, path, valueAt(reading.value, path)))
@@ -135,9 +145,9 @@ const holders: Readonly<Record<string, string>> = {
 }
 
 /** What lacks the key that ends the path. */
-const holder = (path: KeyPath): string => {
+const holder = (path: KeyPath, naming: Naming): string => {
   const around = path.slice(0, -1).findLast((key) => typeof key === 'string')
-  return around === undefined ? 'the file' : (holders[String(around)] ?? String(around))
+  return around === undefined ? 'the file' : (naming.holders[String(around)] ?? String(around))
 }
 
 const mappingName = (path: KeyPath): string => {

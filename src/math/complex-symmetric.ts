@@ -14,35 +14,53 @@ export function realTimesComplex(
   outRe: Float64Array,
   outIm: Float64Array,
 ): void {
-  // two rows at a time, so that each entry of x is fetched half as often
+  // four rows at a time, so that each entry of x is fetched a quarter as often
   let i = 0
-  for (; i + 1 < n; i += 2) {
+  for (; i + 3 < n; i += 4) {
     let re0 = 0
     let im0 = 0
     let re1 = 0
     let im1 = 0
-    for (let j = 0, p = i * n, q = p + n; j < n; j++, p++, q++) {
+    let re2 = 0
+    let im2 = 0
+    let re3 = 0
+    let im3 = 0
+    for (let j = 0, p = i * n; j < n; j++, p++) {
       const re = xRe[j]!
       const im = xIm[j]!
-      re0 += matrix[p]! * re
-      im0 += matrix[p]! * im
-      re1 += matrix[q]! * re
-      im1 += matrix[q]! * im
+      const m0 = matrix[p]!
+      const m1 = matrix[p + n]!
+      const m2 = matrix[p + 2 * n]!
+      const m3 = matrix[p + 3 * n]!
+      re0 += m0 * re
+      im0 += m0 * im
+      re1 += m1 * re
+      im1 += m1 * im
+      re2 += m2 * re
+      im2 += m2 * im
+      re3 += m3 * re
+      im3 += m3 * im
     }
     outRe[i] = re0
     outIm[i] = im0
     outRe[i + 1] = re1
     outIm[i + 1] = im1
+    outRe[i + 2] = re2
+    outIm[i + 2] = im2
+    outRe[i + 3] = re3
+    outIm[i + 3] = im3
   }
-  if (i === n) return
-  let re = 0
-  let im = 0
-  for (let j = 0; j < n; j++) {
-    re += matrix[i * n + j]! * xRe[j]!
-    im += matrix[i * n + j]! * xIm[j]!
+  // up to three rows are left
+  for (; i < n; i++) {
+    let re = 0
+    let im = 0
+    for (let j = 0, p = i * n; j < n; j++, p++) {
+      re += matrix[p]! * xRe[j]!
+      im += matrix[p]! * xIm[j]!
+    }
+    outRe[i] = re
+    outIm[i] = im
   }
-  outRe[i] = re
-  outIm[i] = im
 }
 
 /** L (unit lower triangle, row-major) and the reciprocals of D on the diagonal, of A = L D Lᵀ. */

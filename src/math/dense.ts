@@ -94,9 +94,12 @@ function dot(a: Float64Array, i: number, b: Float64Array, j: number, from: numbe
 
 /**
  * Cholesky factor A = L Lᵀ in place (lower triangle; what lies above the diagonal is left as scratch).
- * False when A is not positive definite; A is then spoilt.
+ * False when A is not positive definite; A is then spoilt. With `isolated` it does not fail (unless A holds no
+ * numbers): a row whose pivot falls under a fiftieth of its diagonal gets its whole diagonal as pivot and nothing in
+ * common with later rows, and is put on that list.
  */
-export function factorCholesky(a: Float64Array, n: number): boolean {
+export function factorCholesky(a: Float64Array, n: number, isolated?: number[]): boolean {
+  const diagonal = isolated && Float64Array.from({ length: n }, (_, c) => Math.abs(a[c * n + c]!))
   for (let j = 0; j < n; j += 4) {
     const end = Math.min(j + 4, n)
     // bring the panel of four columns up to date with all columns left of it
@@ -111,11 +114,18 @@ export function factorCholesky(a: Float64Array, n: number): boolean {
     }
     // factor the panel
     for (let c = j; c < end; c++) {
-      const pivot = a[c * n + c]! - dot(a, c * n, a, c * n, j, c)
+      let pivot = a[c * n + c]! - dot(a, c * n, a, c * n, j, c)
+      const alone = diagonal !== undefined && pivot < 0.02 * diagonal[c]!
+      if (alone) {
+        isolated?.push(c)
+        pivot = diagonal[c]!
+      }
       if (!(pivot > 0)) return false
       const root = Math.sqrt(pivot)
       a[c * n + c] = root
-      for (let i = c + 1; i < n; i++) a[i * n + c] = (a[i * n + c]! - dot(a, i * n, a, c * n, j, c)) / root
+      for (let i = c + 1; i < n; i++) {
+        a[i * n + c] = alone ? 0 : (a[i * n + c]! - dot(a, i * n, a, c * n, j, c)) / root
+      }
     }
   }
   return true

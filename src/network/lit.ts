@@ -3,8 +3,8 @@ import type { Complex } from '../math/complex.js'
 import { magnitude, minus, plus } from '../math/complex.js'
 import { firstDark, leastShares, tooWeak } from './dark.js'
 import type { CircuitString, Network, StringTube } from './network.js'
-import type { Burning, OperatingPoint } from './operating-point.js'
-import { operatingPoint } from './operating-point.js'
+import type { Burning, Effort, OperatingPoint } from './operating-point.js'
+import { bandEffort, operatingPoint } from './operating-point.js'
 import type { PhasorProblem } from './phasors.js'
 import { phasorProblem, placeCurrent, startFrom } from './phasors.js'
 import type { CircuitOutcome, CircuitSolution, ColumnCurrents, LitState, PotentialField } from './solution.js'
@@ -19,6 +19,8 @@ export interface LitOptions {
   readonly calibrations?: Calibrations | undefined
   /** the state at another factor: speeds the solution up, does not change it */
   readonly start?: LitState | undefined
+  /** how closely currents have to agree; 1e-10 where not given */
+  readonly effort?: Effort
 }
 
 /** the band of the column law, and the share of it that remains where a circuit was measured (±30 % → ±5 %) */
@@ -31,7 +33,9 @@ export function solveBand(
   calibrations?: Calibrations,
 ): { nominal: LitState; others: readonly LitState[] } {
   const nominal = solveLit(network, { factor: 1, calibrations })
-  const others = bandFactors.map((factor) => solveLit(network, { factor, calibrations, start: nominal }))
+  const others = bandFactors.map((factor) =>
+    solveLit(network, { factor, calibrations, start: nominal, effort: bandEffort }),
+  )
   return { nominal, others }
 }
 
@@ -40,7 +44,7 @@ export const circuitFactor = (factor: number, calibration: number | undefined): 
   calibration === undefined ? factor : calibration * (1 + (factor - 1) * measuredShare)
 
 /** Solves the whole sign. Circuits that cannot burn are left out one after the other, and the others solved again. */
-export function solveLit(network: Network, { factor, calibrations, start }: LitOptions): LitState {
+export function solveLit(network: Network, { factor, calibrations, start, effort }: LitOptions): LitState {
   const { circuits } = network
   const factors = circuits.map((_, c) => circuitFactor(factor, calibrations?.[c]))
   const unlit = new Map<number, CircuitOutcome>()
@@ -56,7 +60,7 @@ export function solveLit(network: Network, { factor, calibrations, start }: LitO
     const burning: Burning = { lit: circuits.map((_, c) => !unlit.has(c)), factors }
     if (!burning.lit.includes(true)) return litState(network, factor, undefined, unlit)
     const warm = start === undefined ? undefined : warmStart(network, burning, start)
-    const point = operatingPoint(network, burning, warm)
+    const point = operatingPoint(network, burning, warm, effort)
     const darkOf = (c: number) => firstDark(network, burning, c, brightFactor(start, c, calibrations))
     if ('failed' in point) {
       const c = point.failed

@@ -40,11 +40,17 @@ export interface Effort {
   /** relative change of any current at which a point counts as found */
   readonly settled: number
   readonly mostPasses: number
+  /** combine no passes: slow, the judge of the fast way */
+  readonly plain?: boolean
 }
 const fullEffort: Effort = { settled: 1e-10, mostPasses: 350 }
+/** enough for the ends of a band of ±30 % */
+export const bandEffort: Effort = { settled: 1e-7, mostPasses: 350 }
 /** enough to see which side of a limit a point lies on */
 export const roughEffort: Effort = { settled: 1e-5, mostPasses: 40 }
 
+/** accuracy of a pass against the change that the last one made */
+const innerShare = 1e-2
 /** lowest current a resistance is taken at, share of the rated current */
 const floor = 1e-4
 /** three plain passes below this share of the rated current: the column is going out */
@@ -166,7 +172,7 @@ function addPower(
 }
 
 /** Repeats passes on `u` until nothing changes: how many it took, or the circuit that failed. */
-function settle(work: Work, u: Float64Array, { settled, mostPasses }: Effort): number | NoPoint {
+function settle(work: Work, u: Float64Array, { settled, mostPasses, plain }: Effort): number | NoPoint {
   let last = Number.POSITIVE_INFINITY
   let ratio = 1
   let falling = 0
@@ -188,14 +194,14 @@ function settle(work: Work, u: Float64Array, { settled, mostPasses }: Effort): n
     const before = ratio
     ratio = size / last
     last = size
-    tolerance = Math.min(1e-3, Math.max(1e-13, 1e-3 * size))
+    tolerance = Math.min(1e-3, Math.max(1e-13, innerShare * size))
 
     if (mixing === undefined) {
       // plain passes from above never end below the point they go to
       const low = weakest(work, next)
       falling = low.share < goingOut ? falling + 1 : 0
       if (falling === 3) return { failed: low.circuit }
-      if (n > mixingFrom && Math.max(ratio, before) < 0.95) {
+      if (!plain && n > mixingFrom && Math.max(ratio, before) < 0.95) {
         mixing = { ratio, mode: change, best: size, retreat: next, steps: [], changes: [] }
       }
       if (mixing === undefined) {

@@ -26,6 +26,11 @@ interface Vector {
 }
 const vector = (n: number): Vector => ({ re: new Float64Array(n), im: new Float64Array(n) })
 
+interface Bridge {
+  readonly nodes: readonly [number, number]
+  readonly susceptance: number
+}
+
 /** A workspace: `volts` and `charge` are the solution, changed by `solvePhasors`. Indexed by node. */
 export interface PhasorProblem {
   readonly network: Network
@@ -44,7 +49,7 @@ export interface PhasorProblem {
    * of 1 V.
    */
   readonly halves?: number
-  readonly bridges: readonly { readonly nodes: readonly [number, number]; readonly susceptance: number }[]
+  readonly bridges: readonly Bridge[]
   /** imaginary part of the current that sources behind reactances drive into each node, A; the real part is 0 */
   readonly drive: Float64Array
   /** row sums of C over the free nodes, F */
@@ -63,66 +68,36 @@ export interface PhasorProblem {
   }
 }
 
-/** `grounded`: one more node held at 0 V. `frequency` in Hz is the source's own. */
+/** `grounded`: one more node held at 0 V. Solved at the frequency of the source. */
 export function phasorProblem(network: Network, source: number, grounded?: number): PhasorProblem {
-  const n = network.capacitance.count
-  const frequency = network.circuits[source]!.supply.frequency
-  const held = new Uint8Array(n)
-  const merged: [number, number][] = []
-  const bridges: PhasorProblem['bridges'][number][] = []
-  const susceptance = new Float64Array(n)
-  const drive = new Float64Array(n)
-  const volts = vector(n)
+  const { count: n } = network.capacitance
   const fed = network.circuits[source]!
   const halves =
     fed.supply.type === 'electronic' && fed.supply.grounding === 'midpoint' ? fed.midpointReturn : undefined
-
+  const ports = { held: new Uint8Array(n), susceptance: new Float64Array(n), drive: new Float64Array(n) }
+  const attached: Ports = { ...ports, merged: [], bridges: [], volts: vector(n) }
+  const { held, merged, volts } = attached
   for (const node of network.grounded) held[node] = 1
   if (grounded !== undefined) held[grounded] = 1
-  for (const [c, { supply, from, to, midpointReturn }] of network.circuits.entries()) {
-    const [one, two] = [network.node[from]!, network.node[to]!]
-    const attached: Attachment = attachment(supply, c === source, frequency)
+  for (const [c, circuit] of network.circuits.entries()) {
+    const ends = [network.node[circuit.from]!, network.node[circuit.to]!] as const
+    attach(attached, ends, attachment(circuit.supply, c === source, fed.supply.frequency))
     // a joint at the supply's midpoint is grounded where that is
-    if (midpointReturn !== undefined && supply.grounding === 'midpoint')
-      held[network.node[midpointReturn]!] = 1
-    if (attached.kind === 'held') {
-      held[one] = held[two] = 1
-      volts.re[one] = attached.volts[0]
-      volts.re[two] = attached.volts[1]
-    } else if (attached.kind === 'merged') {
-      merged.push([one, two])
-      volts.re[one] = attached.volts / 2
-      volts.re[two] = -attached.volts / 2
-    } else if (attached.kind === 'legs') {
-      susceptance[one] = attached.susceptance
-      drive[one] = attached.susceptance * attached.volts[0]
-      if (attached.both) {
-        susceptance[two] = attached.susceptance
-        drive[two] = attached.susceptance * attached.volts[1]
-      } else held[two] = 1
-    } else {
-      bridges.push({ nodes: [one, two], susceptance: attached.susceptance })
-      drive[one] = attached.susceptance * attached.volts
-      drive[two] = -attached.susceptance * attached.volts
-    }
+    const { midpointReturn: joint } = circuit
+    if (joint !== undefined && circuit.supply.grounding === 'midpoint') held[network.node[joint]!] = 1
   }
-
-  const heldNodes = Array.from(held.keys()).filter((i) => held[i] === 1)
-  const charge = vector(n)
-  realTimesComplex(network.capacitance.matrix, n, volts.re, volts.im, charge.re, charge.im)
-  return {
+  const problem: PhasorProblem = {
     network,
     source,
+    ...attached,
     ...(halves === undefined ? {} : { halves }),
-    omega: 2 * Math.PI * frequency,
-    held,
-    merged,
-    susceptance,
-    bridges,
-    drive,
-    freeRowSum: rowSums(network.capacitance, heldNodes),
+    omega: 2 * Math.PI * fed.supply.frequency,
+    freeRowSum: rowSums(
+      network.capacitance,
+      Array.from(held.keys()).filter((i) => held[i] === 1),
+    ),
     volts,
-    charge,
+    charge: vector(n),
     chains: emptyChains(network.node.length, chainRanges(network, merged)),
     scratch: {
       residual: vector(n),
@@ -132,6 +107,45 @@ export function phasorProblem(network: Network, source: number, grounded?: numbe
       charge: vector(n),
       places: vector(network.node.length),
     },
+  }
+  chargeNodes(problem)
+  return problem
+}
+
+interface Ports extends Pick<PhasorProblem, 'held' | 'susceptance' | 'drive' | 'volts'> {
+  readonly merged: (readonly [number, number])[]
+  readonly bridges: Bridge[]
+}
+
+/** Puts one supply, as source or as load, between its terminals' nodes. */
+function attach(
+  { held, susceptance, drive, merged, bridges, volts }: Ports,
+  [one, two]: readonly [number, number],
+  attached: Attachment,
+): void {
+  switch (attached.kind) {
+    case 'held':
+      held[one] = held[two] = 1
+      volts.re[one] = attached.volts[0]
+      volts.re[two] = attached.volts[1]
+      break
+    case 'merged':
+      merged.push([one, two])
+      volts.re[one] = attached.volts / 2
+      volts.re[two] = -attached.volts / 2
+      break
+    case 'legs':
+      susceptance[one] = attached.susceptance
+      drive[one] = attached.susceptance * attached.volts[0]
+      if (attached.both) {
+        susceptance[two] = attached.susceptance
+        drive[two] = attached.susceptance * attached.volts[1]
+      } else held[two] = 1
+      break
+    case 'bridge':
+      bridges.push({ nodes: [one, two], susceptance: attached.susceptance })
+      drive[one] = attached.susceptance * attached.volts
+      drive[two] = -attached.susceptance * attached.volts
   }
 }
 

@@ -2,6 +2,7 @@
 import type { BodyRef } from '../geometry/runs.js'
 import type { Point } from '../layout/layout.js'
 import type { Complex } from '../math/complex.js'
+import type { Mark, MissingRules, Quantity } from './rule-set.js'
 
 export type Condition = 'lit' | 'nameplate' | 'broken'
 export type Verdict = 'fix' | 'watch' | 'within'
@@ -21,9 +22,13 @@ export interface Spot {
 export interface RuleFinding {
   readonly set: string
   readonly clause: string
+  /** how sure the figure is */
+  readonly mark: Mark
   /** m */
   readonly needs: number
   readonly ok: boolean
+  /** the condition it went by */
+  readonly condition: 'lit' | 'nameplate'
   /** how bad by this rule, where it depends on voltage: difference over the difference this gap may have */
   readonly severity?: number
   readonly advice: string
@@ -50,7 +55,7 @@ export interface PairFinding {
   /** V peak across the air of the gap (glass and coatings taken off), and the one at which a discharge starts */
   readonly air: { readonly peak: number; readonly startsAt: number; readonly outcome: string }
   readonly rules: readonly RuleFinding[]
-  /** the condition the common-practice verdict was made on: nameplate where the circuit is not lit */
+  /** what physics and the rules that go by the lit sign were judged on: nameplate where the circuit is not lit */
   readonly judgedOn: 'lit' | 'nameplate'
   readonly severity: number
   readonly verdict: Verdict
@@ -111,6 +116,27 @@ export interface Loading {
   readonly verdict: Verdict
 }
 
+/** What a rule set says of a circuit; `parts` are the leads that are over a limit of length. */
+export type CircuitRuleFinding = {
+  readonly set: string
+  readonly clause: string
+  readonly mark: Mark
+  readonly advice: string
+  readonly verdict: Verdict
+  readonly parts: readonly string[]
+} & (
+  | {
+      readonly kind: 'limit'
+      readonly quantity: Quantity
+      /** SI */
+      readonly value: number
+      readonly limit: number
+      /** the limit holds for leads in metal conduit only */
+      readonly inMetalConduit: boolean
+    }
+  | { readonly kind: 'required'; readonly requires: 'ground-fault-protection' | 'open-circuit-protection' }
+)
+
 export interface CircuitFinding {
   readonly supply: string
   /** the lit solution has been sought; false while only the nameplate condition is known */
@@ -129,6 +155,8 @@ export interface CircuitFinding {
   readonly electrodePairs: number
   readonly terminals: readonly TerminalFinding[]
   readonly loadings: readonly Loading[]
+  /** what the chosen rule sets say of the circuit as a whole */
+  readonly rules: readonly CircuitRuleFinding[]
   /** in string order */
   readonly tubes: readonly TubeFinding[]
   readonly leads: readonly LeadFinding[]
@@ -142,10 +170,48 @@ export interface FloatingFinding {
   readonly touch: number
 }
 
-/** A caution, the most pressing first. */
-export interface Caution {
-  readonly level: 'danger' | 'fix' | 'watch' | 'note'
-  /** what it is about, stable for tests and for those who filter */
-  readonly code: string
-  readonly text: string
-}
+export type CautionLevel = 'danger' | 'fix' | 'watch' | 'note'
+
+/** What must be said about a sign beyond its figures, as facts; view/caution-text.ts says it in English. */
+export type Caution = { readonly level: CautionLevel } & CautionFacts
+
+/** `code` is what it is about, stable for tests and for those who filter. */
+export type CautionFacts =
+  | {
+      readonly code: 'dark'
+      readonly supply: string
+      readonly why: NonNullable<CircuitFinding['why']>
+      readonly neededVoltage?: number
+      readonly noLoadVoltage: number
+      /** the first to go dark first */
+      readonly dark: readonly string[]
+    }
+  | { readonly code: 'may-go-dark'; readonly supply: string }
+  /** the worst pair, and how many more are to fix and to watch */
+  | { readonly code: 'pairs'; readonly pair: PairFinding; readonly fix: number; readonly watch: number }
+  | { readonly code: 'floating-metal'; readonly id: string; readonly voltage: number; readonly touch: number }
+  | { readonly code: 'loading'; readonly supply: string; readonly loading: Loading }
+  | { readonly code: 'rule'; readonly supply: string; readonly finding: CircuitRuleFinding }
+  | {
+      readonly code: 'conduit'
+      readonly supply: string
+      readonly leads: readonly string[]
+      readonly governs: string
+    }
+  | { readonly code: 'not-modelled'; readonly what: 'sheets' | 'midpoint-return'; readonly parts: readonly string[] }
+  | { readonly code: 'rules-missing'; readonly missing: readonly MissingRules[] }
+  | { readonly code: 'glass-meets'; readonly tubes: readonly (readonly [string, string])[] }
+  | { readonly code: 'route-assumed'; readonly leads: readonly string[] }
+  | { readonly code: 'off-metal'; readonly leads: readonly string[] }
+  | { readonly code: 'lower-voltage'; readonly supply: string }
+  /** the current at the dimmest place of the string, A, of what the supply gives */
+  | {
+      readonly code: 'stray'
+      readonly supply: string
+      readonly tube: string
+      readonly least: number
+      readonly given: number
+      readonly tubeLength: number
+      readonly onMetal: boolean
+    }
+  | { readonly code: 'frequency'; readonly supply: string; readonly frequency: number }

@@ -1,13 +1,29 @@
 /** Verdicts on every place where two conductors pass each other. V rms unless said; m. */
 
-import { type GapStart, gapStart, type Surface, stressFrom } from '../gaps/gap-stress.js'
-import type { Body, FixedBody, LeadBody } from '../geometry/conductors.js'
+import { type GapStart, gapStart, stressFrom } from '../gaps/gap-stress.js'
 import type { BodyRef, CloseRun } from '../geometry/runs.js'
-import type { Layout, Point, Supply } from '../layout/layout.js'
-import { type NodeMix, nodeMix, type Probe, peakDifference, rmsDifference } from '../network/potentials.js'
+import type { Layout, Point } from '../layout/layout.js'
+import {
+  type NodeMix,
+  nodeMix,
+  type Probe,
+  peakDifference,
+  placeOnGround,
+  rmsDifference,
+} from '../network/potentials.js'
 import type { PotentialField } from '../network/solution.js'
-import { commonPractice } from './common-practice.js'
 import type { Differences, PairFinding, PartKind, RuleFinding, Spot, Verdict } from './findings.js'
+import {
+  type ChosenRule,
+  chosenRules,
+  type PlaceVoltage,
+  type RuleVoltages,
+  ruleFindings,
+  severityCap,
+} from './pair-rules.js'
+import { circuitsOf, type Parts, partKind, partName, surface } from './passing.js'
+import { otherPlaces } from './places.js'
+import type { RuleSet } from './rule-set.js'
 
 /** The lit fields of the nominal gradient and of the two ends of the band, of the circuits that are lit. */
 export interface LitFields {
@@ -17,16 +33,9 @@ export interface LitFields {
   readonly ceiling?: number
 }
 
-export interface PairContext {
+export interface PairContext extends Parts {
   readonly layout: Layout
-  readonly bodies: readonly FixedBody[]
-  readonly leads: readonly LeadBody[]
-  /** circuit of each lead and of each tube (−1: none), and the leads that are feeds */
-  readonly circuitOfLead: readonly number[]
-  readonly circuitOfTube: readonly number[]
-  readonly feeds: ReadonlySet<number>
-  /** the supply of each circuit */
-  readonly supplies: readonly Supply[]
+  readonly ruleSets: readonly RuleSet[]
   readonly probe: Probe
   readonly nameplate: readonly PotentialField[]
   readonly lit?: LitFields
@@ -35,19 +44,27 @@ export interface PairContext {
   readonly unlit: ReadonlySet<number>
 }
 
-/** part of a tube next to its electrode that counts as bare where there is no boot, m (ours) */
-const electrodeReach = 0.01
 /** rounding allowance of the gap when samples are compared: about the air that the walls stand for, m (ours) */
 const wallAllowance = 0.002
-const cap = 999
+
+/** What every pair of one sign is judged with. */
+interface Judge {
+  readonly context: PairContext
+  readonly rules: readonly ChosenRule[]
+}
+const judgeOf = (context: PairContext): Judge => ({
+  context,
+  rules: chosenRules(context.ruleSets, context.layout.altitude),
+})
 
 export function pairFindings(context: PairContext, runs: readonly CloseRun[]): PairFinding[] {
+  const judge = judgeOf(context)
   const seen = new Map<string, number>()
-  const findings = runs.map((run) => {
+  const findings = runs.flatMap((run) => {
     const names = `${partName(context, run.a)}|${partName(context, run.b)}`
     const count = seen.get(names) ?? 0
     seen.set(names, count + 1)
-    return pairFinding(context, run, `${names}|${count}`)
+    return runFindings(judge, run, `${names}|${count}`)
   })
   return findings.sort(worstFirst)
 }
@@ -56,41 +73,56 @@ const rank: Record<Verdict, number> = { fix: 0, watch: 1, within: 2 }
 export const worstFirst = (a: PairFinding, b: PairFinding): number =>
   rank[a.verdict] - rank[b.verdict] || b.severity - a.severity || a.gap - b.gap || (a.key < b.key ? -1 : 1)
 
-/** The finding at the worst sample of one run. */
-function pairFinding(context: PairContext, run: CloseRun, key: string): PairFinding {
+/**
+ * The finding at the place of a run with the most voltage for its gap; and at other places where a rule is broken
+ * that is met there: a fixed distance at the narrowest place, or what holds at electrodes only.
+ */
+function runFindings(judge: Judge, run: CloseRun, key: string): PairFinding[] {
+  const { context, rules } = judge
   const lit = litFor(context, run)
+  const weight = (i: number): number => {
+    const [a, b] = mixes(context, run, i)
+    return judgedDifference(context, lit, a, b) / (run.gap[i]! + wallAllowance)
+  }
   let worst = 0
   let most = -1
+  const weights = new Float64Array(run.gap.length)
   for (let i = 0; i < run.gap.length; i++) {
-    const [a, b] = mixes(context, run, i)
-    const weight = judgedDifference(context, lit, a, b) / (run.gap[i]! + wallAllowance)
-    if (weight > most * (1 + 1e-9)) {
-      most = weight
+    weights[i] = weight(i)
+    if (weights[i]! > most * (1 + 1e-9)) {
+      most = weights[i]!
       worst = i
     }
   }
-  return findingAt(context, run, worst, lit, key)
+  const kept = [findingAt(judge, run, worst, lit, key)]
+  for (const i of otherPlaces(context, rules, run, weights, worst)) {
+    const other = findingAt(judge, run, i, lit, `${key}|${kept.length}`)
+    if (saysMore(other, kept)) kept.push(other)
+  }
+  return kept
+}
+
+/** A worse verdict than all before, or a rule broken that is not broken at the places before. */
+function saysMore(other: PairFinding, before: readonly PairFinding[]): boolean {
+  const broken = (finding: PairFinding, { set, clause }: RuleFinding) =>
+    finding.rules.some((r) => !r.ok && r.set === set && r.clause === clause)
+  return (
+    before.every((finding) => rank[other.verdict] < rank[finding.verdict]) ||
+    other.rules.some((rule) => !rule.ok && !before.some((finding) => broken(finding, rule)))
+  )
 }
 
 /** The finding for any two spots: what the probe of the inspector asks for. `run` has one sample. */
 export const probeFinding = (context: PairContext, run: CloseRun): PairFinding =>
-  pairFinding(context, run, 'probe')
+  findingAt(judgeOf(context), run, 0, litFor(context, run), 'probe')
 
 function mixes({ probe }: PairContext, run: CloseRun, i: number): [NodeMix, NodeMix] {
   return [nodeMix(probe, run.a, run.atA[i]!), nodeMix(probe, run.b, run.atB[i]!)]
 }
 
 /** Lit fields, unless one of the two parts belongs to a circuit that is not lit. */
-function litFor(context: PairContext, run: CloseRun): LitFields | undefined {
-  const unlit = [run.a, run.b].some((body) => context.unlit.has(circuitOf(context, body)))
-  return unlit ? undefined : context.lit
-}
-
-function circuitOf(context: PairContext, body: BodyRef): number {
-  if (body.kind === 'lead') return context.circuitOfLead[body.index] ?? -1
-  if (body.kind === 'fixed') return context.circuitOfTube[body.index] ?? -1
-  return -1
-}
+const litFor = (context: PairContext, run: CloseRun): LitFields | undefined =>
+  circuitsOf(context, run).some((circuit) => context.unlit.has(circuit)) ? undefined : context.lit
 
 function judgedDifference(context: PairContext, lit: LitFields | undefined, a: NodeMix, b: NodeMix): number {
   return lit && context.condition === 'lit'
@@ -107,56 +139,62 @@ const upper = (lit: LitFields, measure: Measure, a: NodeMix, b: NodeMix): number
 const lower = (lit: LitFields, measure: Measure, a: NodeMix, b: NodeMix): number =>
   Math.min(measure(lit.nominal, a, b), ...lit.band.map((fields) => measure(fields, a, b)))
 
+/** Differences and potentials of one field set, or of one end of the lit band. */
+function placeVoltage(measure: (take: Measure, a: NodeMix, b: NodeMix) => number, a: NodeMix, b: NodeMix): PlaceVoltage {
+  const higher = (take: Measure) => Math.max(measure(take, a, placeOnGround), measure(take, b, placeOnGround))
+  return {
+    rms: measure(rmsDifference, a, b),
+    peak: measure(peakDifference, a, b),
+    toGround: () => ({ rms: higher(rmsDifference), peak: higher(peakDifference) }),
+  }
+}
+
 function findingAt(
-  context: PairContext,
+  { context, rules: chosen }: Judge,
   run: CloseRun,
   i: number,
   lit: LitFields | undefined,
   key: string,
 ): PairFinding {
   const [a, b] = mixes(context, run, i)
-  const gap = run.gap[i]!
   const start = startOf(context, run, i)
-  const noLoadPeak = peakDifference(context.nameplate, a, b)
+  const nameplate = placeVoltage((take, p, q) => take(context.nameplate, p, q), a, b)
   const relights = context.supplies.some((s) => s.type === 'core-and-coil')
-  const judged = (rms: number, peak: number) => {
-    const rules = ruleFindings(context, run, gap, rms)
+  const judged = (place: PlaceVoltage | undefined) => {
+    const voltages: RuleVoltages = place ? { lit: place, nameplate } : { nameplate }
+    const rules = ruleFindings(chosen, context, run, i, voltages)
     // on core-and-coil every half-cycle relights: the no-load peak counts as well
-    const stress = stressFrom(start, relights ? Math.max(peak, noLoadPeak) : peak)
+    const peak = place ? (relights ? Math.max(place.peak, nameplate.peak) : place.peak) : nameplate.peak
+    const stress = stressFrom(start, peak)
     return { rules, stress, verdict: judge(rules, stress.margin) }
   }
-  const difference = differences(context, lit, a, b)
-  const onLit = lit !== undefined && context.condition === 'lit'
-  const { rules, stress, verdict } = onLit
-    ? judged(upper(lit, rmsDifference, a, b), upper(lit, peakDifference, a, b))
-    : judged(difference.nameplate, noLoadPeak)
-  const atLow = onLit
-    ? judged(lower(lit, rmsDifference, a, b), lower(lit, peakDifference, a, b)).verdict
-    : verdict
+  const high = lit && placeVoltage((take, p, q) => upper(lit, take, p, q), a, b)
+  const low = lit && placeVoltage((take, p, q) => lower(lit, take, p, q), a, b)
+  const onLit = context.condition === 'lit' && lit !== undefined
+  const { rules, stress, verdict } = judged(onLit ? high : undefined)
+  const atLow = onLit ? judged(low).verdict : verdict
   return {
     key,
     kind: pairKind(context, run),
     a: spot(context, run.a, run.atA[i]!, run.pointA, i),
     b: spot(context, run.b, run.atB[i]!, run.pointB, i),
-    gap,
-    difference,
+    gap: run.gap[i]!,
+    difference: {
+      ...(lit &&
+        high &&
+        low && {
+          lit: rmsDifference(lit.nominal, a, b),
+          litLow: low.rms,
+          litHigh: high.rms,
+          litPeak: high.peak,
+        }),
+      nameplate: nameplate.rms,
+    },
     air: { peak: stress.airPeak, startsAt: stress.startsAt, outcome: stress.outcome },
     rules,
     ...verdict,
     judgedOn: onLit ? 'lit' : 'nameplate',
     unsure: (atLow.verdict === 'fix') !== (verdict.verdict === 'fix'),
-  }
-}
-
-function differences(context: PairContext, lit: LitFields | undefined, a: NodeMix, b: NodeMix): Differences {
-  const nameplate = rmsDifference(context.nameplate, a, b)
-  if (!lit) return { nameplate }
-  return {
-    lit: rmsDifference(lit.nominal, a, b),
-    litLow: lower(lit, rmsDifference, a, b),
-    litHigh: upper(lit, rmsDifference, a, b),
-    litPeak: upper(lit, peakDifference, a, b),
-    nameplate,
   }
 }
 
@@ -183,68 +221,13 @@ function startOf(context: PairContext, run: CloseRun, i: number): GapStart {
   return start
 }
 
-function body(context: PairContext, ref: BodyRef): Body | undefined {
-  if (ref.kind === 'fixed') return context.bodies[ref.index]
-  return ref.kind === 'lead' ? context.leads[ref.index] : undefined
-}
-
-function surface(context: PairContext, ref: BodyRef, at: number): Surface {
-  const part = body(context, ref)
-  if (!part) return { kind: 'plane', outerRadius: 0, wall: 0, permittivity: 1 }
-  const { outerRadius, coreRadius, permittivity } = part
-  const wall = outerRadius - coreRadius
-  const bare: Surface = { kind: 'bare', outerRadius, wall: 0, permittivity: 1 }
-  if (part.kind === 'bar') return bare
-  if (part.kind === 'lead') return { kind: 'insulated', outerRadius, wall, permittivity }
-  const atElectrode = at < electrodeReach || at > part.line.length - electrodeReach
-  return atElectrode && !part.boots ? bare : { kind: 'glass', outerRadius, wall, permittivity }
-}
-
-/** What the chosen rule sets say of a gap at a difference (V rms, the upper end of the lit band). */
-function ruleFindings(context: PairContext, run: CloseRun, gap: number, difference: number): RuleFinding[] {
-  const found: RuleFinding[] = []
-  if (!context.layout.rules.includes(commonPractice.id)) return found
-  const kinds = [partKind(context, run.a), partKind(context, run.b)]
-  const { thumb, outputLeads } = commonPractice
-  if (kinds.includes('tube') && !kinds.includes('lead')) {
-    const allowed = (thumb.voltage * gap) / thumb.gap
-    const severity =
-      gap >= thumb.gap ? 0 : Math.min(cap, allowed > 0 ? difference / allowed : difference > 0 ? cap : 0)
-    found.push({
-      set: commonPractice.id,
-      clause: thumb.clause,
-      needs: Math.min(thumb.gap, (thumb.gap * difference) / thumb.voltage),
-      ok: severity <= 1,
-      severity,
-      advice: thumb.advice,
-    })
-  }
-  if (betweenOutputLeads(context, run))
-    found.push({
-      set: commonPractice.id,
-      clause: outputLeads.clause,
-      needs: outputLeads.gap,
-      ok: gap >= outputLeads.gap,
-      advice: outputLeads.advice,
-    })
-  return found
-}
-
-function betweenOutputLeads(context: PairContext, { a, b }: CloseRun): boolean {
-  if (a.kind !== 'lead' || b.kind !== 'lead' || a.index === b.index) return false
-  const circuit = context.circuitOfLead[a.index]
-  if (circuit === undefined || circuit !== context.circuitOfLead[b.index]) return false
-  const supply = context.supplies[circuit]
-  return context.feeds.has(a.index) && context.feeds.has(b.index) && supply?.type === 'electronic'
-}
-
 /** Verdict, severity and which criterion governs: the worst verdict, then the worst severity. */
 function judge(
   rules: readonly RuleFinding[],
   margin: number,
 ): { severity: number; verdict: Verdict; governs: string } {
   const criteria = [
-    { governs: 'physics: discharge in the air', severity: Math.min(cap, margin), verdict: verdictOf(margin) },
+    { governs: 'physics: discharge in the air', severity: Math.min(severityCap, margin), verdict: verdictOf(margin) },
     ...rules.map((r) => ({
       governs: `${r.set}: ${r.clause}`,
       severity: r.severity ?? 0,
@@ -260,12 +243,6 @@ function judge(
 /** `fix` above 1, `watch` above 0.8. */
 export const verdictOf = (severity: number): Verdict =>
   severity > 1 ? 'fix' : severity > 0.8 ? 'watch' : 'within'
-
-function partKind(context: PairContext, ref: BodyRef): PartKind {
-  const part = body(context, ref)
-  return !part ? 'face' : part.kind === 'bar' ? 'metal' : part.kind
-}
-const partName = (context: PairContext, ref: BodyRef): string => body(context, ref)?.name ?? 'face'
 
 function pairKind(context: PairContext, { a, b }: CloseRun): string {
   const order: PartKind[] = ['tube', 'lead', 'metal', 'face']

@@ -24,12 +24,15 @@ const reachInCells = 1.6
 
 /** The part of the sign on the map: the user's window, or the whole sign fitted. */
 export function mapWindow(state: State): MapWindow {
-  const { map } = frame(state.columns, state.rows, state.present.sign.wiring.circuits.length)
+  const whole = wholeWindow(state)
   const { window, behind } = state.view
-  const base = window
-    ? resized(window, map.width, map.height)
-    : fitWindow(signBounds(state), map.width, map.height)
+  const base = window ? resized(window, whole.columns, whole.rows) : whole
   return base.mirrored === behind ? base : turnedOver(base)
+}
+
+function wholeWindow(state: State): MapWindow {
+  const { map } = frame(state.columns, state.rows, state.present.sign.wiring.circuits.length)
+  return fitWindow(signBounds(state), map.width, map.height)
 }
 
 /** The rectangle round all glass, leads, metal and the supply. */
@@ -162,7 +165,7 @@ export function aimByKey(state: State, action: Action): State | undefined {
 function stepped(state: State, by: number, round = true): State {
   const count = listedPairs(state).length
   if (count === 0) return state
-  // coming back from the map, the first step goes to where the list was left
+  // coming back from the map, the first step goes to the worst pair
   if (state.cursor.on === 'map') return onPair(state, 0)
   const index = (selectedPair(state)?.index ?? 0) + by
   return onPair(state, round ? ((index % count) + count) % count : Math.min(count - 1, Math.max(0, index)))
@@ -185,8 +188,19 @@ function moved(state: State, columns: number, rows: number): State {
   const from = placeOfCursor(state) ?? { x: mapWindow(state).x, y: mapWindow(state).y }
   const window = mapWindow(state)
   const cell = cellAt(window, from.x, from.y)
-  const to = placeAt(window, { column: cell.column + columns, row: cell.row + rows })
+  const to = onDrawing(state, placeAt(window, { column: cell.column + columns, row: cell.row + rows }))
   return inView({ ...state, cursor: { on: 'map', x: to.x, y: to.y, pick: 0 } })
+}
+
+/** The cursor does not leave what the fitted map shows. */
+function onDrawing(state: State, { x, y }: { x: number; y: number }): { x: number; y: number } {
+  const whole = wholeWindow(state)
+  const across = ((whole.columns - 1) / 2) * whole.step
+  const down = ((whole.rows - 1) / 2) * whole.step * whole.aspect
+  return {
+    x: Math.min(whole.x + across, Math.max(whole.x - across, x)),
+    y: Math.min(whole.y + down, Math.max(whole.y - down, y)),
+  }
 }
 
 /** A zoomed view follows the cursor. */
@@ -199,10 +213,11 @@ export function inView(state: State): State {
 function zoomedBy(state: State, factor: number): State {
   const window = mapWindow(state)
   const place = placeOfCursor(state) ?? { x: window.x, y: window.y }
-  return {
-    ...state,
-    view: { ...state.view, window: zoomed(window, factor, cellAt(window, place.x, place.y)) },
-  }
+  const next = zoomed(window, factor, cellAt(window, place.x, place.y))
+  const { window: _, ...fitted } = state.view
+  // zoomed out as far as the whole sign: fitted again
+  if (next.step >= wholeWindow(state).step * (1 - 1e-9)) return { ...state, view: fitted }
+  return { ...state, view: { ...fitted, window: next } }
 }
 
 /** Marks the place under the cursor, or takes the mark away when it is there already. */

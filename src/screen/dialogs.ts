@@ -1,6 +1,6 @@
 /** Dialogs: what they ask, how an answer is read, and what follows. Figures typed carry the unit of their prompt. */
 import type { Fill, Grounding, SupplyType } from '../layout/layout.js'
-import { kvFigure, lengthFigure, maFigure, supplyShort } from '../view/words.js'
+import { kvFigure, maFigure, supplyShort } from '../view/words.js'
 import { onPair } from './aim.js'
 import {
   circuitUnderCursor,
@@ -17,6 +17,14 @@ import {
 } from './editing.js'
 import type { Action } from './keys.js'
 import type { Choice, Dialog, Next, PickKind, PromptKind, State, SupplyFigure } from './state.js'
+import {
+  currentUnits,
+  frequencyUnits,
+  lengthUnits,
+  typedFigure,
+  type UnitScale,
+  voltageUnits,
+} from './typed.js'
 
 const open = (state: State, dialog: Dialog): Next => {
   const { message: _, ...rest } = state
@@ -65,7 +73,7 @@ function askHeight(state: State, tube: string): Next {
     state,
     { for: 'tube-height', tube },
     `Height of ${tube}, ${layout.units}`,
-    lengthFigure(height, layout.units),
+    figureText(height / lengthUnits[layout.units]!),
   )
 }
 
@@ -113,11 +121,25 @@ function chooseSupply(state: State): Next {
       )
 }
 
-const figureTitles: Record<SupplyFigure, string> = {
-  no_load_kv: 'No-load voltage, kV rms',
-  short_circuit_ma: 'Short-circuit current, mA',
-  frequency_hz: 'Frequency, Hz',
+interface FigureKind {
+  readonly title: string
+  readonly unit: string
+  readonly units: UnitScale
+  readonly key: 'noLoadVoltage' | 'shortCircuitCurrent' | 'frequency'
 }
+const figureKinds: Record<SupplyFigure, FigureKind> = {
+  no_load_kv: { title: 'No-load voltage, kV rms', unit: 'kV', units: voltageUnits, key: 'noLoadVoltage' },
+  short_circuit_ma: {
+    title: 'Short-circuit current, mA',
+    unit: 'mA',
+    units: currentUnits,
+    key: 'shortCircuitCurrent',
+  },
+  frequency_hz: { title: 'Frequency, Hz', unit: 'Hz', units: frequencyUnits, key: 'frequency' },
+}
+
+/** without the rounding of the readout: what is not touched must not change */
+const figureText = (value: number): string => String(Number(value.toPrecision(9)))
 
 function chooseFigure(state: State, supply: string): Next {
   const s = state.present.sign.layout.supplies.find((one) => one.id === supply)
@@ -164,16 +186,12 @@ function figureChosen(state: State, supply: string, value: string): Next {
   const s = state.present.sign.layout.supplies.find((one) => one.id === supply)
   const figure = (['no_load_kv', 'short_circuit_ma', 'frequency_hz'] as const).find((f) => f === value)
   if (!s || !figure) return stay(state)
-  const now = {
-    no_load_kv: s.noLoadVoltage / 1000,
-    short_circuit_ma: s.shortCircuitCurrent * 1000,
-    frequency_hz: s.frequency,
-  }[figure]
+  const { title, unit, units, key } = figureKinds[figure]
   return ask(
     state,
     { for: 'supply-figure', supply, figure },
-    `${figureTitles[figure]} of ${supply}`,
-    String(Number(now.toPrecision(6))),
+    `${title} of ${supply}`,
+    figureText(s[key] / units[unit.toLowerCase()]!),
   )
 }
 
@@ -185,40 +203,38 @@ export function submitted(state: State, prompt: PromptKind, text: string): Next 
       return filtered(after, text)
     case 'variant-name':
       return variantKept(after, text)
-    case 'tube-height': {
-      const number = numberOf(text)
-      if (number === undefined)
-        return say(
-          state,
-          `"${text}" is not a number. Type the height in ${state.present.sign.layout.units}.`,
-          'bad',
-        )
-      return heightTyped(
-        after,
-        prompt.tube,
-        number * (state.present.sign.layout.units === 'in' ? 0.0254 : 0.001),
-      )
-    }
-    case 'supply-figure': {
-      const number = numberOf(text)
-      if (number === undefined)
-        return say(state, `"${text}" is not a number. ${figureTitles[prompt.figure]}.`, 'bad')
-      const figures = {
-        no_load_kv: { noLoadVoltage: number * 1000 },
-        short_circuit_ma: { shortCircuitCurrent: number / 1000 },
-        frequency_hz: { frequency: number },
-      }[prompt.figure]
-      return figureTyped(after, prompt.supply, figures)
-    }
+    case 'tube-height':
+      return heightSubmitted(state, prompt.tube, text)
+    case 'supply-figure':
+      return figureSubmitted(state, prompt.supply, prompt.figure, text)
   }
 }
 
-/** a decimal comma is as good as a point */
-function numberOf(text: string): number | undefined {
-  const clean = text.trim().replace(',', '.')
-  const value = Number(clean)
-  return clean === '' || !Number.isFinite(value) ? undefined : value
+function heightSubmitted(state: State, tube: string, text: string): Next {
+  const { units, tubes } = state.present.sign.layout
+  const height = typedFigure(text, lengthUnits, units)
+  if (height === undefined)
+    return say(state, `"${text}" is not a height. Type a number, in ${units} or with its unit.`, 'bad')
+  if (same(height, tubes.find((t) => t.id === tube)?.height)) return say(closed(state), 'Left as it was.')
+  return openWhenRefused(state, heightTyped(closed(state), tube, height))
 }
+
+function figureSubmitted(state: State, supply: string, figure: SupplyFigure, text: string): Next {
+  const { unit, units, key } = figureKinds[figure]
+  const value = typedFigure(text, units, unit)
+  if (value === undefined)
+    return say(state, `"${text}" is not such a figure. Type a number, in ${unit} or with its unit.`, 'bad')
+  const old = state.present.sign.layout.supplies.find((s) => s.id === supply)?.[key]
+  if (same(value, old)) return say(closed(state), 'Left as it was.')
+  return openWhenRefused(state, figureTyped(closed(state), supply, { [key]: value }))
+}
+
+/** to the digits that a prompt shows */
+const same = (one: number, other = Number.NaN): boolean => Math.abs(one - other) <= 1e-8 * Math.abs(other)
+
+/** A value out of range keeps its prompt, so that it can be put right. */
+const openWhenRefused = ({ dialog }: State, next: Next): Next =>
+  next.effects.length > 0 || !dialog ? next : { ...next, state: { ...next.state, dialog } }
 
 function filtered(state: State, text: string): Next {
   const next = onPair({ ...state, filter: text.trim() }, 0)

@@ -26,7 +26,7 @@ import {
 } from '../wiring/edits.js'
 import { footsOfPair, footUnderCursor, placeOfCursor } from './aim.js'
 import type { Action } from './keys.js'
-import { type Foot, type Next, type State, type Step, selectedPair } from './state.js'
+import { type Foot, type Next, type State, type Step, selectedPair, unsaved } from './state.js'
 
 export const stay = (state: State): Next => ({ state, effects: [] })
 export const say = (state: State, text: string, level: 'good' | 'plain' | 'bad' = 'plain'): Next =>
@@ -108,11 +108,7 @@ export function redo(state: State): Next {
 
 export function asFiled(state: State): Next {
   const { sign } = state.opened
-  if (
-    state.present.sign === sign ||
-    (state.present.sign.layout === sign.layout && sameWiring(state.present.sign.wiring, sign.wiring))
-  )
-    return say(state, "This is the file's wiring already.")
+  if (!unsaved(state)) return say(state, "This is the file's wiring already.")
   return commit(state, sign, "back to the file's wiring")
 }
 
@@ -274,6 +270,13 @@ export function variantKept(state: State, name: string): Next {
   )
 }
 
+const figureNames: Readonly<Record<string, string>> = {
+  noLoadVoltage: 'No-load voltage',
+  shortCircuitCurrent: 'Short-circuit current',
+  frequency: 'Frequency',
+  height: 'Height',
+}
+
 export function refusalText(why: Refusal): string {
   switch (why.code) {
     case 'no-such-part':
@@ -287,7 +290,7 @@ export function refusalText(why: Refusal): string {
     case 'other-circuit':
       return `${why.ends[0]} and ${why.ends[1]} belong to different circuits.`
     case 'out-of-range':
-      return `${why.what} must be ${why.allowed}.`
+      return `${figureNames[why.what] ?? why.what} must be ${why.allowed}.`
     case 'only-tube':
       return `${why.supply} has one tube only: its feed has nowhere else to go. Swap the terminals (x) instead.`
   }

@@ -69,7 +69,8 @@ export function frame(columns: number, rows: number, circuits = 1): Frame {
   }
   const panel = columns < 100 ? 31 : Math.min(66, Math.floor(columns * 0.38))
   const left = columns - panel
-  const loading = Math.min(body - 4, loadingRows * Math.max(1, Math.min(circuits, body > 24 ? 3 : 1)))
+  const wanted = loadingRows * Math.max(1, Math.min(circuits, body > 24 ? 3 : 1))
+  const loading = Math.max(1, Math.min(body - 4, wanted))
   return {
     ...fixed,
     map: box(0, 1, left - 1, body),

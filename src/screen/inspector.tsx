@@ -26,7 +26,7 @@ export interface Store {
 export function Inspector({ store, theme }: { readonly store: Store; readonly theme: Theme }) {
   const state = useSyncExternalStore(store.subscribe, store.state)
   const { columns, rows } = state
-  if (columns < smallest.columns || rows < smallest.rows) return <TooSmall columns={columns} rows={rows} />
+  if (columns < smallest.columns || rows < smallest.rows) return <TooSmall state={state} />
   const boxes = frame(columns, rows, state.present.sign.wiring.circuits.length)
   const draw = (place: Place, lines: readonly Line[]) => (
     <Rows place={place} lines={state.ascii ? lines.map(asciiLine) : lines} theme={theme} />
@@ -91,10 +91,15 @@ function Panes({ state, store, theme, draw }: PanesProps) {
 
 const asciiLine = (spans: Line): Line => spans.map((s) => ({ ...s, text: asciiOnly(s.text) }))
 
-function TooSmall({ columns, rows }: { readonly columns: number; readonly rows: number }) {
+function TooSmall({ state }: { readonly state: State }) {
+  const { columns, rows, dialog } = state
   return (
     <Box width={columns} height={rows} flexDirection="column">
-      <Text wrap="wrap">{`tubewright needs ${smallest.columns}x${smallest.rows} cells; this window has ${columns}x${rows}. Make it larger, or q to leave.`}</Text>
+      <Text wrap="wrap">
+        {dialog?.kind === 'quit'
+          ? 'Not saved. s save and quit, d discard and quit, Esc stay.'
+          : `tubewright needs ${smallest.columns}x${smallest.rows} cells; this window has ${columns}x${rows}. Make it larger, or q to leave.`}
+      </Text>
       <Text wrap="wrap">HIGH VOLTAGE KILLS. Lock out first.</Text>
     </Box>
   )
@@ -130,6 +135,16 @@ function Rows({
 
 const rowsOf = ({ y, height }: Place): number[] => Array.from({ length: height }, (_, i) => y + i)
 
+/** The pick list in the program's own looks: they must be seen without colour and in pure ASCII too. */
+const Pointer = ({ isSelected = false }: { readonly isSelected?: boolean }) => (
+  <Text>{isSelected ? '> ' : '  '}</Text>
+)
+const Choice = ({ isSelected = false, label }: { readonly isSelected?: boolean; readonly label: string }) => (
+  <Text inverse={isSelected} wrap="truncate">
+    {label}
+  </Text>
+)
+
 /** What is open over the map. Closed: an empty box, over which the sink lays the map. */
 function Dialogs({
   state,
@@ -163,8 +178,14 @@ function Dialogs({
         <Box flexDirection="column" width={place.width}>
           <Rows place={{ ...place, height: 1 }} lines={[line(dialog.title, 'title')]} theme={theme} />
           <SelectInput
-            items={dialog.choices.map((c) => ({ label: c.label, value: c.value, key: c.value }))}
+            items={dialog.choices.map(({ label, value }) => ({
+              label: state.ascii ? asciiOnly(label) : label,
+              value,
+              key: value,
+            }))}
             limit={Math.max(1, place.height - 2)}
+            indicatorComponent={Pointer}
+            itemComponent={Choice}
             onSelect={({ value }) => store.dispatch({ type: 'picked', value })}
           />
         </Box>

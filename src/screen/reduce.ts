@@ -1,10 +1,11 @@
 /** Every event of the inspector: keys, answers of dialogs, solutions, saves. A pure function from state to state. */
 import { inspection, type Solved } from '../inspection.js'
-import { aimByKey, marked } from './aim.js'
+import { aimByKey, inView, marked } from './aim.js'
 import { editChange } from './change.js'
 import { closed, dialogByKey, picked, submitted } from './dialogs.js'
 import { asFiled, editByKey, redo, say, stay, undo } from './editing.js'
 import { type Action, actionOf } from './keys.js'
+import { lastScroll } from './panes/sheets.js'
 import { type Next, type Opened, type State, unsaved } from './state.js'
 
 export type Event =
@@ -22,7 +23,7 @@ export function reduce(state: State, event: Event): Next {
     case 'key':
       return key(state, event.key)
     case 'resized':
-      return stay({ ...state, columns: event.columns, rows: event.rows })
+      return stay(inView({ ...state, columns: event.columns, rows: event.rows }))
     case 'solved':
       return solved(state, event.revision, event.solved)
     case 'typed':
@@ -177,5 +178,6 @@ function scrolled(state: State, name: string): Next {
   if (dialog?.kind !== 'help' && dialog?.kind !== 'cautions') return stay(state)
   const by = scrollKeys[name]
   if (by === undefined) return stay(closed(state))
-  return stay({ ...state, dialog: { ...dialog, scroll: Math.max(0, dialog.scroll + by) } })
+  const scroll = Math.min(lastScroll(state), Math.max(0, dialog.scroll + by))
+  return stay({ ...state, dialog: { ...dialog, scroll } })
 }

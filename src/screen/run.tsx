@@ -8,7 +8,7 @@ import { mapPane } from './map-pane.js'
 import { type Event, reduce } from './reduce.js'
 import type { Solving } from './solving.js'
 import { initialState } from './start.js'
-import type { Effect } from './state.js'
+import { type Effect, unsaved } from './state.js'
 import { frameSink } from './terminal/frame-sink.js'
 import { keyPump } from './terminal/key-pump.js'
 import { openScreen } from './terminal/open-screen.js'
@@ -80,7 +80,7 @@ export function runInspector(file: LayoutFile, options: RunOptions, worker: Solv
         return
       case 'quit':
         // after a save that failed the work stays on the screen
-        if (!quitAfterSave || state.present.sign === state.opened.sign || state.dialog?.kind === 'quit') end()
+        if (!quitAfterSave || !unsaved(state) || state.dialog?.kind === 'quit') end()
         return
       case 'suspend':
         screen.suspend()

@@ -4,7 +4,7 @@ import type { BodyRef } from '../geometry/runs.js'
 import type { Inspection, Prepared, Solved } from '../inspection.js'
 import type { PairFinding } from '../rules/findings.js'
 import type { MapWindow } from '../view/map-window.js'
-import type { Sign } from '../wiring/edits.js'
+import { type Sign, sameWiring } from '../wiring/edits.js'
 
 /** The file as it was read. */
 export interface Opened {
@@ -124,7 +124,9 @@ export interface Next {
   readonly effects: readonly Effect[]
 }
 
-export const unsaved = ({ present, opened }: State): boolean => present.sign !== opened.sign
+/** the sign on screen says something else than the file */
+export const unsaved = ({ present, opened }: Pick<State, 'present' | 'opened'>): boolean =>
+  present.sign.layout !== opened.sign.layout || !sameWiring(present.sign.wiring, opened.sign.wiring)
 
 /** The pairs that pass the filter, worst first. */
 export function listedPairs({
@@ -133,9 +135,10 @@ export function listedPairs({
 }: Pick<State, 'inspection' | 'filter'>): readonly PairFinding[] {
   if (filter === '') return inspection.pairs
   const wanted = filter.toLowerCase()
-  return inspection.pairs.filter((p) =>
-    `${p.a.part} ${p.b.part} ${p.kind} ${p.verdict} ${p.governs}`.toLowerCase().includes(wanted),
-  )
+  return inspection.pairs.filter((p) => {
+    const names = p.a.part === p.b.part ? `${p.a.part} itself` : `${p.a.part} ${p.b.part}`
+    return `${names} ${p.kind} ${p.verdict} ${p.governs}`.toLowerCase().includes(wanted)
+  })
 }
 
 /** The pair the cursor is on: by its key, else the worst. */

@@ -275,7 +275,8 @@ export function withTubeHeight(layout: Layout, id: string, height: number): Edit
 export function withTubeFill(layout: Layout, id: string, fill: Fill): Edit<Layout> {
   const tube = layout.tubes.find((t) => t.id === id)
   if (!tube) return refused({ code: 'no-such-part', part: id })
-  if (tube.fill === fill) return refused({ code: 'nothing-to-change', what: `${id} is filled with ${fill} already` })
+  if (tube.fill === fill)
+    return refused({ code: 'nothing-to-change', what: `${id} is filled with ${fill} already` })
   return done({ ...layout, tubes: layout.tubes.map((t) => (t.id === id ? { ...t, fill } : t)) })
 }
 

@@ -1,11 +1,12 @@
 /**
  * The edited sign as a change of the file's text: only the bytes of what was edited are replaced, everything else
- * (comments, order, alignment, line ends) stays. yaml's own printing is not used on the document: it would reformat.
+ * (comments, order, alignment, line ends) stays.
  */
-import { type Document, isAlias, isMap, isScalar, isSeq, type Node, parseDocument, type YAMLMap } from 'yaml'
+import { isScalar, isSeq } from 'yaml'
 import type {
   CircuitWiring,
   Layout,
+  Measured,
   PathPoint,
   StringEntry,
   Supply,
@@ -13,122 +14,139 @@ import type {
   Wiring,
 } from '../layout/layout.js'
 import type { Sign } from './edits.js'
+import {
+  append,
+  type Entry,
+  nodeAt,
+  type Page,
+  type Patch,
+  type Path,
+  pageOf,
+  patched,
+  removeKey,
+  replaced,
+  rewritten,
+  setKey,
+} from './page.js'
 
-/** The text being edited, parsed; `newline` is the line end it uses. */
-interface Page {
-  readonly document: Document
-  readonly source: string
-  readonly newline: string
-}
-
-/** Replaces source[start, end) by `text`. */
-interface Patch {
-  readonly start: number
-  readonly end: number
-  readonly text: string
-}
-
-/** The source with the differences between the sign it holds (`from`) and the edited one (`to`) written in. */
+/**
+ * The source with the differences between the sign it holds (`from`) and the edited one (`to`) written in. What the
+ * text has no place for (a circuit taken away, parts behind an alias) is left out: read the text back before using it.
+ */
 export function editedText(source: string, from: Sign, to: Sign): string {
-  const page: Page = {
-    document: parseDocument(source),
-    source,
-    newline: source.includes('\r\n') ? '\r\n' : '\n',
-  }
-  const patches = [
-    ...wiringPatches(page, from.wiring, to.wiring),
+  const page = pageOf(source)
+  return patched(source, [
+    ...wiringPatches(page, ['circuits'], from.wiring, to.wiring),
     ...supplyPatches(page, from.layout, to.layout),
     ...tubePatches(page, from.layout, to.layout),
     ...variantPatches(page, from.layout, to.layout),
-  ]
-  // from the back, so that earlier offsets stay true
-  return patches
-    .sort((a, b) => b.start - a.start)
-    .reduce((text, { start, end, text: put }) => text.slice(0, start) + put + text.slice(end), source)
+  ])
 }
 
 const plain = /^[\p{L}_][\p{L}\p{N}_.-]*$/u
+/** plain words that YAML takes for something else than text */
+const reserved = /^(true|false|null)$/i
 const scalarText = (text: string): string =>
-  plain.test(text.replace(/^-/, '')) ? text : JSON.stringify(text)
-const entryText = ({ tube, reversed }: StringEntry): string => scalarText(`${reversed ? '-' : ''}${tube}`)
+  plain.test(text.replace(/^-/, '')) && !reserved.test(text) ? text : JSON.stringify(text)
+const entryName = ({ tube, reversed }: StringEntry): string => `${reversed ? '-' : ''}${tube}`
+const entryText = (entry: StringEntry): string => scalarText(entryName(entry))
 const stringText = (string: readonly StringEntry[]): string => `[${string.map(entryText).join(', ')}]`
-const numberText = (value: number): string => String(Number(value.toPrecision(9)))
 
-/** start and end of a node's own text, without trailing comments and blank lines */
-function extent(node: Node): [number, number] {
-  const range = node.range
-  if (!range) throw new Error('a node of a parsed document has a range')
-  return [range[0], range[1]]
+/** Nine digits, and nothing below a billionth of the unit: what arithmetic leaves behind is not written. */
+const numberText = (value: number): string =>
+  String(Math.round(Number(value.toPrecision(9)) * 1e9) / 1e9).replace(/^-0$/, '0')
+
+function wiringPatches(page: Page, path: Path, from: Wiring, to: Wiring): Patch[] {
+  const changed = to.circuits
+    .slice(0, from.circuits.length)
+    .flatMap((circuit, i) => circuitPatches(page, [...path, i], from.circuits[i]!, circuit))
+  const added = to.circuits.slice(from.circuits.length).map((c): Entry => {
+    const text = circuitText(c)
+    return { flow: text, block: [text] }
+  })
+  return [...changed, ...append(page, path, added)]
 }
 
-const replaced = (node: Node, text: string): Patch => {
-  const [start, end] = extent(node)
-  return { start, end, text }
+function circuitPatches(page: Page, path: Path, from: CircuitWiring, to: CircuitWiring): Patch[] {
+  const key = (name: string, was: string | undefined, is: string | undefined): Patch[] => {
+    if (was === is) return []
+    return is === undefined ? removeKey(page, path, name) : setKey(page, path, name, is, 'string')
+  }
+  return [
+    ...key('supply', scalarText(from.supply), scalarText(to.supply)),
+    ...stringPatches(page, [...path, 'string'], from.string, to.string),
+    ...key('midpoint_return', returnText(from), returnText(to)),
+    ...key('measured', measuredText(from.measured), measuredText(to.measured)),
+  ]
 }
 
-const nodeAt = ({ document }: Page, ...path: (string | number)[]): Node | undefined => {
-  const found = document.getIn(path, true)
-  return isScalar(found) || isMap(found) || isSeq(found) || isAlias(found) ? found : undefined
+const returnText = ({ midpointReturn }: CircuitWiring): string | undefined =>
+  midpointReturn === undefined ? undefined : scalarText(midpointReturn)
+
+function measuredText(measured: Measured | undefined): string | undefined {
+  if (!measured) return undefined
+  const { primaryPower, currents } = measured
+  const ends = [...currents].map(([end, amperes]) => `${scalarText(end)}: ${numberText(amperes * 1000)}`)
+  const parts = [
+    ...(primaryPower === undefined ? [] : [`primary_w: ${numberText(primaryPower)}`]),
+    ...(ends.length > 0 ? [`ma: {${ends.join(', ')}}`] : []),
+  ]
+  return `{${parts.join(', ')}}`
 }
 
-/** A string of the same length keeps its layout on the page: only the entries are replaced. */
-function stringPatches(page: Page, path: (string | number)[], string: readonly StringEntry[]): Patch[] {
-  const node = nodeAt(page, ...path)
-  if (!node) return []
-  if (!isSeq(node) || node.items.length !== string.length) return [replaced(node, stringText(string))]
-  return string.flatMap((entry, i) => {
-    const old = nodeAt(page, ...path, i)
-    const text = entryText(entry)
-    return old && !(isScalar(old) && String(old.value) === `${entry.reversed ? '-' : ''}${entry.tube}`)
-      ? [replaced(old, text)]
-      : []
+/** A string of the same length keeps its layout on the page: only the entries that moved are replaced. */
+function stringPatches(
+  page: Page,
+  path: Path,
+  from: readonly StringEntry[],
+  to: readonly StringEntry[],
+): Patch[] {
+  const node = nodeAt(page, path)
+  if (!node || stringText(from) === stringText(to)) return []
+  const written = writtenEntries(page, path)
+  const texts = to.map((entry) => asWritten(entry, written.get(entry.tube)))
+  if (!isSeq(node) || node.items.length !== to.length) return [rewritten(page, node, texts)]
+  return to.flatMap((entry, i) => {
+    const old = nodeAt(page, [...path, i])
+    const same = from[i] !== undefined && entryName(from[i]) === entryName(entry)
+    return old && !same ? [replaced(page, old, texts[i]!)] : []
   })
 }
 
-function wiringPatches(
-  page: Page,
-  from: Wiring,
-  to: Wiring,
-  path: (string | number)[] = ['circuits'],
-): Patch[] {
-  return to.circuits.flatMap((circuit, i) =>
-    sameString(from.circuits[i], circuit) ? [] : stringPatches(page, [...path, i, 'string'], circuit.string),
-  )
+/** How each tube is written in a string of the text, quotes and all. */
+function writtenEntries(page: Page, path: Path): Map<string, string> {
+  const list = nodeAt(page, path)
+  const written = new Map<string, string>()
+  if (!isSeq(list)) return written
+  for (const node of list.items) {
+    if (!isScalar(node) || !node.range) continue
+    const text = page.source.slice(node.range[0], node.range[1])
+    written.set(String(node.value).replace(/^-/, ''), text)
+  }
+  return written
 }
 
-const sameString = (a: CircuitWiring | undefined, b: CircuitWiring): boolean =>
-  a !== undefined && stringText(a.string) === stringText(b.string)
-
-/** Sets `key` in a mapping that has an `id` (or other first key): replaces its value or puts it behind the anchor. */
-function keyPatch(page: Page, path: (string | number)[], anchor: string, key: string, text: string): Patch[] {
-  const map = nodeAt(page, ...path)
-  if (!isMap(map)) return []
-  const old = nodeAt(page, ...path, key)
-  if (old) return [replaced(old, text)]
-  const after = nodeAt(page, ...path, anchor)
-  if (!after) return []
-  const [, end] = extent(after)
-  const indent = page.newline + ' '.repeat(columnOf(page, map, anchor))
-  return [{ start: end, end, text: `${map.flow ? ', ' : indent}${key}: ${text}` }]
-}
-
-/** column (from 0) at which the keys of a block mapping stand */
-function columnOf(page: Page, map: YAMLMap, key: string): number {
-  const pair = map.items.find((p) => isScalar(p.key) && p.key.value === key)
-  const start = isScalar(pair?.key) ? extent(pair.key)[0] : extent(map)[0]
-  return start - (page.source.lastIndexOf('\n', start - 1) + 1)
+/** An entry as the file writes this tube (quoted or not), with the sign it has now. */
+function asWritten(entry: StringEntry, written: string | undefined): string {
+  const name = written?.replace(/^(["']?)-?/, '$1')
+  const quote = name?.[0] === '"' || name?.[0] === "'" ? name[0] : ''
+  if (name !== `${quote}${entry.tube}${quote}` || reserved.test(name)) return entryText(entry)
+  return `${quote}${entry.reversed ? '-' : ''}${name.slice(quote.length)}`
 }
 
 function supplyPatches(page: Page, from: Layout, to: Layout): Patch[] {
   const unit = from.units === 'in' ? 0.0254 : 0.001
-  const lengthText = (metres: number) => numberText(metres / unit)
   const pointText = ({ x, y, z }: PathPoint) =>
-    `[${[x, y, ...(z === undefined ? [] : [z])].map(lengthText).join(', ')}]`
+    `[${[x, y, ...(z === undefined ? [] : [z])].map((metres) => numberText(metres / unit)).join(', ')}]`
+  const placed = (i: number) => nodeAt(page, ['supplies', i, 'terminals']) !== undefined
+  const moved = (i: number) => to.supplies[i]?.terminals !== from.supplies[i]?.terminals
+  // supplies without a place share an assumed one: once one of them is put somewhere, the others need theirs too
+  const spread = to.supplies.some((_, i) => moved(i) && !placed(i))
   return to.supplies.flatMap((supply, i) => {
     const old = from.supplies[i]
     if (!old) return []
     const set = (key: string, changed: boolean, text: () => string) =>
-      changed ? keyPatch(page, ['supplies', i], 'id', key, text()) : []
+      changed ? setKey(page, ['supplies', i], key, text(), 'id') : []
     const number = (key: string, pick: (s: Supply) => number | undefined, per: number) => {
       const value = pick(supply)
       return value === undefined ? [] : set(key, value !== pick(old), () => numberText(value * per))
@@ -144,7 +162,7 @@ function supplyPatches(page: Page, from: Layout, to: Layout): Patch[] {
       ...number('max_lead_mm', (s) => s.maxLead, 1e3),
       ...set(
         'terminals',
-        supply.terminals !== old.terminals,
+        moved(i) || (spread && !placed(i)),
         () => `[${supply.terminals.map(pointText).join(', ')}]`,
       ),
     ]
@@ -156,7 +174,7 @@ function tubePatches(page: Page, from: Layout, to: Layout): Patch[] {
   return to.tubes.flatMap((tube, i) => {
     const old = from.tubes[i]
     const set = (key: string, changed: boolean, text: string) =>
-      changed ? keyPatch(page, ['tubes', i], 'id', key, text) : []
+      changed ? setKey(page, ['tubes', i], key, text, 'id') : []
     return [
       ...set('height', tube.height !== old?.height, numberText(tube.height / unit)),
       ...set('fill', tube.fill !== old?.fill, tube.fill),
@@ -166,60 +184,31 @@ function tubePatches(page: Page, from: Layout, to: Layout): Patch[] {
 
 /** Changed variants are rewritten in place, new ones are added behind the last. */
 function variantPatches(page: Page, from: Layout, to: Layout): Patch[] {
-  const { source, newline } = page
-  const patches = to.variants.flatMap((variant, i) => {
+  const changed = to.variants.flatMap((variant, i) => {
     const old = from.variants[i]
-    return old && old.name === variant.name
-      ? wiringPatches(page, old, variant, ['variants', i, 'circuits'])
-      : []
+    if (old?.name !== variant.name || old === variant) return []
+    const path: Path = ['variants', i, 'circuits']
+    if (old.circuits.length === variant.circuits.length) return wiringPatches(page, path, old, variant)
+    // variants hold no routes: nothing is lost when their circuits are written anew
+    const list = nodeAt(page, path)
+    return list ? [rewritten(page, list, variant.circuits.map(circuitText))] : []
   })
-  const added = to.variants.slice(from.variants.length)
-  if (added.length === 0) return patches
-  const list = nodeAt(page, 'variants')
-  if (isSeq(list) && list.flow) {
-    const [start, end] = extent(list)
-    const text = added.map((v) => `{name: ${scalarText(v.name)}, circuits: ${circuitsText(v)}}`)
-    const comma = list.items.length > 0 ? [''] : []
-    return [...patches, { start: end - 1, end: end - 1, text: [...comma, ...text].join(', ') }].filter(
-      () => start < end,
-    )
-  }
-  const items = isSeq(list) ? list.items : []
-  const indent = ' '.repeat(items.length > 0 && isSeq(list) ? dashColumn(source, extent(list)[0]) : 2)
-  const text = added
-    .map(
-      (v) =>
-        `${indent}- name: ${scalarText(v.name)}${newline}${indent}  circuits: ${circuitsText(v)}${newline}`,
-    )
-    .join('')
-  if (items.length > 0 && isSeq(list)) {
-    // behind the line on which the last variant ends
-    const end = lastContent(source, extent(list)[1])
-    const line = source.indexOf('\n', end)
-    return line < 0
-      ? [
-          ...patches,
-          { start: source.length, end: source.length, text: newline + text.slice(0, -newline.length) },
-        ]
-      : [...patches, { start: line + 1, end: line + 1, text }]
-  }
-  const gap = source.endsWith('\n') || source === '' ? '' : newline
-  const finish = gap === '' ? text : text.slice(0, -newline.length)
-  if (list) return [...patches, replaced(list, newline + text.trimEnd())]
-  return [
-    ...patches,
-    { start: source.length, end: source.length, text: `${gap}variants:${newline}${finish}` },
-  ]
+  const added = to.variants.slice(from.variants.length).map((v): Entry => {
+    const [name, circuits] = [`name: ${scalarText(v.name)}`, `circuits: ${circuitsText(v)}`]
+    return { flow: `{${name}, ${circuits}}`, block: [name, circuits] }
+  })
+  return [...changed, ...append(page, ['variants'], added)]
 }
 
-const circuitsText = ({ circuits }: Variant): string =>
-  `[${circuits.map((c) => `{supply: ${scalarText(c.supply)}, string: ${stringText(c.string)}}`).join(', ')}]`
+const circuitsText = ({ circuits }: Variant): string => `[${circuits.map(circuitText).join(', ')}]`
 
-const dashColumn = (source: string, start: number): number =>
-  start - (source.lastIndexOf('\n', start - 1) + 1)
-
-function lastContent(source: string, end: number): number {
-  let at = end
-  while (at > 0 && /\s/.test(source[at - 1]!)) at--
-  return at - 1
+function circuitText(circuit: CircuitWiring): string {
+  const [back, measured] = [returnText(circuit), measuredText(circuit.measured)]
+  return [
+    `{supply: ${scalarText(circuit.supply)}, string: ${stringText(circuit.string)}`,
+    ...(back === undefined ? [] : [`midpoint_return: ${back}`]),
+    ...(measured === undefined ? [] : [`measured: ${measured}`]),
+  ]
+    .join(', ')
+    .concat('}')
 }

@@ -307,7 +307,6 @@ describe.each(Object.entries(cases))('%s', (code, texts) => {
       const shown = problemText(problem, 'sign.yaml', source)
       expect(shown.split('\n')).toHaveLength(3)
       expect(shown).toMatch(/^sign\.yaml:\d+:\d+: .+, (expected .+|did you mean ".+"\?)\n/)
-      // biome-ignore format: printable text only
       expect(shown).not.toMatch(/[\0-\x09\x0b-\x1f\x7f-\x9f\u202a-\u202e]/)
     }
   })

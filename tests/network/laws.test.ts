@@ -3,8 +3,10 @@ import { describe, expect, test } from 'vitest'
 import type { NodeCapacitance } from '../../src/field/field.js'
 import type { Grounding, Supply } from '../../src/layout/layout.js'
 import { magnitude, minus } from '../../src/math/complex.js'
+import { leastShares } from '../../src/network/dark.js'
 import { solveBand, solveLit } from '../../src/network/lit.js'
 import type { Network } from '../../src/network/network.js'
+import { operatingPoint } from '../../src/network/operating-point.js'
 import { phasorProblem, placeCurrent, solveDirectly, solvePhasors } from '../../src/network/phasors.js'
 import type { CircuitSolution, LitState } from '../../src/network/solution.js'
 import { strayShares, stringResistances } from '../../src/network/stray.js'
@@ -314,6 +316,47 @@ describe('circuits that do not burn', () => {
     expect(circuit!.lit).toBe(false)
     expect(circuit!.lit ? [] : circuit!.dark.slice(0, 2)).toEqual([6, 5])
   })
+})
+
+test('combining passes finds what plain passes find, on 40 random signs', () => {
+  let burning = 0
+  for (let seed = 1; seed <= 40; seed++) {
+    const random = numbers(seed)
+    const glass = Array.from({ length: 1 + Math.floor(random() * 5) }, (_, k) => ({
+      id: `T${k}`,
+      length: 0.3 + 1.1 * random(),
+      diameter: 0.008 + 0.01 * random(),
+    }))
+    const grounding = groundings[seed % 3]!
+    const figures: Partial<Supply> =
+      random() < 0.4
+        ? { ...coreAndCoil, grounding, noLoadVoltage: 3000 + 9000 * random() }
+        : { grounding, shortCircuitCurrent: 0.012 + 0.03 * random() }
+    const string = glass.map(({ id }) => id).join(' ')
+    const parts = sketch(glass, [supplyOf('S', figures)], [wired('S', string)], {
+      bars: [true, false],
+      spacing: 0.1,
+    })
+    const stray = strayOf(parts, { perLength: 30e-12 * random(), coupling: 0.2e-12 * random(), seed })
+    const net = networkOf(parts, stray)
+    const all = { lit: [true], factors: [1] }
+    const points = [
+      operatingPoint(net, all),
+      operatingPoint(net, all, undefined, { settled: 1e-9, mostPasses: 3000, plain: true }),
+    ]
+    const currents = points.map((point) =>
+      'failed' in point || leastShares(net, point.current, 0).some(({ share }) => share < 0.1)
+        ? undefined
+        : point.current,
+    )
+    expect(currents[0] === undefined, `seed ${seed}`).toBe(currents[1] === undefined)
+    if (currents[0] === undefined) continue
+    burning++
+    for (const [k, current] of currents[0].entries())
+      if (current > 0) expect(Math.abs(current / currents[1]![k]! - 1)).toBeLessThan(1e-7)
+  }
+  expect(burning).toBeGreaterThan(20)
+  expect(burning).toBeLessThan(40)
 })
 
 describe('several supplies', () => {

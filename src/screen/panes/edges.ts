@@ -6,6 +6,7 @@ import { peakPotential } from '../instant.js'
 import { keyTable, keyText } from '../keys.js'
 import { fitted, type Line, line, lineWidth, span } from '../lines.js'
 import type { State } from '../state.js'
+import { pressing } from './pressing.js'
 import { asciiOnly, dots } from './words.js'
 
 /** glyph, colour and bounds of the seven steps; shorter forms on narrow screens */
@@ -48,12 +49,17 @@ export function messageLine({ message, dialog, ...state }: State, width: number)
   )
 }
 
+const dialogHints: Partial<Record<NonNullable<State['dialog']>['kind'], string>> = {
+  prompt: ' Enter takes it   Esc leaves it',
+  pick: ' Up/Down choose   Enter takes   Esc leaves',
+  help: ' Up/Down/PgUp/PgDn scroll   others close',
+  cautions: ' Up/Down/PgUp/PgDn scroll   others close',
+}
+
 /** As many keys as fit, the most needed first; those of an open dialog where one is open. */
 export function footerLine(state: State, width: number): Line {
-  if (state.dialog?.kind === 'prompt') return line(' Enter takes it   Esc leaves it', 'dim')
-  if (state.dialog?.kind === 'pick') return line(' Up/Down choose   Enter takes it   Esc leaves it', 'dim')
-  if (state.dialog?.kind === 'help' || state.dialog?.kind === 'cautions')
-    return line(' Up/Down/PgUp/PgDn scroll   any other key closes', 'dim')
+  const hint = state.dialog && dialogHints[state.dialog.kind]
+  if (hint !== undefined) return fitted(line(hint, 'dim'), width, dots(state))
   const wanted = keyTable
     .flatMap(({ keys, footer }) => (footer ? [{ key: keyText(keys[0]!), ...footer }] : []))
     .sort((a, b) => a.rank - b.rank)
@@ -82,8 +88,7 @@ export function bannerLines(state: State, width: number): [Line, Line] {
   const text = standing.find((s) => s.length + 2 <= width) ?? standing[3]!
   const danger = span('', 'banner-danger')
   const first = fitted([span(` ${text}`, 'banner-danger')], width, dots(state), danger)
-  const { cautions } = state.inspection
-  const [worst, ...others] = cautions
+  const [worst, ...others] = pressing(state)
   if (!worst)
     return [
       first,

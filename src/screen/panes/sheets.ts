@@ -6,6 +6,7 @@ import { sheetBox } from '../frame.js'
 import { groupTitles, keyTable, keyText } from '../keys.js'
 import { fitted, type Line, line, span } from '../lines.js'
 import type { State } from '../state.js'
+import { pressing } from './pressing.js'
 import { asciiOnly, dots } from './words.js'
 
 const marksHelp = [
@@ -20,10 +21,16 @@ export function sheetPage(state: State): Line[] {
   const { width, height } = sheetBox(state.columns, state.rows)
   const all = sheetLines(state, width)
   const scroll = state.dialog?.kind === 'help' || state.dialog?.kind === 'cautions' ? state.dialog.scroll : 0
-  const from = Math.min(scroll, Math.max(0, all.length - height + 1))
+  const from = Math.min(scroll, lastScroll(state))
   const shown = all.slice(from, from + height - 1)
   const more = all.length - from - shown.length
   return more > 0 ? [...shown, line(`  ${more} more lines: Down, PgDn`, 'dim')] : shown
+}
+
+/** the scroll that brings the last line into view */
+export function lastScroll(state: State): number {
+  const { width, height } = sheetBox(state.columns, state.rows)
+  return Math.max(0, sheetLines(state, width).length - height + 1)
 }
 
 function sheetLines(state: State, width: number): Line[] {
@@ -53,7 +60,7 @@ function helpLines(state: State, width: number): Line[] {
 }
 
 function cautionSheet(state: State, width: number): Line[] {
-  const { cautions } = state.inspection
+  const cautions = pressing(state)
   const { assumed } = state.present.sign.layout
   const text = (s: string) => (state.ascii ? asciiOnly(s) : s)
   const lines: Line[] = [
