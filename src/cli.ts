@@ -5,6 +5,7 @@ import { complain, status, UsageFault } from './commands/common.js'
 import { helpText } from './commands/help.js'
 import { netlistCommand } from './commands/netlist.js'
 import { openCommand } from './commands/open.js'
+import { rulesCommand } from './commands/rules.js'
 import { version } from './commands/version.js'
 
 async function main(args: readonly string[]): Promise<number | undefined> {
@@ -18,6 +19,8 @@ async function main(args: readonly string[]): Promise<number | undefined> {
       return checkCommand(rest)
     case 'netlist':
       return netlistCommand(rest)
+    case 'rules':
+      return rulesCommand(rest)
     default:
       return openCommand(args)
   }

@@ -1,8 +1,6 @@
 /** Layout files on disk: read with everything that is wrong with them, saved whole or not at all. */
 import {
-  accessSync,
   closeSync,
-  constants,
   fchmodSync,
   fchownSync,
   fsyncSync,
@@ -112,7 +110,8 @@ export function saveSign(path: string, source: string, from: Sign, to: Sign, for
     } else {
       if (!force && !readFileSync(target).equals(Buffer.from(source)))
         return failed('The file changed on disk since it was read.', true)
-      accessSync(target, constants.W_OK)
+      // a file that may not be written is not to be replaced either
+      closeSync(openSync(target, 'r+'))
       replaceFile(target, text, statSync(target))
     }
     return { ok: true, source: text }

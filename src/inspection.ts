@@ -28,6 +28,7 @@ import { cautions } from './rules/cautions.js'
 import { circuitFindings, supplyOf } from './rules/circuits.js'
 import type { Caution, CircuitFinding, FloatingFinding, PairFinding } from './rules/findings.js'
 import { type LitFields, type PairContext, pairFindings } from './rules/pairs.js'
+import { type ResolvedRules, resolveRules } from './rules/resolve.js'
 import { type CircuitLead, circuitLeads } from './wiring/leads.js'
 
 /** A lead in its place with where it passes glass and metal. Depends on its two ends only: kept between edits. */
@@ -45,9 +46,12 @@ export interface Prepared {
   /** memo of leads and of where pairs of leads pass each other, by name */
   readonly leads: Map<string, PlacedLead>
   readonly crossings: Map<string, readonly CloseRun[]>
+  /** what the sign is judged by */
+  readonly rules: ResolvedRules
 }
 
-export function prepare(layout: Layout): Prepared {
+/** `rules`: what `layout.rules` names, with the files beside it; without it the shipped sets of those names. */
+export function prepare(layout: Layout, rules: ResolvedRules = resolveRules(layout.rules)): Prepared {
   const bodies = fixedBodies(layout)
   return {
     layout,
@@ -57,6 +61,7 @@ export function prepare(layout: Layout): Prepared {
     runs: fixedRuns(bodies, layout),
     leads: new Map(),
     crossings: new Map(),
+    rules,
   }
 }
 
@@ -75,7 +80,7 @@ export function preparedAgain(prepared: Prepared, layout: Layout): Prepared {
   const was = prepared.layout
   if (layout === was) return prepared
   const sameGlass = layout.tubes === was.tubes && layout.metal === was.metal && layout.face === was.face
-  if (!sameGlass || layout.routes !== was.routes) return prepare(layout)
+  if (!sameGlass || layout.routes !== was.routes) return prepare(layout, prepared.rules)
   const samePlaces = layout.supplies.every((s, i) => s.terminals === was.supplies[i]?.terminals)
   return samePlaces
     ? { ...prepared, layout }
@@ -206,8 +211,10 @@ export function inspection(
   const leads = placed.map(({ body }) => body)
   const context = pairContext(prepared, wiring, places, leads, solved, condition)
   const runs = runsOfLeads(prepared, placed)
+  const { rules } = prepared
   const circuits = circuitFindings({
     layout,
+    ruleSets: rules.sets,
     wiring,
     bodies,
     leads,
@@ -233,6 +240,7 @@ export function inspection(
     floating,
     cautions: cautions({
       layout,
+      missingRules: rules.missing,
       leads,
       places,
       supplies: context.supplies,
@@ -246,7 +254,7 @@ export function inspection(
 }
 
 function pairContext(
-  { layout, bodies, tubes, nodes }: Prepared,
+  { layout, bodies, tubes, nodes, rules }: Prepared,
   wiring: Wiring,
   places: readonly CircuitLead[],
   leads: readonly LeadBody[],
@@ -257,6 +265,7 @@ function pairContext(
   const supplies = wiring.circuits.map((circuit) => supplyOf(layout, circuit))
   return {
     layout,
+    ruleSets: rules.sets,
     bodies,
     leads,
     circuitOfLead: places.map((place) => place.circuit),

@@ -2,7 +2,9 @@
 import { readLayoutFile } from '../files.js'
 import { type Inspection, inspection, prepare, solver } from '../inspection.js'
 import type { Layout } from '../layout/layout.js'
+import { printable } from '../layout/printable.js'
 import { checkJson } from '../report/check-json.js'
+import { type CheckedFile, checkSummary } from '../report/check-summary.js'
 import { checkText } from '../report/check-text.js'
 import { argumentsOf, complain, status, UsageFault } from './common.js'
 
@@ -34,10 +36,18 @@ export function checkCommand(args: readonly string[]): number {
       .map((name) => name.trim())
       .filter((name) => name !== ''),
   }
-  let worst: number = status.fine
-  for (const path of positionals) worst = Math.max(worst, checkFile(path, options))
-  return worst
+  const checked: CheckedFile[] = []
+  for (const path of positionals) {
+    // a blank line between the texts of two layouts; JSON is one object a line
+    if (checked.length > 0 && !options.json) process.stdout.write('\n')
+    checked.push(checkFile(path, options))
+  }
+  if (checked.length > 1 && !options.json) process.stdout.write(`\n${checkSummary(checked)}`)
+  return Math.max(...checked.map(statusOf))
 }
+
+const statusOf = ({ inspection: found, toFix }: CheckedFile): number =>
+  found === undefined ? status.unusable : toFix ? status.somethingToFix : status.fine
 
 function conditionOf(text: string | undefined): 'lit' | 'nameplate' {
   if (text === undefined || text === 'lit') return 'lit'
@@ -49,11 +59,12 @@ function conditionOf(text: string | undefined): 'lit' | 'nameplate' {
   )
 }
 
-function checkFile(path: string, options: Options): number {
+function checkFile(path: string, options: Options): CheckedFile {
+  const file = printable(path)
   const read = readLayoutFile(path)
   if (!read.ok) {
     complain(read.complaint)
-    return status.unusable
+    return { file, toFix: true }
   }
   const layout: Layout = options.rules ? { ...read.file.layout, rules: options.rules } : read.file.layout
   const prepared = prepare(layout)
@@ -61,9 +72,9 @@ function checkFile(path: string, options: Options): number {
   process.stdout.write(
     options.json
       ? `${JSON.stringify(checkJson(path, layout, found))}\n`
-      : checkText(path, layout, found, { all: options.all, condition: options.condition }),
+      : checkText(file, layout, found, { all: options.all, condition: options.condition }),
   )
-  return somethingToFix(found) ? status.somethingToFix : status.fine
+  return { file, toFix: somethingToFix(found), inspection: found }
 }
 
 /** A pair, a dark or overloaded circuit, a part that could not be modelled, a rule set that is missing. */

@@ -1,10 +1,11 @@
 /** Help texts of the commands. */
-import { standingCaution } from '../rules/common-practice.js'
+import { standingCaution } from '../view/caution-text.js'
 
 export const usage = {
   tubewright: 'tubewright LAYOUT [--color WHEN] [--ground dark|light] [--ascii]',
   check: 'tubewright check LAYOUT… [--json] [--condition lit|nameplate] [--rules NAME,NAME] [--all]',
-  netlist: 'tubewright netlist LAYOUT',
+  netlist: 'tubewright netlist LAYOUT [--supply ID]',
+  rules: 'tubewright rules [NAME…] [--template]',
 } as const
 
 export const helpText = `tubewright – potentials, stray current and gaps of neon signs
@@ -15,6 +16,8 @@ export const helpText = `tubewright – potentials, stray current and gaps of ne
       the findings as text or JSON
   ${usage.netlist}
       the solved network as a SPICE deck (R, C, sources)
+  ${usage.rules}
+      the rule sets with clauses and sources; NAME may be a rule file, which is checked
 
 Options
   --color auto|always|never|16|256|24bit   colours (NO_COLOR and FORCE_COLOR are respected)
@@ -23,7 +26,9 @@ Options
   --json                                   findings as JSON, one object a file
   --condition lit|nameplate                what verdicts go by; lit unless said
   --rules NAME,NAME                        rule sets instead of those of the file
+  --supply ID                              the supply that feeds the deck of netlist; the first unless said
   --all                                    list every pair
+  --template                               a commented rule file for a shop's own, to stdout
   --help, --version
 
 Keys of the inspector: ? shows them. In short: Tab walks the worst list, arrows probe freely, f feeds the

@@ -32,7 +32,7 @@ export function bareCross(a: Segments, b: Segments, imagesB: Segments | undefine
       }
       const extra = joint(i, j)
       const pair = extra > 0 ? undefined : nearPair(a, i, b, j, false)
-      if (pair) near.push(pair)
+      if (pair && !pair.entangled) near.push(pair)
       if (pair || extra > 0) settled[i * b.count + j]! |= directSettled
       let mean = pair ? shiftedMean(a, b, pair) : lineMean(a.lines, i, b.lines, j, extra)
       if (imagesB) {

@@ -2,19 +2,23 @@
 import { factorCholesky } from '../math/dense.js'
 
 /**
- * Cholesky factor of a matrix of coefficients of potential, and the rows that had to be isolated for it. Pairs of
- * conductors that the drawing has inside each other are moved apart one pair at a time, and a path may turn back on
- * itself by almost 180°: then no real arrangement belongs to the matrix, and it can be indefinite. The segments that
- * make it so lose what they have in common with those after them; the rest stays as it is.
+ * Cholesky factor of a matrix of coefficients of potential, and the rows whose self term had to be raised for it (in
+ * `potential` too). Pairs of conductors that the drawing has inside each other are moved apart one pair at a time, and
+ * a path may turn back on itself by almost 180°: then no real arrangement belongs to the matrix, and it can be
+ * indefinite. The segments that make it so are raised step by step, which takes some charge off them and leaves the
+ * rest alone.
  */
 export function definiteFactor(
   potential: Float64Array,
   count: number,
-): { factor: Float64Array; isolated: readonly number[] } {
-  const factor = potential.slice()
-  if (factorCholesky(factor, count)) return { factor, isolated: [] }
-  factor.set(potential)
-  const isolated: number[] = []
-  if (!factorCholesky(factor, count, isolated)) throw new Error('coefficients of potential are not numbers')
-  return { factor, isolated }
+): { factor: Float64Array; raised: readonly number[] } {
+  const raised = new Set<number>()
+  for (let share = 0.1; ; share *= 1.5) {
+    const factor = potential.slice()
+    const weak: number[] = []
+    if (!factorCholesky(factor, count, weak)) throw new Error('coefficients of potential are not numbers')
+    if (weak.length === 0) return { factor, raised: [...raised] }
+    for (const i of weak) raised.add(i)
+    for (const i of raised) potential[i * (count + 1)]! += share * Math.abs(potential[i * (count + 1)]!)
+  }
 }

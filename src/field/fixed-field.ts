@@ -43,7 +43,7 @@ export interface FixedField {
   readonly nodeMatrix: Float64Array
   /** F; of the floating face's sheet to the surroundings, otherwise 0 */
   readonly plate: number
-  /** names of bodies drawn so far into others, or so sharply bent back on themselves, that part of them had to be isolated */
+  /** names of bodies drawn so far into others, or so sharply bent back on themselves, that the self terms there were raised */
   readonly strained: readonly string[]
   /** what was worked out between two leads before */
   readonly pairs: WeakMap<LeadField, WeakMap<LeadField, LeadPair>>
@@ -144,8 +144,8 @@ export function prepareField(
   const least = new Int32Array(segments.count).fill(1)
   const system = chargeSystem(segments, plane, least, options.harmonics)
   const { count } = segments
-  const { factor, isolated } = definiteFactor(system.potential, count)
-  const strained = [...new Set(isolated.map((i) => bodies[segments.body[i]!]!.name))]
+  const { factor, raised } = definiteFactor(system.potential, count)
+  const strained = [...new Set(raised.map((i) => bodies[segments.body[i]!]!.name))]
   const weights = nodeWeights(bodies, nodes, segments)
   const solvedWeights = weights.slice()
   solveLowerRows(factor, count, solvedWeights, nodes.count)

@@ -16,6 +16,8 @@ export interface NearPair {
   readonly axes: number
   /** j is moved by this, where the drawing has the two inside each other */
   readonly shift?: Float64Array
+  /** so far inside each other that harmonics would describe nothing real */
+  readonly entangled: boolean
 }
 
 /** Bits that say what a pair of segments needs no dipole rule for: itself, or j's mirror image. */
@@ -75,8 +77,9 @@ export function nearPair(
   const axes = closestApproach(a.lines, i, b.lines, j, found)
   if (axes > reach) return undefined
   const touching = Math.max(a.outer[i]! + b.outer[j]!, 1.03 * (a.radius[i]! + b.radius[j]!))
-  if (image || axes >= touching) return { i, j, image, axes }
-  return { i, j, image, axes: touching, shift: apartBy(a, i, b, j, axes, touching - axes) }
+  if (image || axes >= touching) return { i, j, image, axes, entangled: false }
+  const shift = apartBy(a, i, b, j, axes, touching - axes)
+  return { i, j, image, axes: touching, shift, entangled: axes < 0.8 * touching }
 }
 
 /** The move of j that takes it `more` further from i: along the line of nearest approach, or across both. */

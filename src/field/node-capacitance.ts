@@ -150,8 +150,17 @@ export function reducedPotential(
         matrix[j * count + row] = lead.toFixed[l * f + j]!
       }
   })
+  // what the elimination of the fixed charges took off the leads is given back
+  const solved = new Float64Array(block.count * f)
+  leads.forEach((lead, p) => {
+    solved.set(lead.solved, block.starts[p]! * f)
+  })
+  const taken = rowGram(solved, block.count, f)
   for (let i = 0; i < block.count; i++)
-    for (let j = 0; j < block.count; j++) matrix[(f + i) * count + f + j] = block.matrix[i * block.count + j]!
+    for (let j = 0; j < block.count; j++) {
+      const k = i * block.count + j
+      matrix[(f + i) * count + f + j] = block.matrix[k]! + taken[k]!
+    }
   return { count, matrix }
 }
 

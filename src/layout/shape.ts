@@ -85,7 +85,13 @@ export function reportIssue(reading: Reading, issue: Issue, base: KeyPath, namin
   if (typeof key === 'string' && isKeyed(around) && !Object.hasOwn(around, key)) {
     const form = formOf(issue)
     const choices = issue.message === 'version' ? [] : choicesOf(issue)
-    report(places.value(path.slice(0, -1)), { code: 'missing-key', key, of: holder(path, naming), form, choices })
+    report(places.value(path.slice(0, -1)), {
+      code: 'missing-key',
+      key,
+      of: holder(path, naming),
+      form,
+      choices,
+    })
     return
   }
   report(places.value(path), valueFacts(issue, path, valueAt(reading.value, path)))

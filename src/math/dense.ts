@@ -94,12 +94,13 @@ function dot(a: Float64Array, i: number, b: Float64Array, j: number, from: numbe
 
 /**
  * Cholesky factor A = L Lᵀ in place (lower triangle; what lies above the diagonal is left as scratch).
- * False when A is not positive definite; A is then spoilt. With `isolated` it does not fail (unless A holds no
- * numbers): a row whose pivot falls under a fiftieth of its diagonal gets its whole diagonal as pivot and nothing in
- * common with later rows, and is put on that list.
+ * False when A is not positive definite; A is then spoilt. With `weak` it runs through all the same
+ * (unless A holds no numbers): a row whose pivot falls under a hundredth of its diagonal gets its whole diagonal as
+ * pivot and nothing in common with later rows, and is put on that list. Then it is no factor of A, but tells where A
+ * is not definite, or hardly.
  */
-export function factorCholesky(a: Float64Array, n: number, isolated?: number[]): boolean {
-  const diagonal = isolated && Float64Array.from({ length: n }, (_, c) => Math.abs(a[c * n + c]!))
+export function factorCholesky(a: Float64Array, n: number, weak?: number[]): boolean {
+  const diagonal = weak && Float64Array.from({ length: n }, (_, c) => Math.abs(a[c * n + c]!))
   for (let j = 0; j < n; j += 4) {
     const end = Math.min(j + 4, n)
     // bring the panel of four columns up to date with all columns left of it
@@ -115,9 +116,9 @@ export function factorCholesky(a: Float64Array, n: number, isolated?: number[]):
     // factor the panel
     for (let c = j; c < end; c++) {
       let pivot = a[c * n + c]! - dot(a, c * n, a, c * n, j, c)
-      const alone = diagonal !== undefined && pivot < 0.02 * diagonal[c]!
+      const alone = diagonal !== undefined && pivot < 0.01 * diagonal[c]!
       if (alone) {
-        isolated?.push(c)
+        weak?.push(c)
         pivot = diagonal[c]!
       }
       if (!(pivot > 0)) return false

@@ -2,7 +2,6 @@
 import type { Inspection } from '../inspection.js'
 import type { Layout } from '../layout/layout.js'
 import { type Complex, degrees, magnitude } from '../math/complex.js'
-import { generalCautions } from '../rules/common-practice.js'
 import type {
   CircuitFinding,
   EndState,
@@ -11,6 +10,7 @@ import type {
   Spot,
   TubeFinding,
 } from '../rules/findings.js'
+import { cautionText, generalCautions } from '../view/caution-text.js'
 
 const rounded = (value: number, decimals: number): number => Number(value.toFixed(decimals))
 const kv = (volts: number): number => rounded(volts / 1000, 4)
@@ -26,7 +26,7 @@ export function checkJson(file: string, layout: Layout, inspection: Inspection):
     pairs: inspection.pairs.map(pairJson),
     floating: inspection.floating.map((f) => ({ id: f.id, kv: kv(f.voltage), touch_ma: ma(f.touch) })),
     assumed: layout.assumed.map((a) => `${a.about}: ${a.text}`),
-    cautions: [...inspection.cautions.map((c) => c.text), ...generalCautions],
+    cautions: [...inspection.cautions.map((c) => cautionText(c, layout.units)), ...generalCautions],
   }
 }
 

@@ -3,8 +3,8 @@ import type { Inspection } from '../inspection.js'
 import type { Layout, Supply } from '../layout/layout.js'
 import { magnitude } from '../math/complex.js'
 import { supplyOf } from '../rules/circuits.js'
-import { generalCautions, standingCaution } from '../rules/common-practice.js'
 import type { CircuitFinding, Loading, PairFinding, Verdict } from '../rules/findings.js'
+import { cautionText, generalCautions, standingCaution } from '../view/caution-text.js'
 import {
   groundingText,
   hertz,
@@ -23,6 +23,7 @@ import {
   watts,
 } from '../view/words.js'
 import { wrap } from '../view/wrap.js'
+import { folded, table } from './table.js'
 
 export interface CheckOptions {
   /** list every pair, not only those to fix or watch and the first few within */
@@ -42,7 +43,8 @@ export function checkText(
 ): string {
   const lines = [
     `${layout.title || 'Untitled sign'} (${file})`,
-    `Condition ${options.condition}. Rules: ${layout.rules.join(', ') || 'none'}. kV and mA are rms unless marked peak. Clean, dry, new glass.`,
+    `Condition ${options.condition}. Rules: ${layout.rules.join(', ') || 'none'}.`,
+    'kV and mA are rms unless marked peak. Clean, dry, new glass.',
     ...wrap(standingCaution, columns),
     '',
     ...inspection.circuits.flatMap((circuit, i) => circuitLines(layout, inspection, circuit, i)),
@@ -50,7 +52,10 @@ export function checkText(
     '',
     ...floatingLines(inspection),
     'CAUTIONS',
-    ...[...inspection.cautions.map((c) => `${c.level}: ${c.text}`), ...generalCautions].flatMap(bullet),
+    ...[
+      ...inspection.cautions.map((c) => `${c.level}: ${cautionText(c, layout.units)}`),
+      ...generalCautions,
+    ].flatMap(bullet),
     ...(layout.assumed.length > 0
       ? [
           '',
@@ -59,7 +64,7 @@ export function checkText(
         ]
       : []),
   ]
-  return `${lines.map((line) => line.trimEnd()).join('\n')}\n`
+  return `${lines.flatMap((line) => folded(line.trimEnd(), columns)).join('\n')}\n`
 }
 
 const bullet = (text: string): string[] =>
@@ -75,46 +80,52 @@ function circuitLines(layout: Layout, inspection: Inspection, c: CircuitFinding,
     ...stateLines(c),
     ...c.loadings.map((l) => `  ${loadingText(l).padEnd(66)} ${mark(l.verdict)}`),
     '',
-    ...table([
+    ...table(
       [
-        'tube',
-        'length',
-        'kV at a',
-        'kV at b',
-        'drop kV',
-        'mA at a',
-        'mA at b',
-        'least mA',
-        'stray mA',
-        'nameplate a/b',
+        [
+          'tube',
+          'length',
+          'kV a',
+          'kV b',
+          'drop kV',
+          'mA a',
+          'mA b',
+          'least mA',
+          'stray mA',
+          'nameplate a/b',
+        ],
+        ...c.tubes.map((t) => [
+          t.id,
+          metres(t.length),
+          t.a ? kvFigure(magnitude(t.a.voltage)) : '',
+          t.b ? kvFigure(magnitude(t.b.voltage)) : '',
+          t.drop === undefined ? '' : kvFigure(t.drop),
+          t.a ? maFigure(magnitude(t.a.current)) : '',
+          t.b ? maFigure(magnitude(t.b.current)) : '',
+          t.least ? maFigure(t.least.current) : '',
+          t.stray === undefined ? '' : maFigure(t.stray),
+          `${kvFigure(t.nameplateA)} / ${kvFigure(t.nameplateB)}`,
+        ]),
       ],
-      ...c.tubes.map((t) => [
-        t.id,
-        metres(t.length),
-        t.a ? kvFigure(magnitude(t.a.voltage)) : '',
-        t.b ? kvFigure(magnitude(t.b.voltage)) : '',
-        t.drop === undefined ? '' : kvFigure(t.drop),
-        t.a ? maFigure(magnitude(t.a.current)) : '',
-        t.b ? maFigure(magnitude(t.b.current)) : '',
-        t.least ? maFigure(t.least.current) : '',
-        t.stray === undefined ? '' : maFigure(t.stray),
-        `${kvFigure(t.nameplateA)} / ${kvFigure(t.nameplateB)}`,
-      ]),
-    ]),
+      columns,
+    ),
     '',
-    ...table([
-      ['lead', 'role', 'length', 'kV', 'stray mA', 'to ground', 'to parts', 'route'],
-      ...c.leads.map((l) => [
-        l.between.join('–'),
-        l.role,
-        length(l.length, layout.units),
-        l.voltage === undefined ? '' : kvFigure(l.voltage),
-        l.stray === undefined ? '' : maFigure(l.stray),
-        l.toGround === undefined ? '' : maFigure(l.toGround),
-        l.toNeighbours === undefined ? '' : maFigure(l.toNeighbours),
-        l.assumed ? 'assumed' : 'drawn',
-      ]),
-    ]),
+    ...table(
+      [
+        ['lead', 'role', 'length', 'kV', 'stray mA', 'to ground', 'to parts', 'route'],
+        ...c.leads.map((l) => [
+          l.between.join('–'),
+          l.role,
+          length(l.length, layout.units),
+          l.voltage === undefined ? '' : kvFigure(l.voltage),
+          l.stray === undefined ? '' : maFigure(l.stray),
+          l.toGround === undefined ? '' : maFigure(l.toGround),
+          l.toNeighbours === undefined ? '' : maFigure(l.toNeighbours),
+          l.assumed ? 'assumed' : 'drawn',
+        ]),
+      ],
+      columns,
+    ),
     '',
   ]
 }
@@ -158,32 +169,27 @@ function pairLines(layout: Layout, pairs: readonly PairFinding[], options: Check
   const count = (verdict: Verdict) => pairs.filter((p) => p.verdict === verdict).length
   const within = verdictText('within', layout.rules)
   const head = `PAIRS  ${count('fix')} to fix, ${count('watch')} to watch, ${count('within')} ${within}`
+  if (pairs.length === 0) return [head]
   const urgent = count('fix') + count('watch')
   const shown = options.all ? pairs : pairs.slice(0, urgent + listedWithin)
   const left = pairs.length - shown.length
+  const criteria = [...new Set(shown.map((p) => p.governs))]
+  const titles = ['', '', 'from', 'to', `gap ${layout.units}`, 'kV', 'low–high', 'paper', 'needs', 'x', 'by']
+  const rows = shown.map((p, i) => pairCells(layout, p, i, letter(criteria.indexOf(p.governs))))
   return [
     head,
-    ...table([
-      [
-        '',
-        'verdict',
-        'from',
-        'to',
-        `gap ${layout.units}`,
-        'kV',
-        'low–high',
-        'paper kV',
-        `needs ${layout.units}`,
-        'x limit',
-        'governs',
-      ],
-      ...shown.map((p, i) => pairCells(layout, p, i)),
-    ]),
+    ...table([titles, ...rows], columns, [2, 3]),
     ...(left > 0 ? [`  and ${left} more ${within} (--all lists them)`] : []),
+    ...criteria.map((criterion, i) => `  ${letter(i)} = ${criterion}`),
+    '  kV: lit, with its band; paper: nameplate, shared out; x: difference over what the gap may have',
   ]
 }
 
-function pairCells(layout: Layout, p: PairFinding, i: number): string[] {
+/** a, b … z, aa: what governs, in a column of its own */
+const letter = (i: number): string =>
+  (i < 26 ? '' : letter(Math.floor(i / 26) - 1)) + String.fromCharCode(97 + (i % 26))
+
+function pairCells(layout: Layout, p: PairFinding, i: number, by: string): string[] {
   const d = p.difference
   const need = needOf(p)
   return [
@@ -199,7 +205,7 @@ function pairCells(layout: Layout, p: PairFinding, i: number): string[] {
     kvFigure(d.nameplate),
     need === undefined ? '' : lengthFigure(need, layout.units),
     severityFigure(p.severity),
-    p.governs,
+    by,
   ]
 }
 
@@ -213,15 +219,3 @@ const floatingLines = ({ floating }: Inspection): string[] =>
         ),
         '',
       ]
-
-/** Left-aligned first column, the rest right-aligned where they are figures. */
-function table(rows: readonly (readonly string[])[]): string[] {
-  const widths = rows[0]!.map((_, c) => Math.max(...rows.map((r) => [...(r[c] ?? '')].length)))
-  const figures = rows[0]!.map((_, c) =>
-    rows.slice(1).every((r) => /^[-+>\d.–/ m%]*$|^nameplate$/.test(r[c] ?? '')),
-  )
-  return rows.map(
-    (row) =>
-      `  ${row.map((cell, c) => (figures[c] && c > 0 ? cell.padStart(widths[c]!) : cell.padEnd(widths[c]!))).join('  ')}`,
-  )
-}

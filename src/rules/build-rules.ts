@@ -17,7 +17,10 @@ import {
 const kilo = 1000
 const milli = 0.001
 /** folded texts of YAML end in a newline */
-const oneLine = (text: string | number | undefined): string => String(text ?? '').replace(/\s+/g, ' ').trim()
+const oneLine = (text: string | number | undefined): string =>
+  String(text ?? '')
+    .replace(/\s+/g, ' ')
+    .trim()
 
 export const builtRuleSet = (file: RuleFileValue): RuleSet => ({
   id: String(file.id),
@@ -45,7 +48,10 @@ function builtRule(value: RuleValue, mark: Mark): Rule {
 
 const sum = (words: readonly PartWord[]): number => words.reduce((bits, word) => bits | partBits[word], 0)
 
-function pairRule(value: RuleValue, distance: number | DistanceTable): Omit<PairRule, 'clause' | 'mark' | 'advice' | 'when'> {
+function pairRule(
+  value: RuleValue,
+  distance: number | DistanceTable,
+): Omit<PairRule, 'clause' | 'mark' | 'advice' | 'when'> {
   const one = value.between ?? []
   return {
     kind: 'pair',
@@ -72,7 +78,9 @@ function table({ table_kv_mm: rows, interpolation, beyond }: RuleValue): Distanc
   }
 }
 
-function limited(limit: NonNullable<RuleValue['limit']>): Pick<CircuitRule, 'kind' | 'quantity' | 'atMost' | 'verdict'> {
+function limited(
+  limit: NonNullable<RuleValue['limit']>,
+): Pick<CircuitRule, 'kind' | 'quantity' | 'atMost' | 'verdict'> {
   const scale = quantities[limit.quantity]
   const rows = limit.by_terminal_kv ?? []
   const atMost =

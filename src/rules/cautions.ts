@@ -1,17 +1,29 @@
-/** What must be said about a sign beyond its figures: the most pressing first. */
+/** What must be said about a sign beyond its figures, as facts: the most pressing first. */
 import type { LeadBody } from '../geometry/conductors.js'
 import type { CloseRun } from '../geometry/runs.js'
 import type { Layout, Supply } from '../layout/layout.js'
 import type { CircuitLead } from '../wiring/leads.js'
-import { commonPractice } from './common-practice.js'
-import type { Caution, CircuitFinding, FloatingFinding, PairFinding } from './findings.js'
+import { shownAs } from './circuits.js'
+import { sameDistance } from './distance-table.js'
+import type {
+  Caution,
+  CautionLevel,
+  CircuitFinding,
+  CircuitRuleFinding,
+  FloatingFinding,
+  Loading,
+  PairFinding,
+} from './findings.js'
+import type { MissingRules } from './rule-set.js'
 
 export interface CautionContext {
   readonly layout: Layout
+  readonly missingRules: readonly MissingRules[]
   readonly leads: readonly LeadBody[]
   readonly places: readonly CircuitLead[]
   readonly supplies: readonly Supply[]
   readonly circuits: readonly CircuitFinding[]
+  /** worst first */
   readonly pairs: readonly PairFinding[]
   readonly floating: readonly FloatingFinding[]
   readonly leadRuns: readonly CloseRun[]
@@ -19,13 +31,23 @@ export interface CautionContext {
   readonly mayGoDark: readonly string[]
 }
 
-const order: Record<Caution['level'], number> = { danger: 0, fix: 1, watch: 2, note: 3 }
+/** m of spacer that lifts an output lead off the metal (common practice, no published source) */
+const spacer = 0.025
+/** share of the short-circuit current under which the dimmest place is worth a word (ours) */
+const dim = 0.85
+/** V: above it two smaller supplies are the better choice (ours; the trade says 6 kV rather than 12) */
+const highVoltage = 9000
+/** Hz: electronic supplies run at 20–30 kHz; what lies far outside is perhaps a slip (ours) */
+const usualFrequency = [15_000, 50_000] as const
+
+const order: Record<CautionLevel, number> = { danger: 0, fix: 1, watch: 2, note: 3 }
 
 export function cautions(context: CautionContext): Caution[] {
   const found = [
     ...darkCircuits(context),
+    ...worstPair(context),
     ...floatingMetal(context),
-    ...overloads(context),
+    ...context.circuits.flatMap(circuitCautions),
     ...notModelled(context),
     ...missingRules(context),
     ...crossings(context),
@@ -35,143 +57,105 @@ export function cautions(context: CautionContext): Caution[] {
   return found.sort((a, b) => order[a.level] - order[b.level])
 }
 
-const kv = (volts: number): string => `${(volts / 1000).toFixed(volts < 9950 ? 2 : 1)} kV`
-const ma = (amperes: number): string => `${(amperes * 1000).toFixed(1)} mA`
-const mm = (metres: number): string => `${Math.round(metres * 1000)} mm`
-const some = (names: readonly string[], most = 4): string =>
-  names.length <= most
-    ? names.join(', ')
-    : `${names.slice(0, most).join(', ')} and ${names.length - most} more`
-
 function darkCircuits({ circuits, mayGoDark }: CautionContext): Caution[] {
-  const dark = circuits
-    .filter((c) => c.solved && !c.lit)
-    .map((c): Caution => {
-      const which =
-        c.dark.length > 0
-          ? ` ${c.dark[0]} goes dark first${c.dark.length > 1 ? ` (then ${some(c.dark.slice(1))})` : ''}.`
-          : ''
-      return {
-        level: 'fix',
-        code: 'dark',
-        text: `${c.supply} cannot light its whole string: ${whyDark(c)}.${which} Its pairs are judged on nameplate.`,
-      }
-    })
-  const near = mayGoDark.map(
-    (supply): Caution => ({
-      level: 'watch',
-      code: 'may-go-dark',
-      text: `${supply} lights the string by the default gradient law, but not if the glass takes 30 % more: the sign may go dark.`,
-    }),
+  const dark = circuits.flatMap((c): Caution[] =>
+    c.solved && !c.lit
+      ? [
+          {
+            level: 'fix',
+            code: 'dark',
+            supply: c.supply,
+            why: c.why ?? 'no-stable-point',
+            ...(c.neededVoltage !== undefined && { neededVoltage: c.neededVoltage }),
+            noLoadVoltage: c.noLoadVoltage,
+            dark: c.dark,
+          },
+        ]
+      : [],
   )
-  return [...dark, ...near]
+  return [...dark, ...mayGoDark.map((supply): Caution => ({ level: 'watch', code: 'may-go-dark', supply }))]
 }
 
-function whyDark(c: CircuitFinding): string {
-  if (c.why === 'needs-more-than-no-load' && c.neededVoltage !== undefined)
-    return `it takes ${kv(c.neededVoltage)} rms and the supply has ${kv(c.noLoadVoltage)} at no load`
-  if (c.why === 'not-enough-current')
-    return 'stray capacitance takes the current before it reaches the far tubes'
-  return 'there is no stable operating point'
+/** One entry for all pairs: the worst, and how many more. */
+function worstPair({ pairs }: CautionContext): Caution[] {
+  const [pair] = pairs
+  if (!pair || pair.verdict === 'within') return []
+  const more = (verdict: PairFinding['verdict']) =>
+    pairs.filter((p) => p !== pair && p.verdict === verdict).length
+  return [{ level: pair.verdict, code: 'pairs', pair, fix: more('fix'), watch: more('watch') }]
 }
 
 const floatingMetal = ({ floating }: CautionContext): Caution[] =>
-  floating.map(({ id, voltage, touch }) => ({
-    level: 'danger',
-    code: 'floating-metal',
-    text: `Metal "${id}" is not grounded: it floats to ${kv(voltage)} rms, and ${ma(touch)} would flow through a person touching it. Bond it to ground.`,
-  }))
+  floating.map(({ id, voltage, touch }) => ({ level: 'danger', code: 'floating-metal', id, voltage, touch }))
 
-function overloads({ circuits }: CautionContext): Caution[] {
-  return circuits.flatMap((c) =>
-    c.loadings.flatMap((l): Caution[] => {
-      if (l.verdict === 'within' || (l.by === 'voltage' && !c.lit)) return []
-      const percent = `${Math.round(l.share * 100)} %`
-      const text = {
-        voltage: `${c.supply} runs at ${percent} of its no-load voltage (${kv(l.value)} of ${kv(l.limit)} rms)`,
-        chart: `${c.supply} carries ${percent} of the maker's chart (${l.value.toFixed(1)} of ${l.limit.toFixed(1)} m with electrode pairs)`,
-        mains: `${c.supply} draws ${percent} of its rated input (about ${Math.round(l.value)} of ${Math.round(l.limit)} VA)`,
-        residual: `${c.supply} returns ${ma(l.value)} through ground: ${percent} of the ${ma(l.limit)} that trips it`,
-        lead: `${c.supply} has a ${mm(l.value)} output lead; its leads allow ${mm(l.limit)}`,
-      }[l.by]
-      return [{ level: l.verdict, code: 'loading', text: `${text}.` }]
-    }),
-  )
+/** Loadings and circuit rules; of two on one quantity the worse, the rule's where they are equal. */
+function circuitCautions({ supply, lit, loadings, rules }: CircuitFinding): Caution[] {
+  const shown = (finding: CircuitRuleFinding): Loading | undefined =>
+    finding.kind === 'limit' ? loadings.find((l) => l.by === shownAs[finding.quantity]) : undefined
+  const said = rules.filter((r) => r.verdict !== 'within' && (shown(r)?.verdict ?? r.verdict) === r.verdict)
+  const byLoading = loadings.flatMap((loading): Caution[] => {
+    const { verdict } = loading
+    if (verdict === 'within' || (loading.by === 'voltage' && !lit)) return []
+    return said.some((r) => shown(r) === loading)
+      ? []
+      : [{ level: verdict, code: 'loading', supply, loading }]
+  })
+  return [...byLoading, ...said.flatMap((finding) => ruleCaution(supply, finding))]
+}
+
+function ruleCaution(supply: string, finding: CircuitRuleFinding): Caution[] {
+  const { verdict } = finding
+  if (verdict === 'within') return []
+  if (finding.kind === 'limit' && finding.inMetalConduit && finding.limit === 0)
+    return [
+      {
+        level: verdict,
+        code: 'conduit',
+        supply,
+        leads: finding.parts,
+        governs: `${finding.set}: ${finding.clause}`,
+      },
+    ]
+  return [{ level: verdict, code: 'rule', supply, finding }]
 }
 
 /** What this version reads but cannot compute. */
 function notModelled({ layout }: CautionContext): Caution[] {
-  const sheets = layout.metal.filter((m) => m.kind !== 'bar').map((m) => m.id)
-  const found: Caution[] = []
-  const say = (text: string) => found.push({ level: 'fix', code: 'not-modelled', text })
-  if (sheets.length > 0)
-    say(`Not modelled yet, so its capacitance and gaps are missing: ${some(sheets)} (plate or wall).`)
-  if (layout.wiring.circuits.some((c) => c.midpointReturn))
-    say('Not modelled yet: the midpoint return is left out of the solution.')
-  return found
+  const sheets = layout.metal.flatMap((m) => (m.kind === 'bar' ? [] : [m.id]))
+  const returns = layout.wiring.circuits.flatMap((c) => (c.midpointReturn ? [c.midpointReturn] : []))
+  const say = (what: 'sheets' | 'midpoint-return', parts: readonly string[]): Caution[] =>
+    parts.length > 0 ? [{ level: 'fix', code: 'not-modelled', what, parts }] : []
+  return [...say('sheets', sheets), ...say('midpoint-return', returns)]
 }
 
-function missingRules({ layout }: CautionContext): Caution[] {
-  const missing = layout.rules.filter((name) => name !== commonPractice.id)
-  return missing.length === 0
-    ? []
-    : [
-        {
-          level: 'fix',
-          code: 'rules-missing',
-          text: `Rule set not available, so not judged by it: ${some(missing)}.`,
-        },
-      ]
-}
+const missingRules = ({ missingRules: missing }: CautionContext): Caution[] =>
+  missing.length === 0 ? [] : [{ level: 'fix', code: 'rules-missing', missing }]
 
 /** Glass that meets in the drawing: which stroke is in front must come from its heights. */
 function crossings({ pairs }: CautionContext): Caution[] {
-  const meeting = pairs.filter((p) => p.kind === 'tube-tube' && p.gap <= 0)
-  if (meeting.length === 0) return []
-  const names = meeting.map((p) =>
-    p.a.part === p.b.part ? `${p.a.part} with itself` : `${p.a.part} and ${p.b.part}`,
+  const meeting = pairs.filter((p) => p.kind === 'tube-tube' && p.gap < sameDistance)
+  const tubes = new Map(
+    meeting.map((p): [string, readonly [string, string]] => [
+      `${p.a.part} ${p.b.part}`,
+      [p.a.part, p.b.part],
+    ]),
   )
-  return [
-    {
-      level: 'fix',
-      code: 'glass-meets',
-      text: `Glass meets in the drawing: ${some([...new Set(names)])}. Which is in front? Give their heights (z).`,
-    },
-  ]
+  return tubes.size === 0 ? [] : [{ level: 'fix', code: 'glass-meets', tubes: [...tubes.values()] }]
 }
 
 function leadCautions({ layout, leads, places, supplies, leadRuns }: CautionContext): Caution[] {
-  const found: Caution[] = []
-  const name = (i: number) => leads[i]!.name
-  const electronicFeeds = places.flatMap((p, i) =>
-    p.role === 'feed' && supplies[p.circuit]?.type === 'electronic' ? [i] : [],
-  )
-  const conduit = leads.flatMap((lead, i) =>
-    lead.conduit === 'metal' && supplies[places[i]!.circuit]?.type === 'electronic' ? [i] : [],
-  )
-  if (conduit.length > 0)
-    found.push({
-      level: 'fix',
-      code: 'conduit',
-      text: `Never run an electronic supply's lead in metal conduit: ${some(conduit.map(name))} (common practice).`,
-    })
   const meets = new Set(
     leadRuns.flatMap((run) => [run.a, run.b].flatMap((r) => (r.kind === 'lead' ? [r.index] : []))),
   )
-  const assumed = leads.flatMap((lead, i) => (lead.assumed && meets.has(i) ? [i] : []))
-  if (assumed.length > 0)
-    found.push({
-      level: 'watch',
-      code: 'route-assumed',
-      text: `Route assumed where it passes glass or metal: ${some(assumed.map(name))}. Give the real route in the file.`,
-    })
-  const low = electronicFeeds.filter((i) => nearMetal(layout, leads[i]!))
-  if (low.length > 0)
-    found.push({
-      level: 'note',
-      code: 'off-metal',
-      text: `Output leads near the metal face: ${some(low.map(name))}. ${commonPractice.offMetal.advice} (common practice).`,
-    })
+  const names = (fits: (lead: LeadBody, i: number) => boolean) => leads.filter(fits).map((lead) => lead.name)
+  const assumed = names((lead, i) => lead.assumed && meets.has(i))
+  const low = names((lead, i) => {
+    const { role, circuit } = places[i]!
+    return role === 'feed' && supplies[circuit]?.type === 'electronic' && nearMetal(layout, lead)
+  })
+  const found: Caution[] = []
+  if (assumed.length > 0) found.push({ level: 'watch', code: 'route-assumed', leads: assumed })
+  if (low.length > 0) found.push({ level: 'note', code: 'off-metal', leads: low })
   return found
 }
 
@@ -181,38 +165,39 @@ function nearMetal({ face }: Layout, { line, outerRadius, conduit }: LeadBody): 
   let low = 0
   for (let i = 1; i < line.at.length; i++) {
     const z = Math.abs(line.points[3 * i + 2]! + line.points[3 * i - 1]!) / 2
-    if (z - outerRadius < commonPractice.offMetal.gap) low += line.at[i]! - line.at[i - 1]!
+    if (z - outerRadius < spacer) low += line.at[i]! - line.at[i - 1]!
   }
   return low > line.length / 2
 }
 
 function supplyCautions({ supplies, circuits, layout }: CautionContext): Caution[] {
-  const found: Caution[] = []
-  for (const [i, supply] of supplies.entries()) {
-    if (supply.noLoadVoltage > 9000)
-      found.push({
-        level: 'note',
-        code: 'lower-voltage',
-        text: `${supply.id}: lower voltage is better – two 6 kV supplies rather than one 12 kV (common practice).`,
-      })
-    const length = circuits[i]?.tubeLength ?? 0
-    const stray = circuits[i]?.stray ?? 0
-    if (
-      supply.type === 'electronic' &&
-      layout.face.metal !== 'none' &&
-      stray > 0.2 * supply.shortCircuitCurrent
-    )
+  return supplies.flatMap(({ id, type, noLoadVoltage, frequency, shortCircuitCurrent }, i) => {
+    const found: Caution[] = []
+    if (noLoadVoltage > highVoltage) found.push({ level: 'note', code: 'lower-voltage', supply: id })
+    const circuit = circuits[i]
+    const dimmest = circuit && dimmestTube(circuit)
+    if (type === 'electronic' && circuit && dimmest && dimmest.least < dim * shortCircuitCurrent)
       found.push({
         level: 'watch',
         code: 'stray',
-        text: `${supply.id} loses ${ma(stray)} of ${ma(supply.shortCircuitCurrent)} to stray capacitance over ${length.toFixed(1)} m of glass; electronic supplies are not for long runs on metal (common practice).`,
+        supply: id,
+        ...dimmest,
+        given: shortCircuitCurrent,
+        tubeLength: circuit.tubeLength,
+        onMetal: layout.face.metal !== 'none',
       })
-    if (supply.type === 'electronic' && (supply.frequency < 15_000 || supply.frequency > 50_000))
-      found.push({
-        level: 'note',
-        code: 'frequency',
-        text: `${supply.id}: electronic supplies run at 20–30 kHz; the layout says ${supply.frequency / 1000} kHz.`,
-      })
-  }
-  return found
+    if (type === 'electronic' && (frequency < usualFrequency[0] || frequency > usualFrequency[1]))
+      found.push({ level: 'note', code: 'frequency', supply: id, frequency })
+    return found
+  })
+}
+
+/** The tube with the least current of the string, A. */
+function dimmestTube({ tubes }: CircuitFinding): { tube: string; least: number } | undefined {
+  return tubes
+    .flatMap(({ id, least }) => (least ? [{ tube: id, least: least.current }] : []))
+    .reduce<{ tube: string; least: number } | undefined>(
+      (dimmest, tube) => (dimmest && dimmest.least <= tube.least ? dimmest : tube),
+      undefined,
+    )
 }

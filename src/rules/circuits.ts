@@ -7,11 +7,21 @@ import type { CircuitOutcome, ColumnCurrents, PotentialField } from '../network/
 import type { StrayShares } from '../network/stray.js'
 import { noLoadVoltage } from '../network/supplies.js'
 import type { CircuitLead } from '../wiring/leads.js'
-import { commonPractice } from './common-practice.js'
-import type { CircuitFinding, EndState, LeadFinding, Loading, TubeFinding, Verdict } from './findings.js'
+import { type CircuitFacts, circuitRuleFindings, efficiency } from './circuit-rules.js'
+import type {
+  CircuitFinding,
+  CircuitRuleFinding,
+  EndState,
+  LeadFinding,
+  Loading,
+  TubeFinding,
+  Verdict,
+} from './findings.js'
+import type { Quantity, RuleSet } from './rule-set.js'
 
 export interface CircuitContext {
   readonly layout: Layout
+  readonly ruleSets: readonly RuleSet[]
   readonly wiring: Wiring
   readonly bodies: readonly FixedBody[]
   readonly leads: readonly LeadBody[]
@@ -24,8 +34,8 @@ export interface CircuitContext {
   readonly stray?: StrayShares
 }
 
-/** efficiency assumed between the mains and the glass (ours) */
-const efficiency = 0.85
+/** m of chart that an electrode pair counts as (common practice, no published source) */
+export const electrodePair = 0.3
 
 export const circuitFindings = (context: CircuitContext): CircuitFinding[] =>
   context.wiring.circuits.map((circuit, index) => circuitFinding(context, circuit, index))
@@ -35,8 +45,9 @@ function circuitFinding(context: CircuitContext, circuit: CircuitWiring, index: 
   const outcome = context.outcomes?.[index]
   const tubes = circuit.string.map(({ tube }) => context.layout.tubes.findIndex((t) => t.id === tube))
   const field = context.fields?.find((f) => f.supply === supply.id)
-  const tubeLength = tubes.reduce((sum, t) => sum + context.bodies[t]!.line.length, 0)
-  const loadings = loadingsOf(context, supply, outcome, tubes, index)
+  const facts = circuitFacts(context, supply, outcome, tubes, index)
+  const rules = circuitRuleFindings(context.ruleSets, facts)
+  const loadings = loadingsOf(facts).map((loading) => ruledLoading(loading, rules))
   const lit = outcome?.lit === true
   return {
     supply: supply.id,
@@ -54,7 +65,7 @@ function circuitFinding(context: CircuitContext, circuit: CircuitWiring, index: 
       stray: strayOf(outcome),
       residual: magnitude(outcome.residual),
     }),
-    tubeLength,
+    tubeLength: facts.tubeLength,
     electrodePairs: tubes.length,
     terminals: outcome?.lit
       ? [0, 1].map((k) => ({
@@ -64,6 +75,7 @@ function circuitFinding(context: CircuitContext, circuit: CircuitWiring, index: 
         }))
       : [],
     loadings,
+    rules,
     tubes: tubes.map((t) =>
       tubeFinding(context, t, outcome?.lit ? outcome.columns.get(t) : undefined, field),
     ),
@@ -71,6 +83,7 @@ function circuitFinding(context: CircuitContext, circuit: CircuitWiring, index: 
     verdict: worst([
       ...(outcome && !outcome.lit ? (['fix'] as const) : []),
       ...loadings.map((l) => l.verdict),
+      ...rules.map((r) => r.verdict),
     ]),
   }
 }
@@ -98,58 +111,74 @@ function strayOf(outcome: CircuitOutcome & { readonly lit: true }): number {
   return magnitude(minus(larger, along))
 }
 
-/** Each way of looking at the load of a supply that the layout gives figures for. */
-function loadingsOf(
+function circuitFacts(
   { layout, bodies, leads, places }: CircuitContext,
   supply: Supply,
   outcome: CircuitOutcome | undefined,
   tubes: readonly number[],
   index: number,
-): Loading[] {
+): CircuitFacts & { readonly chart?: Footage } {
+  const used = tubes.map((t) => layout.tubes[t]!)
+  const lengths = tubes.map((t) => bodies[t]!.line.length)
+  const chart = footage(supply, used, lengths)
+  return {
+    supply,
+    tubes: used,
+    tubeLength: lengths.reduce((sum, length) => sum + length, 0),
+    leads: places.flatMap((p, i) =>
+      p.circuit === index ? [{ body: leads[i]!, feed: p.role === 'feed' }] : [],
+    ),
+    ...(outcome && { outcome }),
+    ...(chart && { chart, chartShare: chart.share }),
+  }
+}
+
+/** Each way of looking at the load of a supply that the layout gives figures for. */
+function loadingsOf({
+  supply,
+  tubes,
+  leads,
+  outcome,
+  chart,
+}: CircuitFacts & { readonly chart?: Footage }): Loading[] {
   const loadings: Loading[] = []
   const add = (by: Loading['by'], value: number, limit: number, watch: number, fix: number) => {
-    const part = value / limit
+    const share = value / limit
     loadings.push({
       by,
       value,
       limit,
-      share: part,
-      verdict: part > fix ? 'fix' : part > watch ? 'watch' : 'within',
+      share,
+      verdict: share > fix ? 'fix' : share > watch ? 'watch' : 'within',
     })
   }
-  const used = tubes.map((t) => layout.tubes[t]!)
-  if (outcome?.neededVoltage !== undefined)
-    add(
-      'voltage',
-      outcome.neededVoltage,
-      noLoadVoltage(supply),
-      voltageWatch(supply, used),
-      outcome.lit ? Infinity : 0,
-    )
-  const chart = chartShare(
-    supply,
-    used,
-    tubes.map((t) => bodies[t]!.line.length),
-  )
-  if (chart)
-    add(
-      'chart',
-      chart.metres,
-      chart.metres / chart.share,
-      commonPractice.chart.watch,
-      commonPractice.chart.fix,
-    )
+  if (outcome?.neededVoltage !== undefined) {
+    const fix = outcome.lit ? Infinity : 0
+    add('voltage', outcome.neededVoltage, noLoadVoltage(supply), voltageWatch(supply, tubes), fix)
+  }
+  // never over the maker's chart; how much of it is common practice comes with that rule set
+  if (chart) add('chart', chart.metres, chart.metres / chart.share, 1, 1)
   if (outcome?.lit && supply.ratedPower) add('mains', outcome.power / efficiency, supply.ratedPower, 0.9, 1)
   if (outcome?.lit && supply.groundFaultTrip)
     add('residual', magnitude(outcome.residual), supply.groundFaultTrip, 0.8, 1)
   if (supply.maxLead) {
-    const feeds = places.flatMap((p, i) =>
-      p.circuit === index && p.role === 'feed' ? leads[i]!.line.length : [],
-    )
+    const feeds = leads.flatMap(({ body, feed }) => (feed ? [body.line.length] : []))
     add('lead', Math.max(...feeds), supply.maxLead, 1, 1)
   }
   return loadings
 }
+
+/** the quantity of rules that a way of looking at the load shows */
+export const shownAs: Partial<Record<Quantity, Loading['by']>> = { load: 'voltage', 'chart-share': 'chart' }
+
+/** A loading with the verdict of the rules on the same quantity where that is worse. */
+const ruledLoading = (loading: Loading, rules: readonly CircuitRuleFinding[]): Loading => ({
+  ...loading,
+  verdict: worst([
+    loading.verdict,
+    ...rules.flatMap((r) => (r.kind === 'limit' && shownAs[r.quantity] === loading.by ? [r.verdict] : [])),
+  ]),
+})
 
 /**
  * Share of no-load voltage from which to watch. Electronic: 0.8 (ours). Core-and-coil: the room to relight each
@@ -160,19 +189,20 @@ export function voltageWatch({ type }: Supply, tubes: readonly Pick<Tube, 'fill'
   return tubes.some((t) => t.fill === 'neon') ? 0.65 : 0.76
 }
 
+interface Footage {
+  readonly metres: number
+  readonly share: number
+}
+
 /** Footage against the maker's chart: a pair counts as 0.3 m, each kind of tube as its share of its own chart. */
-function chartShare(
-  supply: Supply,
-  tubes: readonly Tube[],
-  lengths: readonly number[],
-): { metres: number; share: number } | undefined {
+function footage(supply: Supply, tubes: readonly Tube[], lengths: readonly number[]): Footage | undefined {
   let metres = 0
   let share = 0
   for (const [i, tube] of tubes.entries()) {
     const limit = supply.chart.get(`${tube.fill}-${Math.round(tube.diameter * 1000)}`)
     if (limit === undefined) return undefined
-    metres += lengths[i]! + commonPractice.electrodePair
-    share += (lengths[i]! + commonPractice.electrodePair) / limit
+    metres += lengths[i]! + electrodePair
+    share += (lengths[i]! + electrodePair) / limit
   }
   return share > 0 ? { metres, share } : undefined
 }

@@ -5,7 +5,10 @@ import type { DistanceTable } from './rule-set.js'
 export const sameDistance = 1e-6
 
 /** The distance that the table asks for at a voltage. */
-export function distanceAt({ voltages, distances, interpolation, beyond }: DistanceTable, voltage: number): number {
+export function distanceAt(
+  { voltages, distances, interpolation, beyond }: DistanceTable,
+  voltage: number,
+): number {
   const last = voltages.length - 1
   if (interpolation === 'step') {
     const row = voltages.findLastIndex((from) => from < voltage)
@@ -21,7 +24,10 @@ export function distanceAt({ voltages, distances, interpolation, beyond }: Dista
 }
 
 /** The highest voltage for which the table asks for no more than this distance; Infinity where none asks for more. */
-export function voltageAt({ voltages, distances, interpolation, beyond }: DistanceTable, distance: number): number {
+export function voltageAt(
+  { voltages, distances, interpolation, beyond }: DistanceTable,
+  distance: number,
+): number {
   const last = voltages.length - 1
   const row = distances.findLastIndex((d) => d <= distance + sameDistance)
   if (interpolation === 'step') return row === last ? Infinity : voltages[row + 1]!

@@ -198,7 +198,11 @@ export type CautionFacts =
       readonly leads: readonly string[]
       readonly governs: string
     }
-  | { readonly code: 'not-modelled'; readonly what: 'sheets' | 'midpoint-return'; readonly parts: readonly string[] }
+  | {
+      readonly code: 'not-modelled'
+      readonly what: 'sheets' | 'midpoint-return'
+      readonly parts: readonly string[]
+    }
   | { readonly code: 'rules-missing'; readonly missing: readonly MissingRules[] }
   | { readonly code: 'glass-meets'; readonly tubes: readonly (readonly [string, string])[] }
   | { readonly code: 'route-assumed'; readonly leads: readonly string[] }

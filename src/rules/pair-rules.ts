@@ -4,7 +4,7 @@ import type { Supply } from '../layout/layout.js'
 import { noLoadVoltage } from '../network/supplies.js'
 import { altitudeFactor, distanceAt, sameDistance, voltageAt } from './distance-table.js'
 import type { RuleFinding } from './findings.js'
-import { bodyOf, circuitsOf, type Parts, placeBits } from './passing.js'
+import { bitsAt, bodyBits, bodyOf, circuitsOf, type Parts } from './passing.js'
 import type { Conditions, PairRule, Range, RuleSet, VoltageBasis } from './rule-set.js'
 
 export const severityCap = 999
@@ -69,8 +69,8 @@ export function ruleFindings(
   voltages: RuleVoltages,
 ): RuleFinding[] {
   if (rules.length === 0) return []
-  const a = placeBits(parts, run.a, run.atA[i]!)
-  const b = placeBits(parts, run.b, run.atB[i]!)
+  const a = bitsAt(bodyBits(parts, run.a), run.atA[i]!)
+  const b = bitsAt(bodyBits(parts, run.b), run.atB[i]!)
   const found: RuleFinding[] = []
   for (const chosen of rules) {
     if (!matches(chosen.rule, a, b) || !partsFit(chosen.rule.when, parts, run)) continue
@@ -92,13 +92,25 @@ function partsFit(when: Conditions, parts: Parts, run: CloseRun): boolean {
   const bodies = [bodyOf(parts, run.a), bodyOf(parts, run.b)]
   const circuits = circuitsOf(parts, run)
   if (when.circuits && (circuits.length === 1 ? 'same' : 'different') !== when.circuits) return false
-  if (!suppliesFit(when, circuits.map((c) => parts.supplies[c]!))) return false
+  if (
+    !suppliesFit(
+      when,
+      circuits.map((c) => parts.supplies[c]!),
+    )
+  )
+    return false
   const leads = bodies.filter((body) => body?.kind === 'lead')
   const tubes = bodies.filter((body) => body?.kind === 'tube')
   const bars = bodies.filter((body) => body?.kind === 'bar')
   return (
-    holds(when.conduit, leads.map((lead) => lead.conduit)) &&
-    holds(when.fill, tubes.map((tube) => tube.fill)) &&
+    holds(
+      when.conduit,
+      leads.map((lead) => lead.conduit),
+    ) &&
+    holds(
+      when.fill,
+      tubes.map((tube) => tube.fill),
+    ) &&
     (when.metal === undefined ||
       (bars.length > 0 && bars.some((bar) => within(when.metal, bar.line.length + 2 * bar.outerRadius))))
   )
@@ -107,10 +119,20 @@ function partsFit(when: Conditions, parts: Parts, run: CloseRun): boolean {
 /** Conditions on supplies: of two, one that meets them is enough for words, the higher figure counts for ranges. */
 export function suppliesFit(when: Conditions, supplies: readonly Supply[]): boolean {
   if (when.supply && !supplies.some(({ type }) => type === when.supply)) return false
-  if (!holds(when.grounding, supplies.map(({ grounding }) => grounding))) return false
+  if (
+    !holds(
+      when.grounding,
+      supplies.map(({ grounding }) => grounding),
+    )
+  )
+    return false
   const highest = (figure: (supply: Supply) => number) => Math.max(0, ...supplies.map(figure))
   return (
-    (when.frequency === undefined || within(when.frequency, highest((s) => s.frequency))) &&
+    (when.frequency === undefined ||
+      within(
+        when.frequency,
+        highest((s) => s.frequency),
+      )) &&
     (when.noLoad === undefined || within(when.noLoad, highest(noLoadVoltage))) &&
     (when.terminal === undefined || within(when.terminal, highest(terminalVoltage)))
   )
@@ -156,7 +178,11 @@ function ruleFinding(
  * The voltage over what the gap may have; absent where the wiring cannot change what the rule asks for: fixed
  * distances, no-load voltage, and gaps under the lowest step of a table.
  */
-function severityOf({ rule: { distance, by }, factor }: ChosenRule, gap: number, voltage: number): number | undefined {
+function severityOf(
+  { rule: { distance, by }, factor }: ChosenRule,
+  gap: number,
+  voltage: number,
+): number | undefined {
   if (typeof distance === 'number' || by.of === 'no-load') return undefined
   const allowed = voltageAt(distance, gap / factor)
   if (allowed > 0) return Math.min(severityCap, voltage / allowed)

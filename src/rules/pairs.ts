@@ -3,24 +3,10 @@
 import { type GapStart, gapStart, stressFrom } from '../gaps/gap-stress.js'
 import type { BodyRef, CloseRun } from '../geometry/runs.js'
 import type { Layout, Point } from '../layout/layout.js'
-import {
-  type NodeMix,
-  nodeMix,
-  type Probe,
-  peakDifference,
-  placeOnGround,
-  rmsDifference,
-} from '../network/potentials.js'
+import { type NodeMix, nodeMix, type Probe, peakDifference, rmsDifference } from '../network/potentials.js'
 import type { PotentialField } from '../network/solution.js'
 import type { Differences, PairFinding, PartKind, RuleFinding, Spot, Verdict } from './findings.js'
-import {
-  type ChosenRule,
-  chosenRules,
-  type PlaceVoltage,
-  type RuleVoltages,
-  ruleFindings,
-  severityCap,
-} from './pair-rules.js'
+import { type ChosenRule, chosenRules, type PlaceVoltage, ruleFindings, severityCap } from './pair-rules.js'
 import { circuitsOf, type Parts, partKind, partName, surface } from './passing.js'
 import { otherPlaces } from './places.js'
 import type { RuleSet } from './rule-set.js'
@@ -139,15 +125,50 @@ const upper = (lit: LitFields, measure: Measure, a: NodeMix, b: NodeMix): number
 const lower = (lit: LitFields, measure: Measure, a: NodeMix, b: NodeMix): number =>
   Math.min(measure(lit.nominal, a, b), ...lit.band.map((fields) => measure(fields, a, b)))
 
+const ground: NodeMix = { low: -1, high: -1, t: 0 }
+
 /** Differences and potentials of one field set, or of one end of the lit band. */
-function placeVoltage(measure: (take: Measure, a: NodeMix, b: NodeMix) => number, a: NodeMix, b: NodeMix): PlaceVoltage {
-  const higher = (take: Measure) => Math.max(measure(take, a, placeOnGround), measure(take, b, placeOnGround))
+function placeVoltage(
+  measure: (take: Measure, a: NodeMix, b: NodeMix) => number,
+  a: NodeMix,
+  b: NodeMix,
+): PlaceVoltage {
+  const higher = (take: Measure) => Math.max(measure(take, a, ground), measure(take, b, ground))
   return {
     rms: measure(rmsDifference, a, b),
     peak: measure(peakDifference, a, b),
     toGround: () => ({ rms: higher(rmsDifference), peak: higher(peakDifference) }),
   }
 }
+
+/** The voltages at a place: on paper, and of the upper and lower end of the lit band. */
+interface Voltages {
+  readonly nameplate: PlaceVoltage
+  readonly lit?: { readonly nominal: number; readonly low: PlaceVoltage; readonly high: PlaceVoltage }
+}
+
+function voltagesAt(
+  { nameplate }: PairContext,
+  lit: LitFields | undefined,
+  a: NodeMix,
+  b: NodeMix,
+): Voltages {
+  const onPaper = placeVoltage((take, p, q) => take(nameplate, p, q), a, b)
+  if (!lit) return { nameplate: onPaper }
+  return {
+    nameplate: onPaper,
+    lit: {
+      nominal: rmsDifference(lit.nominal, a, b),
+      low: placeVoltage((take, p, q) => lower(lit, take, p, q), a, b),
+      high: placeVoltage((take, p, q) => upper(lit, take, p, q), a, b),
+    },
+  }
+}
+
+const differences = ({ nameplate, lit }: Voltages): Differences => ({
+  ...(lit && { lit: lit.nominal, litLow: lit.low.rms, litHigh: lit.high.rms, litPeak: lit.high.peak }),
+  nameplate: nameplate.rms,
+})
 
 function findingAt(
   { context, rules: chosen }: Judge,
@@ -156,40 +177,27 @@ function findingAt(
   lit: LitFields | undefined,
   key: string,
 ): PairFinding {
-  const [a, b] = mixes(context, run, i)
+  const voltages = voltagesAt(context, lit, ...mixes(context, run, i))
+  const { nameplate } = voltages
   const start = startOf(context, run, i)
-  const nameplate = placeVoltage((take, p, q) => take(context.nameplate, p, q), a, b)
   const relights = context.supplies.some((s) => s.type === 'core-and-coil')
   const judged = (place: PlaceVoltage | undefined) => {
-    const voltages: RuleVoltages = place ? { lit: place, nameplate } : { nameplate }
-    const rules = ruleFindings(chosen, context, run, i, voltages)
+    const rules = ruleFindings(chosen, context, run, i, place ? { lit: place, nameplate } : { nameplate })
     // on core-and-coil every half-cycle relights: the no-load peak counts as well
-    const peak = place ? (relights ? Math.max(place.peak, nameplate.peak) : place.peak) : nameplate.peak
+    const peak = place ? Math.max(place.peak, relights ? nameplate.peak : 0) : nameplate.peak
     const stress = stressFrom(start, peak)
     return { rules, stress, verdict: judge(rules, stress.margin) }
   }
-  const high = lit && placeVoltage((take, p, q) => upper(lit, take, p, q), a, b)
-  const low = lit && placeVoltage((take, p, q) => lower(lit, take, p, q), a, b)
-  const onLit = context.condition === 'lit' && lit !== undefined
-  const { rules, stress, verdict } = judged(onLit ? high : undefined)
-  const atLow = onLit ? judged(low).verdict : verdict
+  const onLit = context.condition === 'lit' ? voltages.lit : undefined
+  const { rules, stress, verdict } = judged(onLit?.high)
+  const atLow = onLit ? judged(onLit.low).verdict : verdict
   return {
     key,
     kind: pairKind(context, run),
     a: spot(context, run.a, run.atA[i]!, run.pointA, i),
     b: spot(context, run.b, run.atB[i]!, run.pointB, i),
     gap: run.gap[i]!,
-    difference: {
-      ...(lit &&
-        high &&
-        low && {
-          lit: rmsDifference(lit.nominal, a, b),
-          litLow: low.rms,
-          litHigh: high.rms,
-          litPeak: high.peak,
-        }),
-      nameplate: nameplate.rms,
-    },
+    difference: differences(voltages),
     air: { peak: stress.airPeak, startsAt: stress.startsAt, outcome: stress.outcome },
     rules,
     ...verdict,
@@ -227,7 +235,11 @@ function judge(
   margin: number,
 ): { severity: number; verdict: Verdict; governs: string } {
   const criteria = [
-    { governs: 'physics: discharge in the air', severity: Math.min(severityCap, margin), verdict: verdictOf(margin) },
+    {
+      governs: 'physics: discharge in the air',
+      severity: Math.min(severityCap, margin),
+      verdict: verdictOf(margin),
+    },
     ...rules.map((r) => ({
       governs: `${r.set}: ${r.clause}`,
       severity: r.severity ?? 0,

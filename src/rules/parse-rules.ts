@@ -49,7 +49,12 @@ function parsed(text: string, problems: RuleProblem[]): RuleSet | undefined {
     problems.push({ ...facts, place: places.place(offset) })
   }
   if (!isKeyed(value)) {
-    report(places.value([]), { code: 'wrong-form', what: 'the file', form: 'rule-set', found: foundIn(value) })
+    report(places.value([]), {
+      code: 'wrong-form',
+      what: 'the file',
+      form: 'rule-set',
+      found: foundIn(value),
+    })
     return undefined
   }
   const reading: RuleReading = { value, places, report }

@@ -42,29 +42,43 @@ export function circuitOf(parts: Parts, body: BodyRef): number {
 
 const atEnd = (at: number, length: number): boolean => at < electrodeReach || at > length - electrodeReach
 
-/** The words that fit a place of a body, as bits. */
-export function placeBits(parts: Parts, ref: BodyRef, at: number): number {
-  const part = bodyOf(parts, ref)
-  if (!part) {
-    const grounded = parts.layout.face.metal === 'grounded'
-    return partBits.any | partBits.metal | partBits.face | (grounded ? partBits.grounded : partBits.floating)
-  }
-  if (part.kind === 'bar')
-    return partBits.any | partBits.metal | (part.grounded ? partBits.grounded : partBits.floating)
-  if (part.kind === 'tube') {
-    const place = !atEnd(at, part.line.length)
-      ? partBits.glass
-      : partBits.electrode | (part.boots ? 0 : partBits.bare)
-    return partBits.any | partBits.tube | place
-  }
-  const role = ref.kind === 'lead' && parts.feeds.has(ref.index) ? partBits.feed : partBits.jumper
-  return partBits.any | partBits.lead | role | (bareLead(parts, part, at) ? partBits.bare : 0)
+/** The words that fit the places of a body, as bits: at its two ends and between them. */
+interface BodyBits {
+  readonly first: number
+  readonly between: number
+  readonly last: number
+  /** m; no ends where it is 0 */
+  readonly length: number
 }
 
-/** The end of a lead on an electrode without a boot. */
-function bareLead({ bodies }: Parts, { between, line }: LeadBody, at: number): boolean {
-  if (!atEnd(at, line.length)) return false
-  const end = between[at < electrodeReach ? 0 : 1]
+const uniform = (bits: number): BodyBits => ({ first: bits, between: bits, last: bits, length: 0 })
+const metalBits = (grounded: boolean): number =>
+  partBits.any | partBits.metal | (grounded ? partBits.grounded : partBits.floating)
+
+export function bodyBits(parts: Parts, ref: BodyRef): BodyBits {
+  const part = bodyOf(parts, ref)
+  if (!part) return uniform(metalBits(parts.layout.face.metal === 'grounded') | partBits.face)
+  if (part.kind === 'bar') return uniform(metalBits(part.grounded))
+  const { length } = part.line
+  if (part.kind === 'tube') {
+    const tube = partBits.any | partBits.tube
+    const end = tube | partBits.electrode | (part.boots ? 0 : partBits.bare)
+    return { first: end, between: tube | partBits.glass, last: end, length }
+  }
+  const role = ref.kind === 'lead' && parts.feeds.has(ref.index) ? partBits.feed : partBits.jumper
+  const lead = partBits.any | partBits.lead | role
+  const end = (name: string) => lead | (onBareElectrode(parts, name) ? partBits.bare : 0)
+  return { first: end(part.between[0]), between: lead, last: end(part.between[1]), length }
+}
+
+/** The bits at a path length of the body. */
+export function bitsAt({ first, between, last, length }: BodyBits, at: number): number {
+  if (at < electrodeReach) return first
+  return at > length - electrodeReach ? last : between
+}
+
+/** Does the lead's end `K.a` sit on an electrode without a boot? Its last bit is then bare as well. */
+function onBareElectrode({ bodies }: Parts, end: string): boolean {
   const tube = end.slice(0, end.lastIndexOf('.'))
   return bodies.some((body) => body.kind === 'tube' && body.name === tube && !body.boots)
 }
@@ -78,7 +92,9 @@ export function surface(parts: Parts, ref: BodyRef, at: number): Surface {
   const bare: Surface = { kind: 'bare', outerRadius, wall: 0, permittivity: 1 }
   if (part.kind === 'bar') return bare
   if (part.kind === 'lead') return { kind: 'insulated', outerRadius, wall, permittivity }
-  return atEnd(at, part.line.length) && !part.boots ? bare : { kind: 'glass', outerRadius, wall, permittivity }
+  return atEnd(at, part.line.length) && !part.boots
+    ? bare
+    : { kind: 'glass', outerRadius, wall, permittivity }
 }
 
 /** Indices of the circuits that two bodies belong to: none, one or two. */

@@ -1,11 +1,13 @@
 /** Which samples of a run deserve a verdict of their own beside the one with the most voltage for its gap. */
 import type { CloseRun } from '../geometry/runs.js'
 import { type ChosenRule, widestFixed } from './pair-rules.js'
-import { type Parts, placeBits } from './passing.js'
+import { bitsAt, bodyBits, type Parts } from './passing.js'
+
+/** more than all part bits together */
+const side = 4096
 
 /** Samples where the same rules hold and the same surfaces meet. */
 interface Stretch {
-  readonly bits: readonly [number, number]
   heaviest: number
   narrowest: number
 }
@@ -21,27 +23,25 @@ export function otherPlaces(
   weights: Float64Array,
   worst: number,
 ): number[] {
+  const [one, two] = [bodyBits(parts, run.a), bodyBits(parts, run.b)]
+  const keyAt = (i: number) => bitsAt(one, run.atA[i]!) * side + bitsAt(two, run.atB[i]!)
   const stretches = new Map<number, Stretch>()
-  const keyOf = ([a, b]: readonly [number, number]) => a * 4096 + b
-  const bitsAt = (i: number): [number, number] => [
-    placeBits(parts, run.a, run.atA[i]!),
-    placeBits(parts, run.b, run.atB[i]!),
-  ]
+  let here = -1
+  let stretch: Stretch | undefined
   for (let i = 0; i < run.gap.length; i++) {
-    const bits = bitsAt(i)
-    const known = stretches.get(keyOf(bits))
-    if (!known) {
-      stretches.set(keyOf(bits), { bits, heaviest: i, narrowest: i })
-      continue
+    const key = keyAt(i)
+    if (key !== here || !stretch) {
+      here = key
+      stretch = stretches.get(key) ?? { heaviest: i, narrowest: i }
+      stretches.set(key, stretch)
     }
-    if (weights[i]! > weights[known.heaviest]!) known.heaviest = i
-    if (run.gap[i]! < run.gap[known.narrowest]!) known.narrowest = i
+    if (weights[i]! > weights[stretch.heaviest]!) stretch.heaviest = i
+    if (run.gap[i]! < run.gap[stretch.narrowest]!) stretch.narrowest = i
   }
-  const here = keyOf(bitsAt(worst))
   const places = new Set<number>()
-  for (const [key, { bits, heaviest, narrowest }] of stretches) {
-    if (key !== here) places.add(heaviest)
-    if (run.gap[narrowest]! < widestFixed(rules, ...bits)) places.add(narrowest)
+  for (const [key, { heaviest, narrowest }] of stretches) {
+    if (key !== keyAt(worst)) places.add(heaviest)
+    if (run.gap[narrowest]! < widestFixed(rules, Math.floor(key / side), key % side)) places.add(narrowest)
   }
   places.delete(worst)
   return [...places]

@@ -42,6 +42,9 @@ export interface ResolvedRules {
   readonly missing: readonly MissingRules[]
 }
 
+/** For work that judges nothing. */
+export const noRules: ResolvedRules = { sets: [], missing: [] }
+
 /**
  * The sets behind `names`. What is no shipped name goes to `readFile`, which gives the text of a file beside the
  * layout, or nothing. A set that cannot be used is missing with the reason; the others still judge.
@@ -56,7 +59,10 @@ export function resolveRules(
     const found = shippedSet(name) ?? fromFile(name, readFile)
     if (typeof found === 'string') missing.push({ name, complaint: found })
     else if (sets.some(({ id }) => id === found.id))
-      missing.push({ name, complaint: `${printable(name)}: its id ${found.id} is already that of another set of this sign` })
+      missing.push({
+        name,
+        complaint: `${printable(name)}: its id ${found.id} is already that of another set of this sign`,
+      })
     else sets.push(found)
   }
   return { sets, missing }
@@ -67,10 +73,14 @@ function fromFile(name: string, readFile: (path: string) => string | undefined):
   const text = readFile(name)
   if (text === undefined) {
     const meant = nearest(name, shippedNames)
-    const hint = meant ? `did you mean ${meant}?` : `expected a rule file or one of ${shippedNames.join(', ')}`
+    const hint = meant
+      ? `did you mean ${meant}?`
+      : `expected a rule file or one of ${shippedNames.join(', ')}`
     return `${printable(name)}: there is no such rule set and no such file beside the layout, ${hint}`
   }
   const { set, texts } = parseRuleSet(text, name)
   if (!set) return texts.join('\n\n')
-  return shippedTexts.has(set.id) ? `${printable(name)}: its id ${set.id} is that of a shipped set, expected another` : set
+  return shippedTexts.has(set.id)
+    ? `${printable(name)}: its id ${set.id} is that of a shipped set, expected another`
+    : set
 }

@@ -43,7 +43,8 @@ function checkRule(reading: RuleReading, rule: Keyed, path: KeyPath): void {
   const given = limitKeys.filter(has)
   if (given.length > 1) report(places.key([...path, given[1] ?? '']), { code: 'several-limits', given })
   for (const [key, wanted] of Object.entries(needs))
-    if (has(key) && !wanted.some(has)) report(places.key([...path, key]), { code: 'key-needs', key, needs: wanted })
+    if (has(key) && !wanted.some(has))
+      report(places.key([...path, key]), { code: 'key-needs', key, needs: wanted })
   if (isKeyed(rule.when)) checkConditions(reading, rule.when, [...path, 'when'], has('between'))
   inRange(reading, [...path, 'distance_mm'], rule.distance_mm, [0, 10_000], 'mm')
   if (isKeyed(rule.by)) inRange(reading, [...path, 'by', 'times'], rule.by.times, [0.1, 10], '')
@@ -52,7 +53,12 @@ function checkRule(reading: RuleReading, rule: Keyed, path: KeyPath): void {
   if (isKeyed(rule.limit)) checkLimit(reading, rule.limit, [...path, 'limit'])
 }
 
-function checkTexts({ places, report }: RuleReading, held: Keyed, path: KeyPath, keys: readonly string[]): void {
+function checkTexts(
+  { places, report }: RuleReading,
+  held: Keyed,
+  path: KeyPath,
+  keys: readonly string[],
+): void {
   for (const key of keys) {
     const text = held[key]
     if (typeof text !== 'string') continue

@@ -45,6 +45,10 @@ export function ruleProblemSentence(problem: RuleFacts): string {
       return 'the limit has no figure or two, expected one of at_most and by_terminal_kv'
     case 'set-id':
       return `the id "${problem.id}" cannot be used, expected lower-case letters, digits and dashes, as our-shop`
+    case 'not-a-choice':
+      return problem.what === 'rule_set'
+        ? `rule_set is ${problem.found.text || 'no number'}, expected 1, the only format this version reads`
+        : problemSentence(problem)
     // said of a layout otherwise
     case 'too-deep':
       return `more than ${problem.limit} levels inside each other, expected a rule set`

@@ -57,8 +57,9 @@ export function frame(columns: number, rows: number, circuits = 1): Frame {
 
   if (columns < sideBySide) {
     // stacked: three of the worst, one line of loading, the map takes the rest
-    const loading = body >= 9 ? 2 : 1
-    const worst = body >= 9 ? 4 : Math.max(1, Math.min(2, body - 4))
+    const roomy = body >= 13
+    const loading = roomy ? 2 : 1
+    const worst = roomy ? 4 : Math.max(1, Math.min(2, body - 4))
     const map = body - loading - worst
     return {
       ...fixed,

@@ -50,8 +50,15 @@ export function placeOf(wiring: Wiring, tube: string): { circuit: number; place:
   return undefined
 }
 
-function withString(wiring: Wiring, circuit: number, string: readonly StringEntry[]): Wiring {
-  return { circuits: wiring.circuits.map((c, i) => (i === circuit ? { ...c, string } : c)) }
+const withString = (wiring: Wiring, circuit: number, string: readonly StringEntry[]): Wiring => ({
+  circuits: wiring.circuits.map((c, i) => (i === circuit ? restrung(c, string) : c)),
+})
+
+/** The way back to the midpoint stays at its tube end, as long as that lies inside the string and not at the feed. */
+function restrung({ midpointReturn, ...rest }: CircuitWiring, string: readonly StringEntry[]): CircuitWiring {
+  const inside = [...string.slice(0, -1).map(leavingEnd), ...string.slice(1).map(enteringEnd)]
+  const stays = midpointReturn !== undefined && inside.includes(midpointReturn)
+  return stays ? { ...rest, string, midpointReturn } : { ...rest, string }
 }
 
 /** Turns the link in front of string[link] into the feed, and the old feed into a jumper. */

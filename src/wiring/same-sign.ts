@@ -1,5 +1,5 @@
 /** Does a layout that was read hold the sign that was meant? */
-import type { Layout, Wiring } from '../layout/layout.js'
+import type { Layout } from '../layout/layout.js'
 import { cleaned } from '../layout/printable.js'
 import type { Sign } from './edits.js'
 
@@ -19,10 +19,7 @@ const parts = [
 
 /** Everything but the assumptions and the choice of rules, figures to the digits that are written. */
 export const holdsSign = (read: Layout, { layout, wiring }: Sign): boolean =>
-  parts.every((part) => alike(read[part], layout[part])) && sameCircuits(read.wiring, wiring)
-
-/** The same circuits in all they say, not only in their strings. */
-export const sameCircuits = (one: Wiring, other: Wiring): boolean => alike(one.circuits, other.circuits)
+  parts.every((part) => alike(read[part], layout[part])) && alike(read.wiring.circuits, wiring.circuits)
 
 /** figures are written with nine digits; 0.1 µm, 0.1 µA */
 const close = (a: number, b: number): boolean => a === b || Math.abs(a - b) <= 1e-7 * Math.max(1, Math.abs(a))

@@ -1,6 +1,6 @@
 /** The printed deck against an independent circuit simulator, ngspice: it has to find the potentials of the solution. */
 import { readFileSync } from 'node:fs'
-import { describe, expect, test } from 'vitest'
+import { describe, expect, test, vi } from 'vitest'
 import { deckOf } from '../../src/commands/netlist.js'
 import { networkSolver, prepare } from '../../src/inspection.js'
 import type { Layout } from '../../src/layout/layout.js'
@@ -8,6 +8,9 @@ import { parseLayout } from '../../src/layout/parse.js'
 import { nodeNames } from '../../src/netlist/node-names.js'
 import { circuitLeads } from '../../src/wiring/leads.js'
 import { simulated } from './spice.js'
+
+// a machine that does other things at the same time is slow
+vi.setConfig({ testTimeout: 30_000 })
 
 function layoutOf(text: string): Layout {
   const { layout, problems } = parseLayout(text, 'sign.yaml')

@@ -169,3 +169,19 @@ describe('joining two ends', () => {
     })
   })
 })
+
+describe('the way back to the midpoint', () => {
+  const returned = (text: string, midpointReturn: string): Wiring => ({
+    circuits: wired(text).circuits.map((c) => ({ ...c, midpointReturn })),
+  })
+
+  it('stays at its tube end while that is inside the string', () => {
+    const after = made(shiftTube(returned('A B C D', 'B.b'), 'D', -1))
+    expect(after.circuits[0]?.midpointReturn).toBe('B.b')
+  })
+
+  it('goes where its end comes to the feed: there it would short half the supply', () => {
+    const after = made(moveFeed(returned('A B C D', 'B.b'), 0, 2))
+    expect(after.circuits[0]).toEqual({ supply: 'S1', string: wired('C D A B').circuits[0]?.string })
+  })
+})

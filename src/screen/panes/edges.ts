@@ -1,12 +1,12 @@
 /** Legend, message, key footer and the two pinned banner rows. */
 
+import { cautionText } from '../../view/caution-text.js'
 import { potentialScale, scaleEntries } from '../../view/scale.js'
 import { type Meaning, stepMeaning } from '../../view/theme.js'
 import { peakPotential } from '../instant.js'
 import { keyTable, keyText } from '../keys.js'
 import { fitted, type Line, line, lineWidth, span } from '../lines.js'
 import type { State } from '../state.js'
-import { pressing } from './pressing.js'
 import { asciiOnly, dots } from './words.js'
 
 /** glyph, colour and bounds of the seven steps; shorter forms on narrow screens */
@@ -88,7 +88,7 @@ export function bannerLines(state: State, width: number): [Line, Line] {
   const text = standing.find((s) => s.length + 2 <= width) ?? standing[3]!
   const danger = span('', 'banner-danger')
   const first = fitted([span(` ${text}`, 'banner-danger')], width, dots(state), danger)
-  const [worst, ...others] = pressing(state)
+  const [worst, ...others] = state.inspection.cautions
   if (!worst)
     return [
       first,
@@ -97,6 +97,7 @@ export function bannerLines(state: State, width: number): [Line, Line] {
   const as = `banner-${worst.level}` as const
   const more = others.length > 0 ? span(` +${others.length} (w)`, as) : span('', as)
   const room = width - lineWidth([more])
-  const words = state.ascii ? asciiOnly(worst.text) : worst.text
+  const said = cautionText(worst, state.present.sign.layout.units)
+  const words = state.ascii ? asciiOnly(said) : said
   return [first, [...fitted([span(` ${worst.level.toUpperCase()}: ${words}`, as)], room, dots(state)), more]]
 }

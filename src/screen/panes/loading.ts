@@ -4,32 +4,43 @@ import { supplyOf } from '../../rules/circuits.js'
 import type { CircuitFinding, Loading, Verdict } from '../../rules/findings.js'
 import type { Meaning } from '../../view/theme.js'
 import { hertz, kvFigure, ma, maFigure, metres, percent, supplyShort, watts } from '../../view/words.js'
-import { fitted, type Line, line, span } from '../lines.js'
+import { fitted, type Line, line, lineWidth, span } from '../lines.js'
 import type { State } from '../state.js'
 import { dots } from './words.js'
 
 const verdictMeaning = (verdict: Verdict): Meaning => verdict
 
 export function loadingLines(state: State, width: number, height: number): Line[] {
-  const { inspection, present } = state
-  const { circuits } = inspection
+  const { circuits } = state.inspection
   const each = Math.max(1, Math.floor(height / Math.max(1, circuits.length)))
-  const lines = circuits.flatMap((circuit, i) => circuitLines(state, circuit, i, width).slice(0, each))
-  if (height <= 2 && circuits[0])
-    return [
-      compactLine(state, circuits[0], width),
-      line(supplyShort(supplyOf(present.sign.layout, inspection.wiring.circuits[0]!)), 'dim'),
-    ].slice(0, height)
+  const lines =
+    each < 3
+      ? compactLines(state, circuits, width)
+      : circuits.flatMap((circuit, i) => circuitLines(state, circuit, i, width).slice(0, each))
   return lines.slice(0, height).map((spans) => fitted(spans, width, dots(state)))
 }
 
+/** little room: a row for each supply, then what supply it is where there is one only */
+function compactLines(
+  { present, inspection }: State,
+  circuits: readonly CircuitFinding[],
+  width: number,
+): Line[] {
+  const [only, more] = inspection.wiring.circuits
+  const rows = circuits.map((circuit) => compactLine(circuit, width))
+  return only && !more ? [...rows, line(supplyShort(supplyOf(present.sign.layout, only)), 'dim')] : rows
+}
+
 /** everything that must stay in view in one row */
-function compactLine(state: State, c: CircuitFinding, width: number): Line {
-  return fitted(
-    [span(`${c.supply} `, 'title'), ...stateSpans(c), span(`  ${currents(c)}`)],
-    width,
-    dots(state),
-  )
+function compactLine(c: CircuitFinding, width: number): Line {
+  const row = [span(`${c.supply} `, 'title'), ...stateSpans(c), span(`  ${currents(c)}`)]
+  if (lineWidth(row) <= width || !c.lit || !c.solved) return row
+  // the load as a share tells more than the kilovolts it is a share of
+  return [
+    span(`${c.supply} `, 'title'),
+    span(percent(c.load ?? 0), verdictMeaning(voltageVerdict(c))),
+    span(` ${currents(c)}`),
+  ]
 }
 
 function stateSpans(c: CircuitFinding): Line {
@@ -70,8 +81,9 @@ function circuitLines(state: State, c: CircuitFinding, index: number, width: num
   const bars = c.loadings.map((l) => barLine(state, l, width))
   return [
     name,
-    ...bars.slice(0, 2),
+    ...bars.slice(0, 1),
     line(`${currents(c)}  stray ${maFigure(c.stray ?? 0)}`),
+    ...bars.slice(1, 2),
     [span(`residual ${ma(c.residual ?? 0)}  `), ...dimmest(c)],
     ...bars.slice(2),
     line(`glass ${metres(c.tubeLength)}, ${c.electrodePairs} pairs, ${watts(c.power ?? 0)}`, 'dim'),
@@ -86,14 +98,14 @@ function dimmest(c: CircuitFinding): Line {
 }
 
 const barNames: Record<Loading['by'], string> = {
-  voltage: 'volts',
+  voltage: 'kVrms',
   chart: 'chart',
   mains: 'mains',
   residual: 'trip',
   lead: 'lead',
 }
 
-/** `volts ████████▌···|· 64% 5.1/8.0kV`: the limit stands at the mark, more than it runs over */
+/** `kVrms ████████···|· 64% 5.1/8.0`: the limit stands at the mark, more than it runs over */
 function barLine({ ascii }: State, l: Loading, width: number): Line {
   const figures = `${percent(l.share).replace(' ', '').padStart(5)} ${barFigures(l)}`
   const room = Math.max(6, width - 6 - figures.length - 1)
@@ -112,7 +124,7 @@ function barLine({ ascii }: State, l: Loading, width: number): Line {
 function barFigures({ by, value, limit }: Loading): string {
   switch (by) {
     case 'voltage':
-      return `${kvFigure(value)}/${kvFigure(limit)}kV`
+      return `${kvFigure(value)}/${kvFigure(limit)}`
     case 'chart':
       return `${value.toFixed(1)}/${limit.toFixed(1)}m`
     case 'mains':

@@ -39,10 +39,12 @@ function pairReadout(state: State, pair: PairFinding): Line[] {
       ),
       span(`  gap ${length(pair.gap, layout.units)}`, 'title'),
       span(
-        `  ${pair.verdict === 'within' ? verdict : verdict.toUpperCase()}${pair.unsure ? '?' : ''} `,
+        `  ${pair.verdict === 'within' ? '' : `${verdict.toUpperCase()}${pair.unsure ? '?' : ''} `}`,
         pair.verdict,
       ),
       span(`${severityFigure(pair.severity)} x its limit`, pair.verdict),
+      // names of rule sets may be long: last, where a narrow screen cuts
+      span(pair.verdict === 'within' ? `, ${verdict}${pair.unsure ? '?' : ''}` : '', 'within'),
     ],
     differenceLine(state, pair),
     [

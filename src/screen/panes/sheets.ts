@@ -1,12 +1,11 @@
 /** Long texts shown over the map: the help from the key table, and all cautions and assumptions. */
-import { generalCautions } from '../../rules/common-practice.js'
+import { cautionText, generalCautions } from '../../view/caution-text.js'
 import type { Meaning } from '../../view/theme.js'
 import { wrap } from '../../view/wrap.js'
 import { sheetBox } from '../frame.js'
 import { groupTitles, keyTable, keyText } from '../keys.js'
 import { fitted, type Line, line, span } from '../lines.js'
 import type { State } from '../state.js'
-import { pressing } from './pressing.js'
 import { asciiOnly, dots } from './words.js'
 
 const marksHelp = [
@@ -60,13 +59,15 @@ function helpLines(state: State, width: number): Line[] {
 }
 
 function cautionSheet(state: State, width: number): Line[] {
-  const cautions = pressing(state)
-  const { assumed } = state.present.sign.layout
+  const cautions = state.inspection.cautions
+  const { assumed, units } = state.present.sign.layout
   const text = (s: string) => (state.ascii ? asciiOnly(s) : s)
   const lines: Line[] = [
     line('Cautions about this sign, the most pressing first', 'title'),
     ...(cautions.length === 0 ? [line('  none beyond the general ones')] : []),
-    ...cautions.flatMap((c) => paragraphs([text(`${c.level}: ${c.text}`)], width, `banner-${c.level}`)),
+    ...cautions.flatMap((c) =>
+      paragraphs([text(`${c.level}: ${cautionText(c, units)}`)], width, `banner-${c.level}`),
+    ),
     line(''),
     line('Always', 'title'),
     ...paragraphs(generalCautions.map(text), width, 'text'),

@@ -10,9 +10,10 @@ export function titleLine(state: State, width: number): Line {
   const variant = activeVariant(state)
   const left: Line = [
     span(' tubewright ', 'title', 4),
+    // before the names, which a narrow screen cuts
+    ...(unsaved(state) ? [span(' (not saved)', 'watch')] : []),
     span(` ${present.sign.layout.title || opened.name}`, 'title'),
     ...(variant ? [span(` / ${variant}`, 'text')] : []),
-    ...(unsaved(state) ? [span(' (not saved)', 'watch')] : []),
   ]
   const right: Line = [
     span(' '),

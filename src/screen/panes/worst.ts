@@ -42,10 +42,10 @@ export function worstLines(state: State, width: number, height: number): Line[] 
   return [head, ...rows]
 }
 
-/** the first row shown: the list stands still until the selected row would leave it */
+/** The first row shown. The list turns by pages: a row scrolled at each step would send it whole every time. */
 function scrollTo(selected: number, count: number, room: number): number {
   if (selected < 0 || count <= room) return 0
-  return Math.min(count - room, Math.max(0, selected - Math.floor(room / 2)))
+  return Math.min(count - room, selected - (selected % room))
 }
 
 function headLine(state: State, pairs: readonly PairFinding[], width: number): Line {

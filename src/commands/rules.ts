@@ -1,0 +1,57 @@
+/** `tubewright rules`: the rule sets with their clauses and sources, a check of a shop's own, and a template for one. */
+import { readFileSync, statSync } from 'node:fs'
+import { dirname, resolve } from 'node:path'
+import { type ResolvedRules, resolveRules, shippedNames } from '../rules/resolve.js'
+import { ruleTemplate } from '../rules/sets/template.js'
+import { markText, ruleSetLines } from '../view/rule-text.js'
+import { wrap } from '../view/wrap.js'
+import { argumentsOf, complain, status, UsageFault } from './common.js'
+
+const columns = 100
+const closing =
+  'A limit that nobody could source is not shipped: enter it in a rule file of your own (--template). The local code and a licensed person decide.'
+
+export function rulesCommand(args: readonly string[]): number {
+  const { values, positionals } = argumentsOf({
+    args: [...args],
+    allowPositionals: true,
+    options: { template: { type: 'boolean' } },
+  })
+  if (values.template) {
+    if (positionals.length > 0) throw new UsageFault('--template goes to stdout and takes no names')
+    process.stdout.write(ruleTemplate)
+    return status.fine
+  }
+  const { sets, missing } = resolveRules(
+    positionals.length > 0 ? positionals : shippedNames,
+    ruleFileText('.'),
+  )
+  const marks = Object.entries(markText).map(([mark, words]) => `${mark} ${words}`)
+  const lines = [
+    ...sets.flatMap((set) => [...ruleSetLines(set, columns), '']),
+    ...(sets.length > 0 ? [...wrap(`Marks: ${marks.join(', ')}.`, columns), ...wrap(closing, columns)] : []),
+  ]
+  if (lines.length > 0) process.stdout.write(`${lines.join('\n')}\n`)
+  if (missing.length > 0) complain(missing.map(({ complaint }) => complaint).join('\n\n'))
+  return missing.length > 0 ? status.somethingToFix : status.fine
+}
+
+/** larger files are no rule sets, bytes */
+const largest = 1_000_000
+
+/** Reads rule files named relative to a folder; nothing where there is no such file. */
+const ruleFileText =
+  (folder: string) =>
+  (path: string): string | undefined => {
+    try {
+      const place = resolve(folder, path)
+      const found = statSync(place)
+      return found.isFile() && found.size <= largest ? readFileSync(place, 'utf8') : undefined
+    } catch {
+      return undefined
+    }
+  }
+
+/** What the names mean that a layout gives in `rules`: shipped sets, and files beside the layout. */
+export const rulesBeside = (layoutPath: string, names: readonly string[]): ResolvedRules =>
+  resolveRules(names, ruleFileText(dirname(layoutPath)))
