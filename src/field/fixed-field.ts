@@ -21,9 +21,9 @@ export interface FieldOptions {
   readonly harmonics: number
 }
 
-export const usualField: FieldOptions = { tubeSegment: 3.5, leadSegment: 12, least: 1.1, harmonics: 6 }
+export const usualField: FieldOptions = { tubeSegment: 3.5, leadSegment: 24, least: 1.1, harmonics: 6 }
 /** A quarter of the usual lengths and twice the harmonics: slow, to see how far the usual choice is off. */
-export const fineField: FieldOptions = { tubeSegment: 0.9, leadSegment: 3, least: 0.8, harmonics: 12 }
+export const fineField: FieldOptions = { tubeSegment: 0.9, leadSegment: 6, least: 0.8, harmonics: 12 }
 
 export interface FixedField {
   readonly bodies: readonly FixedBody[]

@@ -22,6 +22,9 @@ export interface Frame {
 }
 
 export const smallest = { columns: 40, rows: 10 }
+/** nothing but a message is shown then */
+export const tooSmall = ({ columns, rows }: { readonly columns: number; readonly rows: number }): boolean =>
+  columns < smallest.columns || rows < smallest.rows
 /** below this width the panel goes under the map */
 const sideBySide = 70
 const bannerRows = 2

@@ -4,7 +4,7 @@ import SelectInput from 'ink-select-input'
 import TextInput from 'ink-text-input'
 import { type ReactNode, useSyncExternalStore } from 'react'
 import type { Theme } from '../view/theme.js'
-import { frame, type Box as Place, sheetBox, smallest } from './frame.js'
+import { frame, type Box as Place, sheetBox, smallest, tooSmall } from './frame.js'
 import { fitted, type Line, line, lineText } from './lines.js'
 import { bannerLines, footerLine, legendLine, messageLine } from './panes/edges.js'
 import { loadingLines } from './panes/loading.js'
@@ -15,6 +15,7 @@ import { asciiOnly } from './panes/words.js'
 import { worstLines } from './panes/worst.js'
 import type { Event } from './reduce.js'
 import type { State } from './state.js'
+import { textWidth } from './text-width.js'
 
 /** The state outside React: handlers never read a captured one. */
 export interface Store {
@@ -26,7 +27,7 @@ export interface Store {
 export function Inspector({ store, theme }: { readonly store: Store; readonly theme: Theme }) {
   const state = useSyncExternalStore(store.subscribe, store.state)
   const { columns, rows } = state
-  if (columns < smallest.columns || rows < smallest.rows) return <TooSmall state={state} />
+  if (tooSmall(state)) return <TooSmall state={state} />
   const boxes = frame(columns, rows, state.present.sign.wiring.circuits.length)
   const draw = (place: Place, lines: readonly Line[]) => (
     <Rows place={place} lines={state.ascii ? lines.map(asciiLine) : lines} theme={theme} />
@@ -96,8 +97,11 @@ function TooSmall({ state }: { readonly state: State }) {
   return (
     <Box width={columns} height={rows} flexDirection="column">
       <Text wrap="wrap">
-        {dialog?.kind === 'quit'
-          ? 'Not saved. s save and quit, d discard and quit, Esc stay.'
+        {dialog
+          ? messageLine(state, 120)
+              .map(({ text }) => text)
+              .join('')
+              .trim()
           : `tubewright needs ${smallest.columns}x${smallest.rows} cells; this window has ${columns}x${rows}. Make it larger, or q to leave.`}
       </Text>
       <Text wrap="wrap">HIGH VOLTAGE KILLS. Lock out first.</Text>
@@ -144,6 +148,12 @@ const Choice = ({ isSelected = false, label }: { readonly isSelected?: boolean; 
     {label}
   </Text>
 )
+
+/** Rows that a typed text takes beside its sign, with its cursor; words that wrap may take one more. */
+export function promptRows(text: string, width: number): number {
+  const rows = Math.ceil((textWidth(text) + 1) / (width - 2))
+  return rows > 1 ? rows + 1 : 1
+}
 
 /** What is open over the map. Closed: an empty box, over which the sink lays the map. */
 function Dialogs({

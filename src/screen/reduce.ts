@@ -4,6 +4,7 @@ import { aimByKey, inView, marked } from './aim.js'
 import { editChange } from './change.js'
 import { closed, dialogByKey, picked, submitted } from './dialogs.js'
 import { asFiled, editByKey, redo, say, stay, undo } from './editing.js'
+import { tooSmall } from './frame.js'
 import { type Action, actionOf } from './keys.js'
 import { lastScroll } from './panes/sheets.js'
 import { type Next, type Opened, type State, unsaved } from './state.js'
@@ -23,12 +24,14 @@ export function reduce(state: State, event: Event): Next {
     case 'key':
       return key(state, event.key)
     case 'resized':
-      return stay(inView({ ...state, columns: event.columns, rows: event.rows }))
+      return stay(resized(state, event.columns, event.rows))
     case 'solved':
       return solved(state, event.revision, event.solved)
     case 'typed':
       return stay(
-        state.dialog?.kind === 'prompt' ? { ...state, dialog: { ...state.dialog, text: event.text } } : state,
+        state.dialog?.kind === 'prompt'
+          ? { ...state, dialog: { ...state.dialog, text: event.text.slice(0, longestText) } }
+          : state,
       )
     case 'submitted':
       return state.dialog?.kind === 'prompt' ? submitted(state, state.dialog.prompt, event.text) : stay(state)
@@ -41,6 +44,16 @@ export function reduce(state: State, event: Event): Next {
         ? stay({ ...state, dialog: { kind: 'overwrite' } })
         : say(state, event.why, 'bad')
   }
+}
+
+/** of a typed text, characters: more than any name or figure takes, little enough to draw */
+const longestText = 200
+
+/** A window too small to show a dialog closes it, but not a question about unsaved work. */
+function resized(state: State, columns: number, rows: number): State {
+  const sized = inView({ ...state, columns, rows })
+  const { kind } = state.dialog ?? {}
+  return tooSmall(sized) && kind !== 'quit' && kind !== 'overwrite' ? closed(sized) : sized
 }
 
 /** The lit solution of the sign on screen: its findings, and what the edit did. Answers for older signs are dropped. */

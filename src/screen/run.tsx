@@ -2,8 +2,8 @@
 import { render } from 'ink'
 import { type LayoutFile, saveSign } from '../files.js'
 import type { Theme } from '../view/theme.js'
-import { frame, smallest } from './frame.js'
-import { Inspector, type Store } from './inspector.js'
+import { frame, tooSmall } from './frame.js'
+import { Inspector, promptRows, type Store } from './inspector.js'
 import { mapPane } from './map-pane.js'
 import { type Event, reduce } from './reduce.js'
 import type { Solving } from './solving.js'
@@ -54,8 +54,7 @@ export function runInspector(file: LayoutFile, options: RunOptions, worker: Solv
   /** The map lies over the frame, except where a dialog is open in front of it. */
   function showMap(): void {
     const { columns, rows, dialog } = state
-    const small = columns < smallest.columns || rows < smallest.rows
-    if (small || dialog?.kind === 'help' || dialog?.kind === 'cautions') {
+    if (tooSmall(state) || dialog?.kind === 'help' || dialog?.kind === 'cautions') {
       sink.setOverlay('map', undefined)
       return
     }
@@ -63,7 +62,7 @@ export function runInspector(file: LayoutFile, options: RunOptions, worker: Solv
     const grid = map.grid(state, box)
     const height =
       dialog?.kind === 'prompt'
-        ? 2
+        ? Math.min(box.height, 1 + promptRows(dialog.text, box.width))
         : dialog?.kind === 'pick'
           ? Math.min(box.height, dialog.choices.length + 1)
           : 0

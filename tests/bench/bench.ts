@@ -1,6 +1,10 @@
 /**
- * `npm run bench`: every figure that has a goal, and what it is made of. `npm run bench -- quick` leaves out the
- * memory over 10,000 keys. Times depend on the machine and on what else it does: the ratios do not. It never fails.
+ * `npm run bench`: every figure that has a goal, and what it is made of. It never fails. Times depend on the machine
+ * and on what else it does (the load is printed); bytes and ratios hardly do.
+ *
+ *   npm run bench                    everything
+ *   npm run bench -- quick           without the memory over 10,000 keys
+ *   npm run bench -- edits keys      these parts only: launch edits keys plain memory
  */
 import { execFileSync } from 'node:child_process'
 import { mkdtempSync, rmSync } from 'node:fs'
@@ -14,7 +18,10 @@ import { heading, row } from './table.js'
 import { bytesRows, launchRows, memoryRows } from './terminal-rows.js'
 
 const reference = 'layouts/reference-12-tubes.yaml'
-const quick = process.argv.includes('quick')
+const parts = ['launch', 'edits', 'keys', 'plain', 'memory'] as const
+const named = parts.filter((name) => process.argv.includes(name))
+const everything = process.argv.includes('quick') ? parts.filter((name) => name !== 'memory') : parts
+const wanted: readonly string[] = named.length > 0 ? named : everything
 
 /** The program as `npm run build` makes it, in a folder of its own. */
 function built(directory: string): string {
@@ -23,7 +30,8 @@ function built(directory: string): string {
 }
 
 /** A part that breaks is said to be broken, and the others go on. */
-async function part(title: string, rows: () => Promise<void> | void): Promise<void> {
+async function part(name: (typeof parts)[number], title: string, rows: () => Promise<void> | void) {
+  if (!wanted.includes(name)) return
   heading(title)
   try {
     await rows()
@@ -35,13 +43,13 @@ async function part(title: string, rows: () => Promise<void> | void): Promise<vo
 async function signParts(program: string, sign: BenchSign): Promise<void> {
   const { tubes, title, supplies } = sign.layout
   const name = `${title} (${tubes.length} tubes, ${supplies.length} supplies)`
-  await part(`${name}: launch`, () => launchRows(program, sign))
-  await part(`${name}: file and edits`, () => editRows(sign, fileRows(sign)))
-  await part(`${name}: keys`, async () => {
+  await part('launch', `${name}: launch`, () => launchRows(program, sign))
+  await part('edits', `${name}: file and edits`, () => editRows(sign, fileRows(sign)))
+  await part('keys', `${name}: keys`, async () => {
     screenRows(sign)
     await bytesRows(program, sign)
   })
-  await part(`${name}: against the plain way`, () => ratioRows(sign))
+  await part('plain', `${name}: against the plain way`, () => ratioRows(sign))
 }
 
 const start = performance.now()
@@ -54,7 +62,7 @@ try {
   const sign = benchSign(reference)
   await signParts(program, sign)
   await signParts(program, benchSign('layouts/open-window.yaml'))
-  if (!quick) await part(`${sign.layout.title}: memory`, () => memoryRows(program, sign))
+  await part('memory', `${sign.layout.title}: memory`, () => memoryRows(program, sign))
 } finally {
   rmSync(directory, { recursive: true, force: true })
 }

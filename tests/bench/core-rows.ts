@@ -45,11 +45,14 @@ interface EditTimes {
   readonly solution: number
   readonly findings: number
   readonly whole: number
+  /** processor time of all threads: what of `whole` other programs have not caused */
+  readonly processor: number
   readonly sum: number
 }
 
 /** One edit as the inspector works it out: the answer on paper, the lit solution, the findings. */
 function editTimes({ prepared, solve }: Bench, wiring: Wiring): EditTimes {
+  const before = process.cpuUsage()
   const start = performance.now()
   const onPaper = inspection(prepared, wiring)
   const papered = performance.now()
@@ -57,11 +60,13 @@ function editTimes({ prepared, solve }: Bench, wiring: Wiring): EditTimes {
   const lit = performance.now()
   const found = inspection(prepared, wiring, solved)
   const end = performance.now()
+  const { user, system } = process.cpuUsage(before)
   return {
     paper: papered - start,
     solution: lit - papered,
     findings: end - lit,
     whole: end - start,
+    processor: (user + system) / 1000,
     sum: inspectionSum(onPaper) + inspectionSum(found),
   }
 }
@@ -146,6 +151,10 @@ export function editRows(sign: BenchSign, preparing: number): void {
     const whole = leastTimes(times, (t) => t.whole)
     const checksum = times[0]!.reduce((sum, t) => sum + t.sum, 0)
     timeRow(`edit → complete result, ${kind}`, { ...whole, checksum }, editGoalMs)
+    timeRow(
+      '  processor time of it',
+      leastTimes(times, (t) => t.processor),
+    )
     const share = median(whole) / preparing
     row('  share of preparing the file', ratio(share), share, { most: 0.1, unit: '' })
     const parts = partRuns.map((run) => run[pass])

@@ -191,6 +191,23 @@ describe('variants', () => {
   })
 })
 
+test('a text is taken up to a length that can be drawn', () => {
+  const s = session('open-window')
+  s.keys('V')
+  s.send({ type: 'typed', text: 'x'.repeat(5000) })
+  expect(promptOf(s)?.text).toBe('x'.repeat(200))
+})
+
+test('a window that becomes too small closes a prompt, but not the question before leaving', () => {
+  const s = session('open-window')
+  s.keys('h')
+  s.send({ type: 'resized', columns: 30, rows: 8 })
+  expect(s.state().dialog).toBeUndefined()
+  s.keys('x', 'q')
+  s.send({ type: 'resized', columns: 31, rows: 8 })
+  expect(s.state().dialog).toEqual({ kind: 'quit' })
+})
+
 test('the fill is picked, and the same fill is refused in words', () => {
   const s = session('open-window', { slow: true })
   s.keys('l')
