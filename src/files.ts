@@ -13,11 +13,12 @@ import {
   statSync,
   writeFileSync,
 } from 'node:fs'
-import { basename, dirname, join } from 'node:path'
+import { basename, dirname, join, resolve } from 'node:path'
 import type { Layout } from './layout/layout.js'
 import { parseLayout } from './layout/parse.js'
 import { printable } from './layout/printable.js'
 import { problemText } from './layout/problem-text.js'
+import { type ResolvedRules, resolveRules } from './rules/resolve.js'
 import type { Sign } from './wiring/edits.js'
 import { holdsSign } from './wiring/same-sign.js'
 import { editedText } from './wiring/text.js'
@@ -160,3 +161,27 @@ function keepRights(handle: number, { uid, gid, mode }: Stats): void {
   }
   fchmodSync(handle, mode & 0o7777)
 }
+
+/** rule files larger than this are not read */
+const largestRules = 1_000_000
+
+/** Reads rule files named relative to a folder; nothing where there is no such file. */
+const ruleFileText =
+  (folder: string) =>
+  (path: string): string | undefined => {
+    try {
+      const place = resolve(folder, path)
+      const found = statSync(place)
+      return found.isFile() && found.size <= largestRules ? readFileSync(place, 'utf8') : undefined
+    } catch {
+      return undefined
+    }
+  }
+
+/** The rule sets of these names: shipped ones, and files named relative to a folder. */
+export const rulesFrom = (folder: string, names: readonly string[]): ResolvedRules =>
+  resolveRules(names, ruleFileText(folder))
+
+/** What the names mean that a layout gives in `rules`: shipped sets, and files beside the layout. */
+export const rulesBeside = (layoutPath: string, names: readonly string[]): ResolvedRules =>
+  rulesFrom(dirname(layoutPath), names)

@@ -2,6 +2,7 @@
 import { parentPort } from 'node:worker_threads'
 import { prepare, type Solved, solver } from './inspection.js'
 import type { Layout, Wiring } from './layout/layout.js'
+import { noRules } from './rules/resolve.js'
 
 export interface SolveJob {
   readonly revision: number
@@ -29,7 +30,7 @@ let ready: Ready | undefined
 parentPort?.on('message', (job: SolveJob) => {
   const start = performance.now()
   if (ready?.glass !== job.glass)
-    ready = { glass: job.glass, layout: job.layout, solve: solver(prepare(job.layout)) }
+    ready = { glass: job.glass, layout: job.layout, solve: solver(prepare(job.layout, noRules)) }
   const prepared = performance.now()
   const solved = ready.solve(job.wiring, onKnownGlass(ready.layout, job.layout))
   const answer: SolveAnswer = {

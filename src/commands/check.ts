@@ -1,5 +1,5 @@
 /** `tubewright check`: the findings of one or more layouts, for people and for scripts. */
-import { readLayoutFile } from '../files.js'
+import { readLayoutFile, rulesBeside } from '../files.js'
 import { type Inspection, inspection, prepare, solver } from '../inspection.js'
 import type { Layout } from '../layout/layout.js'
 import { printable } from '../layout/printable.js'
@@ -67,7 +67,9 @@ function checkFile(path: string, options: Options): CheckedFile {
     return { file, toFix: true }
   }
   const layout: Layout = options.rules ? { ...read.file.layout, rules: options.rules } : read.file.layout
-  const prepared = prepare(layout)
+  const rules = rulesBeside(path, layout.rules)
+  for (const { complaint: why } of rules.missing) complain(why)
+  const prepared = prepare(layout, rules)
   const found = inspection(prepared, layout.wiring, solver(prepared)(layout.wiring), options.condition)
   process.stdout.write(
     options.json

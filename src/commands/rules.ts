@@ -1,7 +1,6 @@
 /** `tubewright rules`: the rule sets with their clauses and sources, a check of a shop's own, and a template for one. */
-import { readFileSync, statSync } from 'node:fs'
-import { dirname, resolve } from 'node:path'
-import { type ResolvedRules, resolveRules, shippedNames } from '../rules/resolve.js'
+import { rulesFrom } from '../files.js'
+import { shippedNames } from '../rules/resolve.js'
 import { ruleTemplate } from '../rules/sets/template.js'
 import { markText, ruleSetLines } from '../view/rule-text.js'
 import { wrap } from '../view/wrap.js'
@@ -22,10 +21,7 @@ export function rulesCommand(args: readonly string[]): number {
     process.stdout.write(ruleTemplate)
     return status.fine
   }
-  const { sets, missing } = resolveRules(
-    positionals.length > 0 ? positionals : shippedNames,
-    ruleFileText('.'),
-  )
+  const { sets, missing } = rulesFrom('.', positionals.length > 0 ? positionals : shippedNames)
   const marks = Object.entries(markText).map(([mark, words]) => `${mark} ${words}`)
   const lines = [
     ...sets.flatMap((set) => [...ruleSetLines(set, columns), '']),
@@ -35,23 +31,3 @@ export function rulesCommand(args: readonly string[]): number {
   if (missing.length > 0) complain(missing.map(({ complaint }) => complaint).join('\n\n'))
   return missing.length > 0 ? status.somethingToFix : status.fine
 }
-
-/** larger files are no rule sets, bytes */
-const largest = 1_000_000
-
-/** Reads rule files named relative to a folder; nothing where there is no such file. */
-const ruleFileText =
-  (folder: string) =>
-  (path: string): string | undefined => {
-    try {
-      const place = resolve(folder, path)
-      const found = statSync(place)
-      return found.isFile() && found.size <= largest ? readFileSync(place, 'utf8') : undefined
-    } catch {
-      return undefined
-    }
-  }
-
-/** What the names mean that a layout gives in `rules`: shipped sets, and files beside the layout. */
-export const rulesBeside = (layoutPath: string, names: readonly string[]): ResolvedRules =>
-  resolveRules(names, ruleFileText(dirname(layoutPath)))

@@ -44,3 +44,20 @@ export interface BarBody extends ConductorCommon {
 export type Body = TubeBody | LeadBody | BarBody
 /** What the wiring does not move. */
 export type FixedBody = TubeBody | BarBody
+
+/**
+ * A plate, or an upright wall along a path: thin sheet metal, one conductor of flat rectangles
+ * (geometry/rectangles.ts). Not a `Body`: it has no centre-line.
+ */
+export interface SheetBody {
+  readonly kind: 'sheet'
+  /** the id */
+  readonly name: string
+  readonly grounded: boolean
+  /** as drawn: what distances are measured to */
+  readonly rectangles: Float64Array
+  /** the same with the short pieces of a curved wall merged into chords: what carries charge */
+  readonly chords: Float64Array
+  /** of each chord: is its start and end along u, and along v, an edge of the sheet (1) or joined to the next (0) */
+  readonly edges: Uint8Array
+}

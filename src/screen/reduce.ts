@@ -68,6 +68,8 @@ function solved(state: State, revision: number, answer: Solved): Next {
 function key(state: State, name: string): Next {
   if (name === 'ctrl-z') return { state, effects: [{ do: 'suspend' }] }
   if (state.dialog) return dialogKey(state, name)
+  // what cannot be seen is not changed
+  if (tooSmall(state) && actionOf(name) !== 'quit') return stay(state)
   if (name === 'escape') return stepBack(state)
   if (name === 'ctrl-s') return act(state, 'save')
   const action = actionOf(name)

@@ -1,5 +1,5 @@
 /** The state that the inspector opens with: the file's wiring on paper, its solution asked for. */
-import type { LayoutFile } from '../files.js'
+import { type LayoutFile, rulesBeside } from '../files.js'
 import { inspection, prepare } from '../inspection.js'
 import { defaultGlyphs } from '../view/map.js'
 import type { Theme } from '../view/theme.js'
@@ -11,7 +11,7 @@ export function initialState(
   columns: number,
   rows: number,
 ): State {
-  const prepared = prepare(file.layout)
+  const prepared = prepare(file.layout, rulesBeside(file.path, file.layout.rules))
   const sign = { layout: file.layout, wiring: file.layout.wiring }
   const found = inspection(prepared, sign.wiring)
   return {

@@ -1,13 +1,15 @@
 /** The built program: saving, every way out, other terminals, other sizes. */
 import { copyFileSync, readFileSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
-import { afterEach, describe, expect, test } from 'vitest'
+import { afterEach, describe, expect, test, vi } from 'vitest'
 import { edit, seen, settled, shippedProgram, solvedScreen, temporary } from './inspector-program.js'
 import { closeTerminals, keys, openTerminal, scriptCommand, underShell } from './terminal.js'
 
 const program = shippedProgram()
 const folder = temporary()
 afterEach(closeTerminals)
+// many starts and solutions, on whatever machine
+vi.setConfig({ testTimeout: 60_000 })
 
 /** a copy that may be written to */
 function copied(name: string): string {
@@ -123,12 +125,12 @@ test('a storm of sizes ends with the screen of the last one; below 40x10 there i
   const before = seen(terminal)
   for (let i = 0; i < 40; i++) {
     terminal.resize(38 + ((i * 37) % 90), 8 + ((i * 13) % 30))
-    if (i % 5 === 0) terminal.send('i')
+    if (i % 5 === 0) terminal.send(keys.tab)
   }
   terminal.resize(39, 9)
   await terminal.sees('tubewright needs 40x10')
   terminal.resize(80, 24)
-  terminal.send('I'.repeat(8))
+  terminal.send(keys.home)
   await terminal.until(() => seen(terminal) === before, 'never the screen from before')
   expect(terminal.dump()).not.toContain('internal error')
 })

@@ -303,38 +303,53 @@ describe('a shop file', () => {
       { level: 'fix', missing: [{ name: 'gone.yaml' }] },
     ])
   })
-  test('a fixed distance is judged at the narrowest place although another place has more voltage for its gap', () => {
-    // B comes near A only at its right end, where the two are at almost one potential
-    const layout = {
-      ...twoTubes({ gap: 30, kv: 6 }),
-    }
-    const bent = {
-      ...layout,
-      tubes: layout.tubes.map((t) =>
-        t.id === 'B'
-          ? {
-              ...t,
-              path: [
-                { x: 1, y: 1.042 },
-                { x: 1.8, y: 1.042 },
-                { x: 1.98, y: 1.017 },
-              ],
-            }
-          : t,
-      ),
-    }
-    const found = onPaper(
-      bent,
-      ['shop.yaml'],
-      shopText(
-        '- {clause: a, between: [tube], distance_mm: 15}\n- {clause: b, between: [tube], table_kv_mm: [[0, 0], [3, 20]]}',
-      ),
+  /** B bent to a path in metres, A straight from (1, 1) to (2, 1); both electrodes of B stay 30 mm off A */
+  const bent = (...path: [number, number][]) => {
+    const layout = twoTubes({ gap: 30, kv: 6, boots: false })
+    const tubes = layout.tubes.map((t) =>
+      t.id === 'B' ? { ...t, path: path.map(([x, y]) => ({ x, y })) } : t,
     )
-    const pairs = found.pairs.filter((p) => p.a.part === 'A' && p.b.part === 'B')
-    expect(pairs.map((p) => p.rules.filter((r) => !r.ok).map((r) => r.clause))).toEqual([['b'], ['a']])
-    expect(pairs[0]?.gap).toBeCloseTo(0.03, 4)
-    expect(pairs[1]?.gap).toBeLessThan(0.006)
-    expect(new Set(found.pairs.map((p) => p.key)).size).toBe(found.pairs.length)
+    return { ...layout, tubes }
+  }
+  const brokenBetween = (
+    layout: ReturnType<typeof bent>,
+    rules: readonly string[],
+    text = shopText('- {clause: x}'),
+  ) =>
+    onPaper(layout, rules, text)
+      .pairs.filter((p) => p.a.part === 'A' && p.b.part === 'B')
+      .map((p) => ({
+        key: p.key,
+        gap: p.gap * 1000,
+        broken: p.rules.filter((r) => !r.ok).map((r) => r.clause),
+      }))
+      .sort((p, q) => (p.key < q.key ? -1 : 1))
+  test('a fixed distance is judged at the narrowest place although another place has more voltage for its gap', () => {
+    // nearest A towards the right, where the two are almost at one potential, and still on glass: 8 mm at 1.9 m
+    const layout = bent([1, 1.042], [1.9, 1.02], [2, 1.042])
+    const rules = '- {clause: a, between: [glass], distance_mm: 15}'
+    expect(brokenBetween(layout, ['shop.yaml'], shopText(rules))).toEqual([
+      { key: 'A|B|0', gap: expect.closeTo(30, 1), broken: [] },
+      { key: 'A|B|0|1', gap: expect.closeTo(8, 1), broken: ['a'] },
+    ])
+  })
+  test('what holds at electrodes only is judged there although glass has more voltage for its gap', () => {
+    // 4 mm off A 300 mm behind the electrodes, which are 12 mm apart with the whole no-load voltage between them
+    const layout = bent([1, 1.024], [1.3, 1.016], [2, 1.05])
+    // table F.8 [S2] on 1.25 × peak: 4 kV rms (7.07 kV) asks for 9.6 mm, 8 kV (14.14 kV) for 23.3 mm
+    const at = (kv: number) =>
+      brokenBetween(
+        { ...layout, supplies: layout.supplies.map((s) => ({ ...s, noLoadVoltage: kv * 1000 })) },
+        ['iec-60664-1'],
+      )
+    expect(at(4).flatMap((p) => p.broken)).toEqual([])
+    const [glass, electrodes] = at(8)
+    expect(glass).toEqual({ key: 'A|B|0', gap: expect.closeTo(4, 1), broken: [] })
+    expect(electrodes).toEqual({
+      key: 'A|B|0|1',
+      gap: expect.closeTo(12, 1),
+      broken: ['table F.8, above 1 kHz'],
+    })
   })
 })
 
@@ -386,6 +401,13 @@ describe('which condition counts', () => {
       severity: expect.closeTo(2000 / 1500, 4),
     })
     expect(pair).toMatchObject({ verdict: 'fix', judgedOn: 'nameplate' })
+  })
+  test('on core-and-coil every half-cycle relights: the air is judged on the no-load peak as well', () => {
+    const dim = { nominal: scaled(0.1), band: [] }
+    const supplies = context.supplies.map((s) => ({ ...s, type: 'core-and-coil' as const }))
+    const [electronic, transformer] = [judged(dim), judged(dim, { supplies })]
+    expect(transformer.air.peak / electronic.air.peak).toBeCloseTo(10, 6)
+    expect(ruleOf(transformer, 'thumb')?.severity).toBe(ruleOf(electronic, 'thumb')?.severity)
   })
   test('code sets go by nameplate whatever burns', () => {
     const sets = resolveRules(['iec-60664-1']).sets

@@ -200,10 +200,10 @@ test('a text is taken up to a length that can be drawn', () => {
 
 test('a window that becomes too small closes a prompt, but not the question before leaving', () => {
   const s = session('open-window')
-  s.keys('h')
+  s.keys('x', 'h')
   s.send({ type: 'resized', columns: 30, rows: 8 })
   expect(s.state().dialog).toBeUndefined()
-  s.keys('x', 'q')
+  s.keys('q')
   s.send({ type: 'resized', columns: 31, rows: 8 })
   expect(s.state().dialog).toEqual({ kind: 'quit' })
 })

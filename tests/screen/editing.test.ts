@@ -197,3 +197,16 @@ test('a wiring edited back to what the file says is not unsaved', () => {
   s.keys('q')
   expect(s.effects()).toEqual([{ do: 'quit' }])
 })
+
+test('changed glass and a kept variant are unsaved work too', () => {
+  const glass = session('open-window', { slow: true })
+  glass.keys('l')
+  glass.send({ type: 'picked', value: 'argon-mercury' })
+  const variant = session('open-window', { slow: true })
+  variant.keys('V')
+  variant.type('mine')
+  for (const s of [glass, variant]) {
+    s.keys('q')
+    expect(s.state().dialog).toEqual({ kind: 'quit' })
+  }
+})

@@ -152,10 +152,15 @@ test('a window below 40x10 gets a plain message, and the question before leaving
     [20, 5],
     [12, 3],
   ] as const) {
-    const s = session('open-window', { columns, rows })
+    const s = session('open-window')
+    s.keys('x')
+    s.send({ type: 'resized', columns, rows })
     const said = () => drawn(s).join(' ').replace(/\s+/g, ' ')
     expect(said()).toContain('tubewright needs 40x10')
-    s.keys('x', 'q')
+    const before = s.state()
+    s.keys('f', 'h', '?', 'u', 'i', 'tab')
+    expect(s.state()).toBe(before)
+    s.keys('q')
     expect(said()).toContain('Not saved.')
     for (const line of drawn(s)) expect(textWidth(line)).toBeLessThanOrEqual(columns)
   }
