@@ -11,11 +11,14 @@ import { type LeadField, leadField } from './field/lead-field.js'
 import { nodeCapacitance } from './field/node-capacitance.js'
 import { fixedBodies } from './geometry/bodies.js'
 import { fixedRuns, leadLeadRuns, leadRuns, withLeadIndex } from './geometry/close-runs.js'
-import type { FixedBody, LeadBody, TubeBody } from './geometry/conductors.js'
+import type { FixedBody, LeadBody, SheetBody, TubeBody } from './geometry/conductors.js'
 import { leadBody } from './geometry/leads.js'
-import { type FixedNodes, fixedNodes } from './geometry/nodes.js'
+import { type FixedNodes, fixedNodes, nodeSpacing } from './geometry/nodes.js'
 import type { CloseRun } from './geometry/runs.js'
+import { fixedSheetRuns, leadSheetRuns } from './geometry/sheet-runs.js'
+import { sheetBodies } from './geometry/sheets.js'
 import type { EndName, Layout, Wiring } from './layout/layout.js'
+import { brokenStrings } from './network/broken.js'
 import { calibrations } from './network/calibration.js'
 import { solveBand } from './network/lit.js'
 import { nameplateField } from './network/nameplate.js'
@@ -26,7 +29,7 @@ import { type StrayShares, strayShares } from './network/stray.js'
 import { noLoadVoltage } from './network/supplies.js'
 import { cautions } from './rules/cautions.js'
 import { circuitFindings, supplyOf } from './rules/circuits.js'
-import type { Caution, CircuitFinding, FloatingFinding, PairFinding } from './rules/findings.js'
+import type { Caution, CircuitFinding, Condition, FloatingFinding, PairFinding } from './rules/findings.js'
 import { type LitFields, type PairContext, pairFindings } from './rules/pairs.js'
 import { type ResolvedRules, resolveRules } from './rules/resolve.js'
 import { type CircuitLead, circuitLeads } from './wiring/leads.js'
@@ -41,6 +44,8 @@ export interface Prepared {
   readonly layout: Layout
   readonly bodies: readonly FixedBody[]
   readonly tubes: readonly TubeBody[]
+  /** plates and upright walls */
+  readonly sheets: readonly SheetBody[]
   readonly nodes: FixedNodes
   readonly runs: readonly CloseRun[]
   /** memo of leads and of where pairs of leads pass each other, by name */
@@ -53,12 +58,14 @@ export interface Prepared {
 /** `rules`: what `layout.rules` names, with the files beside it; without it the shipped sets of those names. */
 export function prepare(layout: Layout, rules: ResolvedRules = resolveRules(layout.rules)): Prepared {
   const bodies = fixedBodies(layout)
+  const sheets = sheetBodies(layout)
   return {
     layout,
     bodies,
     tubes: bodies.filter((body) => body.kind === 'tube'),
-    nodes: fixedNodes(bodies, layout.face.metal === 'floating'),
-    runs: fixedRuns(bodies, layout),
+    sheets,
+    nodes: fixedNodes(bodies, layout.face.metal === 'floating', nodeSpacing, sheets.length),
+    runs: [...fixedRuns(bodies, layout), ...fixedSheetRuns(bodies, sheets)],
     leads: new Map(),
     crossings: new Map(),
     rules,
@@ -73,6 +80,8 @@ export interface Solved {
   readonly floating: readonly FloatingFinding[]
   /** supplies whose string is lit by the nominal law and not at the upper end of its band */
   readonly mayGoDark: readonly string[]
+  /** parts drawn so far into others that capacitances there are rough */
+  readonly strained: readonly string[]
 }
 
 /** The same for an edited layout: what did not move is kept. */
@@ -88,12 +97,15 @@ export function preparedAgain(prepared: Prepared, layout: Layout): Prepared {
 }
 
 /** A lead by its two ends, from the memo. */
-function placedLead({ layout, bodies, leads }: Prepared, between: readonly [EndName, EndName]): PlacedLead {
+function placedLead(
+  { layout, bodies, sheets, leads }: Prepared,
+  between: readonly [EndName, EndName],
+): PlacedLead {
   const name = between.join(' ')
   const known = leads.get(name)
   if (known) return known
   const body = leadBody(layout, between)
-  const placed = { body, runs: leadRuns(body, bodies, layout) }
+  const placed = { body, runs: [...leadRuns(body, bodies, layout), ...leadSheetRuns(body, sheets)] }
   leads.set(name, placed)
   return placed
 }
@@ -117,6 +129,16 @@ export interface SolvedNetwork {
   readonly net: Network
   readonly nominal: LitState
   readonly others: readonly LitState[]
+  /** parts drawn so far into others that capacitances there are rough */
+  readonly strained: readonly string[]
+}
+
+/** The leads of the file's own wiring and all routes it draws: where leads will run. */
+function usualLeads(prepared: Prepared): LeadBody[] {
+  const { routes, wiring } = prepared.layout
+  const drawn = routes.map(({ between }) => between)
+  const wired = circuitLeads(wiring).map(({ between }) => between)
+  return [...wired, ...drawn].map((between) => placedLead(prepared, between).body)
 }
 
 /** Prepares the capacitances of the glass (the slow part) and gives the function that solves the network of a wiring. */
@@ -124,9 +146,11 @@ export function networkSolver(
   prepared: Prepared,
   options: FieldOptions = usualField,
 ): (wiring: Wiring, layout?: Layout) => SolvedNetwork {
-  const { bodies, tubes, nodes } = prepared
-  const bars = bodies.filter((body) => body.kind === 'bar')
-  const fixed = prepareField(bodies, nodes, prepared.layout.face, options)
+  const { bodies, tubes, sheets, nodes } = prepared
+  const metal = [...bodies.filter((body) => body.kind === 'bar'), ...sheets]
+  const near = sheets.length > 0 ? usualLeads(prepared) : []
+  const fixed = prepareField(bodies, nodes, prepared.layout.face, options, sheets, near)
+  const { strained } = fixed
   const known = new WeakMap<LeadBody, LeadField>()
   const fieldOf = (body: LeadBody): LeadField => {
     const field = known.get(body) ?? leadField(fixed, body)
@@ -138,8 +162,8 @@ export function networkSolver(
     now = preparedAgain(now, layout)
     const leads = circuitLeads(wiring).map(({ between }) => placedLead(now, between).body)
     const capacitance = nodeCapacitance(fixed, leads.map(fieldOf))
-    const net = network(layout, wiring, tubes, bars, nodes, capacitance)
-    return { net, ...solveBand(net, calibrations(layout, wiring, net)) }
+    const net = network(layout, wiring, tubes, metal, nodes, capacitance)
+    return { net, strained, ...solveBand(net, calibrations(layout, wiring, net)) }
   }
 }
 
@@ -150,11 +174,12 @@ export function solver(
 ): (wiring: Wiring, layout?: Layout) => Solved {
   const solveNetwork = networkSolver(prepared, options)
   return (wiring, layout = prepared.layout) => {
-    const { net, nominal, others } = solveNetwork(wiring, layout)
+    const { net, nominal, others, strained } = solveNetwork(wiring, layout)
     const noLoads = wiring.circuits.map((circuit) => noLoadVoltage(supplyOf(layout, circuit)))
     return {
       ...litFields(nominal, others, noLoads),
       outcomes: nominal.circuits,
+      strained,
       ...strayShares(net, nominal),
     }
   }
@@ -203,7 +228,7 @@ export function inspection(
   prepared: Prepared,
   wiring: Wiring,
   solved?: Solved,
-  condition: 'lit' | 'nameplate' = 'lit',
+  condition: Condition = 'lit',
 ): Inspection {
   const { layout, bodies, tubes, nodes } = prepared
   const places = circuitLeads(wiring)
@@ -249,17 +274,18 @@ export function inspection(
       floating,
       leadRuns: runs,
       mayGoDark: solved?.mayGoDark ?? [],
+      strained: solved?.strained ?? [],
     }),
   }
 }
 
 function pairContext(
-  { layout, bodies, tubes, nodes, rules }: Prepared,
+  { layout, bodies, tubes, sheets, nodes, rules }: Prepared,
   wiring: Wiring,
   places: readonly CircuitLead[],
   leads: readonly LeadBody[],
   solved: Solved | undefined,
-  condition: 'lit' | 'nameplate',
+  condition: Condition,
 ): PairContext {
   const ids = tubes.map((tube) => tube.name)
   const supplies = wiring.circuits.map((circuit) => supplyOf(layout, circuit))
@@ -267,6 +293,7 @@ function pairContext(
     layout,
     ruleSets: rules.sets,
     bodies,
+    sheets,
     leads,
     circuitOfLead: places.map((place) => place.circuit),
     circuitOfTube: ids.map((id) => wiring.circuits.findIndex((c) => c.string.some((e) => e.tube === id))),
@@ -274,6 +301,7 @@ function pairContext(
     supplies,
     probe: probe(wiring, ids, nodes),
     nameplate: nameplateField(layout, wiring, tubes, nodes, leads.length),
+    broken: brokenStrings(layout, wiring, tubes, nodes, leads.length),
     condition,
     ...(solved && { lit: solved.lit }),
     unlit: new Set(solved?.outcomes.flatMap((outcome, i) => (outcome.lit ? [] : [i]))),

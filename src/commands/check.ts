@@ -6,6 +6,7 @@ import { printable } from '../layout/printable.js'
 import { checkJson } from '../report/check-json.js'
 import { type CheckedFile, checkSummary } from '../report/check-summary.js'
 import { checkText } from '../report/check-text.js'
+import { explained } from '../report/explained.js'
 import { argumentsOf, complain, status, UsageFault } from './common.js'
 
 interface Options {
@@ -79,8 +80,8 @@ function checkFile(path: string, options: Options): CheckedFile {
   return { file, toFix: somethingToFix(found), inspection: found }
 }
 
-/** A pair, a dark or overloaded circuit, a part that could not be modelled, a rule set that is missing. */
+/** A pair, a dark or overloaded circuit, a rule set that is missing. */
 export const somethingToFix = ({ pairs, circuits, cautions }: Inspection): boolean =>
   pairs.some((p) => p.verdict === 'fix') ||
   circuits.some((c) => c.verdict === 'fix') ||
-  cautions.some((c) => c.code === 'not-modelled' || c.code === 'rules-missing')
+  cautions.some((c) => c.code === 'rules-missing')

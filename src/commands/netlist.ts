@@ -30,15 +30,13 @@ function writeDeck({ name, layout }: LayoutFile, asked: string | undefined): num
   const source = sourceOf(layout, asked)
   const prepared = prepare(layout)
   const solved = networkSolver(prepared)(layout.wiring)
-  const notes = notModelled(layout)
   const dark = solved.nominal.circuits.filter((c) => !c.lit)
   for (const circuit of dark) complain(darkText(layout, circuit))
-  for (const note of notes) complain(note)
-  const deck = deckOf(name, prepared, solved, source, notes)
+  const deck = deckOf(name, prepared, solved, source)
   if (deck === undefined)
     complain(`${layout.wiring.circuits[source]!.supply}: no lit solution, so there is no deck to write.`)
   else process.stdout.write(deck)
-  return dark.length > 0 || notes.length > 0 ? status.somethingToFix : status.fine
+  return dark.length > 0 ? status.somethingToFix : status.fine
 }
 
 function sourceOf({ wiring }: Layout, asked: string | undefined): number {
@@ -53,22 +51,19 @@ function sourceOf({ wiring }: Layout, asked: string | undefined): number {
 export function deckOf(
   file: string,
   { layout, nodes }: Prepared,
-  { net, nominal }: SolvedNetwork,
+  { net, nominal, strained }: SolvedNetwork,
   source: number,
-  notes: readonly string[],
 ): string | undefined {
   const tubes = layout.tubes.map(({ id }) => id)
-  const bars = layout.metal.flatMap((m) => (m.kind === 'bar' ? [m.id] : []))
+  const ids = (sheets: boolean) => layout.metal.flatMap((m) => ((m.kind !== 'bar') === sheets ? [m.id] : []))
+  const metal = [...ids(false), ...ids(true)]
+  const notes =
+    strained.length > 0
+      ? [`Drawn into other parts, so capacitances there are rough: ${strained.join(', ')}.`]
+      : []
   const leads = circuitLeads(layout.wiring).map(({ between }) => between)
-  const names = nodeNames(nodes, { tubes, bars, leads })
+  const names = nodeNames(nodes, { tubes, metal, leads })
   return spiceDeck({ title: layout.title, file, network: net, state: nominal, source, names, tubes, notes })
-}
-
-function notModelled({ metal }: Layout): string[] {
-  const sheets = metal.filter((m) => m.kind !== 'bar').map((m) => m.id)
-  return sheets.length > 0
-    ? [`Not modelled, so their capacitance is missing: ${sheets.join(', ')} (plate or wall).`]
-    : []
 }
 
 function darkText({ tubes }: Layout, { supply, ...circuit }: CircuitOutcome): string {

@@ -1,6 +1,6 @@
 /**
- * Coefficients of potential of one set of segments, over K = 1/4πε0 (1/m), with the harmonics of close pairs
- * eliminated. Below, q are total charges (one a segment) and h the harmonics (field/harmonics.ts):
+ * Coefficients of potential of one set of segments, with the patches of sheets behind them, over K = 1/4πε0 (1/m), with the harmonics of close pairs
+ * eliminated. Below, q are total charges (one a segment, then one a patch) and h the harmonics (field/harmonics.ts):
  *
  *   P ← P_qq − P_qh P_hh⁻¹ P_hq
  *
@@ -8,6 +8,7 @@
  * really close; its rows are ordered so that such neighbours stand together.
  */
 import { lineStride } from '../geometry/closest-approach.js'
+import { rectangleStride } from '../geometry/rectangles.js'
 import type { Segments } from '../geometry/segments.js'
 import { type Couplings, couplingRows } from './couplings.js'
 import { eliminate } from './eliminate.js'
@@ -30,10 +31,24 @@ import {
   type NearPair,
   nearPair,
 } from './near-pairs.js'
+import {
+  barePatchCross,
+  couplePatches,
+  type PatchCross,
+  type PatchSet,
+  patchPotential,
+  raiseOrders,
+} from './patch-system.js'
+import { mirroredPatches, noPatches, type Patches } from './patches.js'
+import { selfRectangle } from './rectangle-mean.js'
 import { bandOrder, type Skyline, skyline } from './skyline.js'
 
 export interface ChargeSystem {
   readonly segments: Segments
+  /** the patches of sheets */
+  readonly sheets: PatchSet
+  /** number of total charges: segments, then patches */
+  readonly charges: number
   /** mirror images in a metal face; absent without one */
   readonly images?: Segments
   /** highest harmonic of each segment, and the row of its first in P_hh: rows c_1, s_1, c_2, … follow */
@@ -43,7 +58,9 @@ export interface ChargeSystem {
   /** first row of each component of P_hh, and the end */
   readonly components: Int32Array
   readonly couplings: Couplings
-  /** the reduced matrix, count × count, both triangles */
+  /** what each charge has with itself alone */
+  readonly alone: Float64Array
+  /** the reduced matrix, charges × charges, both triangles */
   readonly potential: Float64Array
 }
 
@@ -59,9 +76,10 @@ export function shiftedMean(a: Segments, b: Segments, pair: NearPair): number {
 function bareSystem(
   segments: Segments,
   images: Segments | undefined,
+  charges: number,
 ): { potential: Float64Array; near: NearPair[]; settled: Uint8Array } {
   const { count, lines, radius, body, side } = segments
-  const potential = new Float64Array(count * count)
+  const potential = new Float64Array(charges * charges)
   const near: NearPair[] = []
   const settled = new Uint8Array(count * count)
   const continued = (i: number, j: number): number =>
@@ -84,11 +102,34 @@ function bareSystem(
         if (image) settled[i * count + j]! |= imageSettled
         mean -= lineMean(lines, i, images.lines, j, 0)
       }
-      potential[i * count + j] = mean
-      potential[j * count + i] = mean
+      potential[i * charges + j] = mean
+      potential[j * charges + i] = mean
     }
   }
   return { potential, near, settled }
+}
+
+/** Puts the coefficients of patches behind those of the segments. */
+function addPatches(potential: Float64Array, count: number, between: Float64Array, cross: PatchCross): void {
+  const patches = Math.sqrt(between.length)
+  const charges = count + patches
+  for (let i = 0; i < count; i++)
+    for (let j = 0; j < patches; j++) {
+      potential[i * charges + count + j] = cross.charges[i * patches + j]!
+      potential[(count + j) * charges + i] = cross.charges[i * patches + j]!
+    }
+  for (let i = 0; i < patches; i++)
+    potential.set(between.subarray(i * patches, (i + 1) * patches), (count + i) * charges + count)
+}
+
+/** What each segment and each patch has with itself alone, without images. */
+function aloneOf({ lines, radius }: Segments, { rectangles, count }: Patches): Float64Array {
+  const segments = Array.from(radius, (a, i) => selfMean(lines[lineStride * i + 6]!, a))
+  const patches = Array.from({ length: count }, (_, i) => {
+    const q = i * rectangleStride
+    return selfRectangle(rectangles[q + 9]!, rectangles[q + 10]!)
+  })
+  return Float64Array.from([...segments, ...patches])
 }
 
 /** Highest harmonic of every segment: what its near pairs need, at least `least`. */
@@ -144,18 +185,24 @@ function layOut(
 
 const block = new Float64Array(64 * 64)
 
-/** The system of these segments. `least`: harmonics every segment has anyway; `most`: the highest any may get. */
+/** The system of these segments and patches. `least`: harmonics every segment has anyway; `most`: the highest any may get. */
 export function chargeSystem(
   segments: Segments,
   plane: boolean,
   least: Int32Array,
   most: number,
+  patches: Patches = noPatches,
 ): ChargeSystem {
   const images = plane ? mirrored(segments) : undefined
-  const { potential, near, settled } = bareSystem(segments, images)
+  const sheets: PatchSet = { patches, ...(plane && { images: mirroredPatches(patches) }) }
+  const charges = segments.count + patches.count
+  const { potential, near, settled } = bareSystem(segments, images, charges)
+  const cross = barePatchCross(segments, sheets)
+  addPatches(potential, segments.count, patchPotential(sheets), cross)
   const orders = segmentOrders(segments, near, least, most)
+  raiseOrders(orders, segments, cross, most)
   const { rows, hh, components } = layOut(segments, near, orders)
-  const { add: couple, finished } = couplingRows(hh.count, segments.count)
+  const { add: couple, finished } = couplingRows(hh.count, charges)
   for (let i = 0; i < segments.count; i++) {
     for (let m = 1; m <= orders[i]!; m++) {
       const self = harmonicSelf(m, segments.lines[lineStride * i + 6]!)
@@ -190,9 +237,15 @@ export function chargeSystem(
     couple(rows[i]!, j, cosine)
     couple(rows[i]! + 1, j, sine)
   })
+  couplePatches(segments, orders, sheets, cross, dipoleReach, (i, h, j, value) => {
+    couple(rows[i]! + h, segments.count + j, value)
+  })
   const couplings = finished()
   const system = {
     segments,
+    sheets,
+    charges,
+    alone: aloneOf(segments, patches),
     ...(images && { images }),
     orders,
     rows,

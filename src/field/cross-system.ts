@@ -69,7 +69,7 @@ export interface Extra {
 }
 
 export interface CrossHarmonics {
-  /** harmonics of a (rows of its system) × charges of b */
+  /** harmonics of a (rows of its system) × charges of b; those of patches are not filled in */
   readonly toCharges: Float64Array
   /** (charges of a, then harmonics of a) × (harmonics of b, then extras), row length `width` */
   readonly toHarmonics: Float64Array
@@ -113,7 +113,7 @@ export function crossHarmonics(
   const extras = extraHarmonics(a.segments, b, near, most)
   let width = b.hh.count
   for (const { from, to } of extras.values()) width += 2 * (to - from + 1)
-  const toCharges = new Float64Array(a.hh.count * b.segments.count)
+  const toCharges = new Float64Array(a.hh.count * b.charges)
   const toHarmonics = new Float64Array((a.segments.count + a.hh.count) * width)
   const touchedRows = new Set<number>()
   for (const { i, j, axes, image, shift } of near) {
@@ -125,7 +125,7 @@ export function crossHarmonics(
     const wide = 2 * mj + 1
     const rowA = a.rows[i]!
     for (let u = 0; u <= 2 * mi; u++) {
-      if (u > 0) toCharges[(rowA + u - 1) * b.segments.count + j]! += sign * block[u * wide]!
+      if (u > 0) toCharges[(rowA + u - 1) * b.charges + j]! += sign * block[u * wide]!
       const row = (u === 0 ? i : a.segments.count + rowA + u - 1) * width
       for (let v = 1; v <= 2 * mj; v++) {
         const own = v <= 2 * b.orders[j]!
@@ -149,8 +149,8 @@ export function crossHarmonics(
     },
   )
   dipoles(a, b, leadDipoleReach, done, (i, j, cosine, sine) => {
-    toCharges[a.rows[i]! * count + j]! += cosine
-    toCharges[(a.rows[i]! + 1) * count + j]! += sine
+    toCharges[a.rows[i]! * b.charges + j]! += cosine
+    toCharges[(a.rows[i]! + 1) * b.charges + j]! += sine
   })
   return { toCharges, toHarmonics, width, extras, components: componentsOf(b, touchedRows) }
 }

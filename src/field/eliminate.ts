@@ -1,10 +1,7 @@
 /** Takes the harmonics out of the coefficients between charges. */
-import { lineStride } from '../geometry/closest-approach.js'
-import type { Segments } from '../geometry/segments.js'
 import { rowGram } from '../math/dense.js'
 import type { ChargeSystem } from './charge-system.js'
 import { denseColumns } from './couplings.js'
-import { selfMean } from './line-mean.js'
 import { factorSkyline, type Skyline, solveSkyline } from './skyline.js'
 
 /** the harmonics of one component may take this share off the coefficient of a charge with itself (touching: 0.7) */
@@ -15,7 +12,7 @@ const mostTaken = 0.85
  * since pairs are moved apart one by one: its coefficients between different unknowns are then halved until it is sound.
  */
 function solvedComponent(
-  { hh, couplings, potential, segments }: Reducible,
+  { hh, couplings, potential, alone }: Reducible,
   from: number,
   to: number,
 ): { touched: Int32Array; columns: Float64Array } {
@@ -27,13 +24,7 @@ function solvedComponent(
     const { touched, columns } = denseColumns(couplings, from, to)
     if (
       sound &&
-      eachSolved(
-        hh,
-        from,
-        to,
-        columns,
-        (k, taken) => taken < mostTaken * own(potential, segments, touched[k]!),
-      )
+      eachSolved(hh, from, to, columns, (k, taken) => taken < mostTaken * own(potential, alone, touched[k]!))
     )
       return { touched, columns }
     for (let r = from; r < to; r++) {
@@ -45,11 +36,11 @@ function solvedComponent(
   }
 }
 
-type Reducible = Pick<ChargeSystem, 'hh' | 'components' | 'couplings' | 'potential' | 'segments'>
+type Reducible = Pick<ChargeSystem, 'hh' | 'components' | 'couplings' | 'potential' | 'alone'>
 
 /** What a charge has with itself by now, or a fifth of what it has alone. */
-const own = (potential: Float64Array, { lines, radius }: Segments, i: number): number =>
-  Math.max(potential[i * (radius.length + 1)]!, 0.2 * selfMean(lines[lineStride * i + 6]!, radius[i]!))
+const own = (potential: Float64Array, alone: Float64Array, i: number): number =>
+  Math.max(potential[i * (alone.length + 1)]!, 0.2 * alone[i]!)
 
 /** Solves row after row while what it takes off (its square) is accepted. */
 function eachSolved(
@@ -72,7 +63,7 @@ function eachSolved(
 /** P ← P − P_qh P_hh⁻¹ P_hq, one component after the other. */
 export function eliminate(system: Reducible): void {
   const { components, potential } = system
-  const { count } = system.segments
+  const count = system.alone.length
   for (let c = 0; c + 1 < components.length; c++) {
     const from = components[c]!
     const to = components[c + 1]!

@@ -1,5 +1,5 @@
 /** What does not depend on the wiring: glass, bars and the face, with their coefficients factored. */
-import type { FixedBody } from '../geometry/conductors.js'
+import type { FixedBody, LeadBody, SheetBody } from '../geometry/conductors.js'
 import type { FixedNodes } from '../geometry/nodes.js'
 import { type CutRules, crossingWindows, cutPlaces, type Segments, segmentsAt } from '../geometry/segments.js'
 import type { Face } from '../layout/layout.js'
@@ -9,6 +9,7 @@ import { definiteFactor } from './definite.js'
 import { plateCapacitance } from './face-plate.js'
 import type { LeadField } from './lead-field.js'
 import type { LeadPair } from './node-capacitance.js'
+import { patchesOf, sources } from './patches.js'
 
 /** How finely the field is resolved. */
 export interface FieldOptions {
@@ -19,11 +20,28 @@ export interface FieldOptions {
   readonly least: number
   /** most harmonics around a segment */
   readonly harmonics: number
+  /** size of a sheet's patch over the distance to the nearest conductor, and most patches of all sheets */
+  readonly patch: number
+  readonly mostPatches: number
 }
 
-export const usualField: FieldOptions = { tubeSegment: 3.5, leadSegment: 24, least: 1.1, harmonics: 6 }
+export const usualField: FieldOptions = {
+  tubeSegment: 3.5,
+  leadSegment: 24,
+  least: 1.1,
+  harmonics: 6,
+  patch: 0.8,
+  mostPatches: 800,
+}
 /** A quarter of the usual lengths and twice the harmonics: slow, to see how far the usual choice is off. */
-export const fineField: FieldOptions = { tubeSegment: 0.9, leadSegment: 6, least: 0.8, harmonics: 12 }
+export const fineField: FieldOptions = {
+  tubeSegment: 0.9,
+  leadSegment: 6,
+  least: 0.8,
+  harmonics: 12,
+  patch: 0.4,
+  mostPatches: 2000,
+}
 
 export interface FixedField {
   readonly bodies: readonly FixedBody[]
@@ -87,9 +105,16 @@ function cutFixed(
   return windows.some((list) => list.length > 0) ? cut((b) => windows[b]!) : coarse
 }
 
-/** Node weights (rows: nodes, columns: segments): hats of a tube's nodes at the middle of each segment; bars 1. */
-function nodeWeights(bodies: readonly FixedBody[], nodes: FixedNodes, segments: Segments): Float64Array {
-  const weights = new Float64Array(nodes.count * segments.count)
+/**
+ * Node weights (rows: nodes, columns: charges): hats of a tube's nodes at the middle of each segment; bars and
+ * patches of sheets 1.
+ */
+function nodeWeights(bodies: readonly FixedBody[], nodes: FixedNodes, system: ChargeSystem): Float64Array {
+  const { segments, charges } = system
+  const { patches } = system.sheets
+  const weights = new Float64Array(nodes.count * charges)
+  for (let k = 0; k < patches.count; k++)
+    weights[(nodes.firstSheet + patches.sheet[k]!) * charges + segments.count + k] = 1
   const place = new Int32Array(bodies.length)
   let tubes = 0
   let bars = 0
@@ -99,15 +124,15 @@ function nodeWeights(bodies: readonly FixedBody[], nodes: FixedNodes, segments: 
   for (let i = 0; i < segments.count; i++) {
     const b = segments.body[i]!
     if (bodies[b]!.kind === 'bar') {
-      weights[(nodes.firstBar + place[b]!) * segments.count + i] = 1
+      weights[(nodes.firstBar + place[b]!) * charges + i] = 1
       continue
     }
     const { first, at } = nodes.tubes[place[b]!]!
     let k = 0
     while (k + 2 < at.length && at[k + 1]! <= segments.at[i]!) k++
     const share = Math.min(1, Math.max(0, (segments.at[i]! - at[k]!) / (at[k + 1]! - at[k]!)))
-    weights[(first + k) * segments.count + i] = 1 - share
-    weights[(first + k + 1) * segments.count + i] = share
+    weights[(first + k) * charges + i] = 1 - share
+    weights[(first + k + 1) * charges + i] = share
   }
   return weights
 }
@@ -127,7 +152,8 @@ function faceSize(face: Face, segments: Segments): readonly [number, number] {
 }
 
 /**
- * Prepares glass, bars and face. A metal face is an infinite plane z = 0 seen through mirror images; conductors on
+ * Prepares glass, bars, sheets and face. `leads` are those known to run here: sheets are cut finer near them, and
+ * a lead that comes later near a sheet is a few per cent less exact. A metal face is an infinite plane z = 0 seen through mirror images; conductors on
  * opposite sides of it do not see each other. A floating one is the same plane at an unknown potential: every
  * conductor has its capacitance to the plane, and the plane that of a thin sheet of the face's size to the
  * surroundings. So conductors near the rim of a floating face, or wider than it, are shielded too well.
@@ -137,16 +163,25 @@ export function prepareField(
   nodes: FixedNodes,
   face: Face,
   options: FieldOptions = usualField,
+  sheets: readonly SheetBody[] = [],
+  leads: readonly LeadBody[] = [],
 ): FixedField {
   const plane = face.metal !== 'none'
   const rules: CutRules = { usual: options.tubeSegment, least: options.least, plane }
   const segments = cutFixed(bodies, nodes, rules, options)
   const least = new Int32Array(segments.count).fill(1)
-  const system = chargeSystem(segments, plane, least, options.harmonics)
-  const { count } = segments
+  const patches = patchesOf(sheets, sources(segments, leads, sheets, plane), {
+    size: options.patch,
+    most: options.mostPatches,
+    plane,
+  })
+  const system = chargeSystem(segments, plane, least, options.harmonics, patches)
+  const count = system.charges
   const { factor, raised } = definiteFactor(system.potential, count)
-  const strained = [...new Set(raised.map((i) => bodies[segments.body[i]!]!.name))]
-  const weights = nodeWeights(bodies, nodes, segments)
+  const nameOf = (i: number): string =>
+    i < segments.count ? bodies[segments.body[i]!]!.name : sheets[patches.sheet[i - segments.count]!]!.name
+  const strained = [...new Set(raised.map(nameOf))]
+  const weights = nodeWeights(bodies, nodes, system)
   const solvedWeights = weights.slice()
   solveLowerRows(factor, count, solvedWeights, nodes.count)
   const nodeMatrix = rowGram(solvedWeights, nodes.count, count)

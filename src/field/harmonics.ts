@@ -152,6 +152,27 @@ export function ringBlock(
     }
 }
 
+/**
+ * Coefficients between the unknowns of segment i (orders up to m, the segment moved by `shift`) and something else's
+ * total charge, of which `mean` gives the coefficient with one line: 2 m + 1 values into `out`; 1/m.
+ */
+export function ringMeans(
+  source: RingSource,
+  i: number,
+  m: number,
+  shift: Float64Array | undefined,
+  mean: (lines: Float64Array, k: number) => number,
+  out: Float64Array,
+): void {
+  const ring = ringOf(m)
+  layRing(source, i, ring, shift, linesA)
+  out.fill(0, 0, 2 * m + 1)
+  for (let k = 0; k < ring.lines; k++) {
+    const value = mean(linesA, k)
+    for (let u = 0; u <= 2 * m; u++) out[u]! += ring.weights[u * ring.lines + k]! * value
+  }
+}
+
 /** places along a segment, in half lengths, that stand for all of it (Gauss) */
 const twoPoints = [-Math.sqrt(1 / 3), Math.sqrt(1 / 3)]
 const onePoint = [0]

@@ -15,8 +15,9 @@ import {
   segmentLength,
 } from './cross-system.js'
 import type { FixedField } from './fixed-field.js'
-import { harmonicSelf } from './harmonics.js'
+import { harmonicSelf, leadDipoleReach } from './harmonics.js'
 import { middleDistance } from './near-pairs.js'
+import { barePatchCross, couplePatches, raiseOrders } from './patch-system.js'
 import { solveSkyline, solveSkylineTransposed } from './skyline.js'
 
 /** In metal conduit: only a capacitance to ground. F */
@@ -145,12 +146,12 @@ function wakeFixed(
   l: number,
   toFixed: Float64Array,
 ): Float64Array {
-  const { hh, components, couplings, segments } = system
+  const { hh, components, couplings, charges } = system
   const half = new Float64Array(l * hh.count)
   for (let i = 0; i < l; i++)
     half.set(rows.subarray(i * cross.width, i * cross.width + hh.count), i * hh.count)
   // charges in rows here, so that the innermost loop runs along the lead
-  const change = new Float64Array(segments.count * l)
+  const change = new Float64Array(charges * l)
   const full = new Float64Array(l)
   for (const c of cross.components) {
     const from = components[c]!
@@ -172,7 +173,7 @@ function wakeFixed(
     }
   }
   for (let i = 0; i < l; i++)
-    for (let j = 0; j < segments.count; j++) toFixed[i * segments.count + j]! -= change[j * l + i]!
+    for (let j = 0; j < charges; j++) toFixed[i * charges + j]! -= change[j * l + i]!
   return half
 }
 
@@ -197,7 +198,19 @@ function extraColumns(
   return extras
 }
 
-/** The lead alone against glass, bars and face. Its own harmonics follow its own charges. */
+/** Rows of two matrices one behind the other. */
+function sideBySide(a: Float64Array, b: Float64Array, rows: number): Float64Array {
+  if (b.length === 0) return a
+  const [n, m] = [a.length / rows, b.length / rows]
+  const out = new Float64Array(a.length + b.length)
+  for (let i = 0; i < rows; i++) {
+    out.set(a.subarray(i * n, (i + 1) * n), i * (n + m))
+    out.set(b.subarray(i * m, (i + 1) * m), i * (n + m) + n)
+  }
+  return out
+}
+
+/** The lead alone against glass, bars, sheets and face. Its own harmonics follow its own charges. */
 export function leadField(fixed: FixedField, lead: LeadBody): LeadField {
   if (lead.conduit === 'metal') {
     return { kind: 'conduit', lead, capacitance: conduitCapacitance(lead) * lead.line.length }
@@ -205,14 +218,19 @@ export function leadField(fixed: FixedField, lead: LeadBody): LeadField {
   const { options, system: glass } = fixed
   const segments = cutLead(fixed, lead)
   const bare = bareCross(segments, glass.segments, glass.images, jointRule(fixed, lead, segments))
-  const { charges: toFixed, near } = bare
+  const patched = barePatchCross(segments, glass.sheets)
+  const toFixed = sideBySide(bare.charges, patched.charges, segments.count)
   const least = new Int32Array(segments.count).fill(Math.min(leadHarmonics, options.harmonics))
-  const orders = crossOrders(segments, glass.segments, near, least, options.harmonics)
+  const orders = crossOrders(segments, glass.segments, bare.near, least, options.harmonics)
+  raiseOrders(orders, segments, patched, options.harmonics)
   const system = chargeSystem(segments, fixed.plane, orders, options.harmonics)
   const response = ownResponse(system)
   const cross = crossHarmonics(system, glass, bare, options.harmonics)
   const l = segments.count
-  const f = glass.segments.count
+  const f = glass.charges
+  couplePatches(segments, system.orders, glass.sheets, patched, leadDipoleReach, (i, h, j, value) => {
+    cross.toCharges[(system.rows[i]! + h) * f + glass.segments.count + j]! += value
+  })
   followCharges(toFixed, cross.toCharges, f, response, l)
   const rows = cross.toHarmonics.subarray(0, l * cross.width)
   followCharges(rows, cross.toHarmonics.subarray(l * cross.width), cross.width, response, l)

@@ -42,7 +42,7 @@ function transposed(a: Float64Array, rows: number, columns: number): Float64Arra
 function shareFixed({ system }: FixedField, a: OpenField, b: OpenField, between: Float64Array): void {
   const na = a.system.segments.count
   const nb = b.system.segments.count
-  subtract(between, rowProducts(a.solved, na, b.solved, nb, system.segments.count))
+  subtract(between, rowProducts(a.solved, na, b.solved, nb, system.charges))
   subtract(between, rowProducts(a.woken, na, b.woken, nb, system.hh.count))
   for (const [j, extra] of a.extras) {
     const other = b.extras.get(j)
@@ -136,7 +136,7 @@ export function reducedPotential(
   fixed: FixedField,
   leads: readonly OpenField[],
 ): { count: number; matrix: Float64Array } {
-  const f = fixed.system.segments.count
+  const f = fixed.system.charges
   const block = assembled(fixed, leads)
   const count = f + block.count
   const matrix = new Float64Array(count * count)

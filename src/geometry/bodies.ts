@@ -37,7 +37,7 @@ function barBody(bar: Bar): BarBody {
   }
 }
 
-/** Tubes in layout order, then bars. Plates and walls are not modelled as bodies. */
+/** Tubes in layout order, then bars. Plates and walls are sheets (sheets.ts). */
 export function fixedBodies(layout: Layout): readonly FixedBody[] {
   const bars = layout.metal.filter((metal) => metal.kind === 'bar')
   return [...layout.tubes.map(tubeBody), ...bars.map(barBody)]

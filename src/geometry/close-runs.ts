@@ -13,9 +13,9 @@ import { type Approach, type Stations, stations, tracksAlong } from './tracks.js
 export const defaultReach = 0.065
 
 /** longest step between two places where distances are taken, m */
-const spacing = 0.005
+export const spacing = 0.005
 /** a minimum lies at most half a step from a station, so it is at most this much lower */
-const slack = spacing / 2 + 1e-6
+export const slack = spacing / 2 + 1e-6
 
 /** One body under way along its stations. */
 interface Driver {
@@ -194,7 +194,7 @@ function faceRuns({ body, ref, along }: Driver, face: Face, reach: number): Clos
 }
 
 /** The runs of one valley, thinned to the places that could be the worst. */
-function runsOf(
+export function runsOf(
   places: Places,
   radii: number,
   reach: number,

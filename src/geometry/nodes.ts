@@ -4,6 +4,7 @@
  * Order, everywhere a node index or a node matrix appears:
  *   the column nodes of every tube (tube after tube, from end a to end b),
  *   one node for each bar (grounded ones too: the network holds those at 0 V),
+ *   one node for each sheet (plates and walls) in the same way,
  *   one node for the face if it floats,
  *   one node for each lead of the wiring.
  * A lead's node is also the electrode (and supply terminal) potential at both its ends: between the electrode and
@@ -27,17 +28,21 @@ export interface FixedNodes {
   /** index of the node of the first bar; bars follow in order */
   readonly firstBar: number
   readonly bars: number
+  /** index of the node of the first sheet; sheets follow in order */
+  readonly firstSheet: number
+  readonly sheets: number
   /** the node of a floating face */
   readonly face?: number
   /** number of fixed nodes = index of the first lead's node */
   readonly count: number
 }
 
-/** Nodes at equal distances of at most `spacing` along every tube, then bars and a floating face. */
+/** Nodes at equal distances of at most `spacing` along every tube, then bars, sheets and a floating face. */
 export function fixedNodes(
   bodies: readonly FixedBody[],
   floatingFace: boolean,
   spacing = nodeSpacing,
+  sheets = 0,
 ): FixedNodes {
   const tubes: ColumnNodes[] = []
   let next = 0
@@ -50,10 +55,10 @@ export function fixedNodes(
   }
   const bars = bodies.filter((body) => body.kind === 'bar').length
   const firstBar = next
-  next += bars
-  return floatingFace
-    ? { tubes, firstBar, bars, face: next, count: next + 1 }
-    : { tubes, firstBar, bars, count: next }
+  const firstSheet = firstBar + bars
+  next = firstSheet + sheets
+  const metal = { firstBar, bars, firstSheet, sheets }
+  return floatingFace ? { tubes, ...metal, face: next, count: next + 1 } : { tubes, ...metal, count: next }
 }
 
 /** The node of the lead with this index in the wiring. */

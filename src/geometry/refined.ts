@@ -75,11 +75,15 @@ function closestOnPiece(along: Stations, k: number, other: Polyline, j: number):
 }
 
 /** Stretches of stations within `limit` of the face. */
-export function faceTracks(along: Stations, face: Face, limit: number): Track[] {
+export const faceTracks = (along: Stations, face: Face, limit: number): Track[] =>
+  tracksNear(along, (point) => toFace(point, face), limit)
+
+/** Stretches of stations within `limit` by this distance. */
+export function tracksNear(along: Stations, distanceOf: (point: Point) => number, limit: number): Track[] {
   const tracks: Track[] = []
   let open: Track | undefined
   for (let k = 0; k < along.at.length; k++) {
-    const d = toFace(corner(along.points, k), face)
+    const d = distanceOf(corner(along.points, k))
     if (d > limit) open = undefined
     else if (open === undefined) {
       open = { first: k, t: [0], d: [d] }
@@ -104,6 +108,20 @@ export function refinedOnFace(track: Track, along: Stations, face: Face): Places
     return { s, t: 0, d: toFace(between(from, to, u), face) }
   })
 }
+
+/**
+ * The places of a track on something without a length of its own, with the minima between stations put in: `least`
+ * gives the share (0 … 1) of the nearest place of the piece between two stations, and its distance.
+ */
+export const refinedBy = (
+  track: Track,
+  along: Stations,
+  least: (from: Point, to: Point) => { readonly share: number; readonly distance: number },
+): Places =>
+  refined(track, along, (_i, k) => {
+    const { share, distance: d } = least(corner(along.points, k), corner(along.points, k + 1))
+    return { s: along.at[k]! + share * (along.at[k + 1]! - along.at[k]!), t: 0, d }
+  })
 
 /** Share (0 … 1) where a convex function is least, by thirds. */
 function lowest(f: (share: number) => number): number {

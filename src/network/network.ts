@@ -6,7 +6,7 @@
  * the column nodes of the first tube in the direction of the string, lead 1, and so on to its last lead (terminal 2).
  */
 import type { NodeCapacitance } from '../field/field.js'
-import type { BarBody, TubeBody } from '../geometry/conductors.js'
+import type { TubeBody } from '../geometry/conductors.js'
 import type { FixedNodes } from '../geometry/nodes.js'
 import type { CircuitWiring, Layout, Supply, Wiring } from '../layout/layout.js'
 import { columnLaw } from './columns.js'
@@ -56,19 +56,22 @@ export interface Network {
   readonly toGround: Float64Array
 }
 
-/** Refuses nothing: layout, wiring and capacitances were made from each other. */
+/**
+ * Refuses nothing: layout, wiring and capacitances were made from each other. `metal`: bars, then sheets, in the order
+ * of their nodes.
+ */
 export function network(
   layout: Layout,
   wiring: Wiring,
   tubes: readonly TubeBody[],
-  bars: readonly BarBody[],
+  metal: readonly { readonly name: string; readonly grounded: boolean }[],
   nodes: FixedNodes,
   capacitance: NodeCapacitance,
 ): Network {
   const strings = stringLadders(layout, wiring, tubes, nodes)
-  const grounded = bars.flatMap((bar, k) => (bar.grounded ? [nodes.firstBar + k] : []))
-  const floating = bars.flatMap((bar, k) =>
-    bar.grounded ? [] : [{ id: bar.name, node: nodes.firstBar + k }],
+  const grounded = metal.flatMap((part, k) => (part.grounded ? [nodes.firstBar + k] : []))
+  const floating = metal.flatMap((part, k) =>
+    part.grounded ? [] : [{ id: part.name, node: nodes.firstBar + k }],
   )
   if (nodes.face !== undefined) floating.push({ id: 'face', node: nodes.face })
   return {

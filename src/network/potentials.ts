@@ -43,6 +43,7 @@ const whole = (node: number): NodeMix => ({ low: node, high: node, t: 0 })
 /** Which nodes give the potential at path length `at` of a body. The ends of a tube are its electrodes. */
 export function nodeMix({ nodes, electrodes, tubes }: Probe, body: BodyRef, at: number): NodeMix {
   if (body.kind === 'lead') return whole(nodes.count + body.index)
+  if (body.kind === 'sheet') return whole(nodes.firstSheet + body.index)
   if (body.kind === 'face') return nodes.face === undefined ? ground : whole(nodes.face)
   if (body.index >= tubes) return whole(nodes.firstBar + body.index - tubes)
   const { first, at: places } = nodes.tubes[body.index]!

@@ -29,6 +29,8 @@ export interface CautionContext {
   readonly leadRuns: readonly CloseRun[]
   /** the sign may go dark: the upper end of the gradient band is not lit */
   readonly mayGoDark: readonly string[]
+  /** parts drawn so far into others that capacitances there are rough */
+  readonly strained: readonly string[]
 }
 
 /** m of spacer that lifts an output lead off the metal (common practice, no published source) */
@@ -48,9 +50,9 @@ export function cautions(context: CautionContext): Caution[] {
     ...worstPair(context),
     ...floatingMetal(context),
     ...context.circuits.flatMap(circuitCautions),
-    ...notModelled(context),
     ...missingRules(context),
     ...crossings(context),
+    ...strained(context),
     ...leadCautions(context),
     ...supplyCautions(context),
   ]
@@ -119,15 +121,6 @@ function ruleCaution(supply: string, finding: CircuitRuleFinding): Caution[] {
   return [{ level: verdict, code: 'rule', supply, finding }]
 }
 
-/** What this version reads but cannot compute. */
-function notModelled({ layout }: CautionContext): Caution[] {
-  const sheets = layout.metal.flatMap((m) => (m.kind === 'bar' ? [] : [m.id]))
-  const returns = layout.wiring.circuits.flatMap((c) => (c.midpointReturn ? [c.midpointReturn] : []))
-  const say = (what: 'sheets' | 'midpoint-return', parts: readonly string[]): Caution[] =>
-    parts.length > 0 ? [{ level: 'fix', code: 'not-modelled', what, parts }] : []
-  return [...say('sheets', sheets), ...say('midpoint-return', returns)]
-}
-
 const missingRules = ({ missingRules: missing }: CautionContext): Caution[] =>
   missing.length === 0 ? [] : [{ level: 'fix', code: 'rules-missing', missing }]
 
@@ -142,6 +135,9 @@ function crossings({ pairs }: CautionContext): Caution[] {
   )
   return tubes.size === 0 ? [] : [{ level: 'fix', code: 'glass-meets', tubes: [...tubes.values()] }]
 }
+
+const strained = ({ strained: parts }: CautionContext): Caution[] =>
+  parts.length === 0 ? [] : [{ level: 'watch', code: 'strained', parts }]
 
 function leadCautions({ layout, leads, places, supplies, leadRuns }: CautionContext): Caution[] {
   const meets = new Set(

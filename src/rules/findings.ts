@@ -28,13 +28,13 @@ export interface RuleFinding {
   readonly needs: number
   readonly ok: boolean
   /** the condition it went by */
-  readonly condition: 'lit' | 'nameplate'
+  readonly condition: Condition
   /** how bad by this rule, where it depends on voltage: difference over the difference this gap may have */
   readonly severity?: number
   readonly advice: string
 }
 
-/** rms differences between two spots; `broken` comes with its condition */
+/** rms differences between two spots */
 export interface Differences {
   readonly lit?: number
   readonly litLow?: number
@@ -42,6 +42,10 @@ export interface Differences {
   /** peak of the worst instant, of the upper end of the band */
   readonly litPeak?: number
   readonly nameplate: number
+  /** the worst over all breaks */
+  readonly broken: number
+  /** the tubes that make it, open: one, or one of each circuit; none where no break makes a difference */
+  readonly openTubes: readonly string[]
 }
 
 export interface PairFinding {
@@ -53,10 +57,16 @@ export interface PairFinding {
   readonly gap: number
   readonly difference: Differences
   /** V peak across the air of the gap (glass and coatings taken off), and the one at which a discharge starts */
-  readonly air: { readonly peak: number; readonly startsAt: number; readonly outcome: string }
+  readonly air: {
+    readonly peak: number
+    readonly startsAt: number
+    readonly outcome: string
+    /** the same with a tube open; it counts for the verdict where a supply has no open-circuit protection */
+    readonly open?: { readonly peak: number; readonly outcome: string; readonly counted: boolean }
+  }
   readonly rules: readonly RuleFinding[]
   /** what physics and the rules that go by the lit sign were judged on: nameplate where the circuit is not lit */
-  readonly judgedOn: 'lit' | 'nameplate'
+  readonly judgedOn: Condition
   readonly severity: number
   readonly verdict: Verdict
   /** which criterion decided, as `common-practice: thumb` */
@@ -198,13 +208,10 @@ export type CautionFacts =
       readonly leads: readonly string[]
       readonly governs: string
     }
-  | {
-      readonly code: 'not-modelled'
-      readonly what: 'sheets' | 'midpoint-return'
-      readonly parts: readonly string[]
-    }
   | { readonly code: 'rules-missing'; readonly missing: readonly MissingRules[] }
   | { readonly code: 'glass-meets'; readonly tubes: readonly (readonly [string, string])[] }
+  /** drawn so far into others that capacitances there are rough */
+  | { readonly code: 'strained'; readonly parts: readonly string[] }
   | { readonly code: 'route-assumed'; readonly leads: readonly string[] }
   | { readonly code: 'off-metal'; readonly leads: readonly string[] }
   | { readonly code: 'lower-voltage'; readonly supply: string }

@@ -3,7 +3,7 @@ import type { CloseRun } from '../geometry/runs.js'
 import type { Supply } from '../layout/layout.js'
 import { noLoadVoltage } from '../network/supplies.js'
 import { altitudeFactor, distanceAt, sameDistance, voltageAt } from './distance-table.js'
-import type { RuleFinding } from './findings.js'
+import type { Condition, RuleFinding } from './findings.js'
 import { bitsAt, bodyBits, bodyOf, circuitsOf, type Parts } from './passing.js'
 import type { Conditions, PairRule, Range, RuleSet, VoltageBasis } from './rule-set.js'
 
@@ -30,10 +30,13 @@ export interface PlaceVoltage {
   readonly peak: number
   readonly toGround: () => { readonly rms: number; readonly peak: number }
 }
-/** The voltages that rules can go by; without a lit solution all go by the nameplate. */
+/** The voltages that rules can go by; without a lit solution those by the lit sign go by the nameplate. */
 export interface RuleVoltages {
   readonly lit?: PlaceVoltage
   readonly nameplate: PlaceVoltage
+  readonly broken: PlaceVoltage
+  /** every rule goes by this, whatever it asks for */
+  readonly all?: 'broken'
 }
 
 const matches = ({ sides: [one, two] }: PairRule, a: number, b: number): boolean =>
@@ -75,8 +78,8 @@ export function ruleFindings(
   for (const chosen of rules) {
     if (!matches(chosen.rule, a, b) || !partsFit(chosen.rule.when, parts, run)) continue
     const { by, when } = chosen.rule
-    const condition = by.condition === 'lit' && voltages.lit ? 'lit' : 'nameplate'
-    const voltage = voltageBy(by, (condition === 'lit' && voltages.lit) || voltages.nameplate, parts, run)
+    const condition = voltages.all ?? (by.condition === 'lit' && !voltages.lit ? 'nameplate' : by.condition)
+    const voltage = voltageBy(by, voltages[condition] ?? voltages.nameplate, parts, run)
     if (within(when.voltage, voltage)) found.push(ruleFinding(chosen, parts, run, i, voltage, condition))
   }
   return found
@@ -156,7 +159,7 @@ function ruleFinding(
   run: CloseRun,
   i: number,
   voltage: number,
-  condition: 'lit' | 'nameplate',
+  condition: Condition,
 ): RuleFinding {
   const gap = run.gap[i]! - (rule.fromConduit ? insideConduit(parts, run) : 0)
   const { distance } = rule

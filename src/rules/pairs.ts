@@ -1,32 +1,36 @@
 /** Verdicts on every place where two conductors pass each other. V rms unless said; m. */
 
-import { type GapStart, gapStart, stressFrom } from '../gaps/gap-stress.js'
+import { type Gap, type GapStart, gapStart, stressFrom } from '../gaps/gap-stress.js'
 import type { BodyRef, CloseRun } from '../geometry/runs.js'
 import type { Layout, Point } from '../layout/layout.js'
-import { type NodeMix, nodeMix, type Probe, peakDifference, rmsDifference } from '../network/potentials.js'
+import { type Broken, brokenDifference, isProtected } from '../network/broken.js'
+import { type NodeMix, nodeMix, type Probe, rmsDifference } from '../network/potentials.js'
 import type { PotentialField } from '../network/solution.js'
-import type { Differences, PairFinding, PartKind, RuleFinding, Spot, Verdict } from './findings.js'
-import { type ChosenRule, chosenRules, type PlaceVoltage, ruleFindings, severityCap } from './pair-rules.js'
+import type { Condition, PairFinding, PartKind, RuleFinding, Spot, Verdict } from './findings.js'
+import {
+  type ChosenRule,
+  chosenRules,
+  type PlaceVoltage,
+  type RuleVoltages,
+  ruleFindings,
+  severityCap,
+} from './pair-rules.js'
 import { circuitsOf, type Parts, partKind, partName, surface } from './passing.js'
 import { otherPlaces } from './places.js'
 import type { RuleSet } from './rule-set.js'
+import { differences, type LitFields, litUpper, type Voltages, voltagesAt } from './voltages.js'
 
-/** The lit fields of the nominal gradient and of the two ends of the band, of the circuits that are lit. */
-export interface LitFields {
-  readonly nominal: readonly PotentialField[]
-  readonly band: readonly (readonly PotentialField[])[]
-  /** where the upper end of the band does not burn: nominal times this (no-load over needed) stands for it */
-  readonly ceiling?: number
-}
+export type { LitFields } from './voltages.js'
 
 export interface PairContext extends Parts {
   readonly layout: Layout
   readonly ruleSets: readonly RuleSet[]
   readonly probe: Probe
   readonly nameplate: readonly PotentialField[]
+  readonly broken: Broken
   readonly lit?: LitFields
-  /** what verdicts go by; differences of both are told */
-  readonly condition: 'lit' | 'nameplate'
+  /** what verdicts go by; differences of all are told */
+  readonly condition: Condition
   readonly unlit: ReadonlySet<number>
 }
 
@@ -72,20 +76,35 @@ function runFindings(judge: Judge, run: CloseRun, key: string): PairFinding[] {
   }
   let worst = 0
   let most = -1
+  let narrowest = 0
   const weights = new Float64Array(run.gap.length)
   for (let i = 0; i < run.gap.length; i++) {
     weights[i] = weight(i)
+    if (run.gap[i]! < run.gap[narrowest]!) narrowest = i
     if (weights[i]! > most * (1 + 1e-9)) {
       most = weights[i]!
       worst = i
     }
   }
   const kept = [findingAt(judge, run, worst, lit, key)]
-  for (const i of otherPlaces(context, rules, run, weights, worst)) {
+  const others = otherPlaces(context, rules, run, weights, worst)
+  // a tube open puts the same voltage on all of the run: where it is narrowest is worst then
+  if (narrowest !== worst && !others.includes(narrowest) && openCounts(judge, run, narrowest))
+    others.push(narrowest)
+  for (const i of others) {
     const other = findingAt(judge, run, i, lit, `${key}|${kept.length}`)
     if (saysMore(other, kept)) kept.push(other)
   }
   return kept
+}
+
+/** Does a place deserve a verdict of its own for what an open tube does there? */
+function openCounts({ context, rules }: Judge, run: CloseRun, i: number): boolean {
+  if (rules.some(({ rule }) => rule.by.condition === 'broken')) return true
+  const [a, b] = mixes(context, run, i)
+  if (isProtected(context.broken, a, b)) return false
+  const peak = Math.SQRT2 * brokenDifference(context.broken, a, b)
+  return verdictOf(stressFrom(startOf(context, run, i), peak).margin) !== 'within'
 }
 
 /** A worse verdict than all before, or a rule broken that is not broken at the places before. */
@@ -111,64 +130,9 @@ const litFor = (context: PairContext, run: CloseRun): LitFields | undefined =>
   circuitsOf(context, run).some((circuit) => context.unlit.has(circuit)) ? undefined : context.lit
 
 function judgedDifference(context: PairContext, lit: LitFields | undefined, a: NodeMix, b: NodeMix): number {
-  return lit && context.condition === 'lit'
-    ? upper(lit, rmsDifference, a, b)
-    : rmsDifference(context.nameplate, a, b)
+  if (context.condition === 'broken') return brokenDifference(context.broken, a, b)
+  return lit && context.condition === 'lit' ? litUpper(lit, a, b) : rmsDifference(context.nameplate, a, b)
 }
-
-type Measure = (fields: readonly PotentialField[], a: NodeMix, b: NodeMix) => number
-const upper = (lit: LitFields, measure: Measure, a: NodeMix, b: NodeMix): number =>
-  Math.max(
-    measure(lit.nominal, a, b) * Math.max(1, lit.ceiling ?? 1),
-    ...lit.band.map((fields) => measure(fields, a, b)),
-  )
-const lower = (lit: LitFields, measure: Measure, a: NodeMix, b: NodeMix): number =>
-  Math.min(measure(lit.nominal, a, b), ...lit.band.map((fields) => measure(fields, a, b)))
-
-const ground: NodeMix = { low: -1, high: -1, t: 0 }
-
-/** Differences and potentials of one field set, or of one end of the lit band. */
-function placeVoltage(
-  measure: (take: Measure, a: NodeMix, b: NodeMix) => number,
-  a: NodeMix,
-  b: NodeMix,
-): PlaceVoltage {
-  const higher = (take: Measure) => Math.max(measure(take, a, ground), measure(take, b, ground))
-  return {
-    rms: measure(rmsDifference, a, b),
-    peak: measure(peakDifference, a, b),
-    toGround: () => ({ rms: higher(rmsDifference), peak: higher(peakDifference) }),
-  }
-}
-
-/** The voltages at a place: on paper, and of the upper and lower end of the lit band. */
-interface Voltages {
-  readonly nameplate: PlaceVoltage
-  readonly lit?: { readonly nominal: number; readonly low: PlaceVoltage; readonly high: PlaceVoltage }
-}
-
-function voltagesAt(
-  { nameplate }: PairContext,
-  lit: LitFields | undefined,
-  a: NodeMix,
-  b: NodeMix,
-): Voltages {
-  const onPaper = placeVoltage((take, p, q) => take(nameplate, p, q), a, b)
-  if (!lit) return { nameplate: onPaper }
-  return {
-    nameplate: onPaper,
-    lit: {
-      nominal: rmsDifference(lit.nominal, a, b),
-      low: placeVoltage((take, p, q) => lower(lit, take, p, q), a, b),
-      high: placeVoltage((take, p, q) => upper(lit, take, p, q), a, b),
-    },
-  }
-}
-
-const differences = ({ nameplate, lit }: Voltages): Differences => ({
-  ...(lit && { lit: lit.nominal, litLow: lit.low.rms, litHigh: lit.high.rms, litPeak: lit.high.peak }),
-  nameplate: nameplate.rms,
-})
 
 function findingAt(
   { context, rules: chosen }: Judge,
@@ -177,19 +141,24 @@ function findingAt(
   lit: LitFields | undefined,
   key: string,
 ): PairFinding {
-  const voltages = voltagesAt(context, lit, ...mixes(context, run, i))
-  const { nameplate } = voltages
+  const places = mixes(context, run, i)
+  const voltages = voltagesAt(context, lit, ...places)
+  const { nameplate, broken } = voltages
+  const judgedOn = basisOf(context.condition, voltages)
   const start = startOf(context, run, i)
   const relights = context.supplies.some((s) => s.type === 'core-and-coil')
-  const judged = (place: PlaceVoltage | undefined) => {
-    const rules = ruleFindings(chosen, context, run, i, place ? { lit: place, nameplate } : { nameplate })
+  const opened = stressFrom(start, broken.peak)
+  // with open-circuit protection an open tube is a note, unless it is what is asked for
+  const openCounted = judgedOn === 'broken' || !isProtected(context.broken, ...places)
+  const judged = (place: PlaceVoltage) => {
+    const rules = ruleFindings(chosen, context, run, i, ruleVoltages(judgedOn, place, voltages))
     // on core-and-coil every half-cycle relights: the no-load peak counts as well
-    const peak = place ? Math.max(place.peak, relights ? nameplate.peak : 0) : nameplate.peak
+    const peak = judgedOn === 'lit' && relights ? Math.max(place.peak, nameplate.peak) : place.peak
     const stress = stressFrom(start, peak)
-    return { rules, stress, verdict: judge(rules, stress.margin) }
+    return { rules, stress, verdict: judge(rules, stress.margin, openCounted ? opened.margin : 0) }
   }
-  const onLit = context.condition === 'lit' ? voltages.lit : undefined
-  const { rules, stress, verdict } = judged(onLit?.high)
+  const onLit = judgedOn === 'lit' ? voltages.lit : undefined
+  const { rules, stress, verdict } = judged(onLit?.high ?? (judgedOn === 'broken' ? broken : nameplate))
   const atLow = onLit ? judged(onLit.low).verdict : verdict
   return {
     key,
@@ -198,48 +167,84 @@ function findingAt(
     b: spot(context, run.b, run.atB[i]!, run.pointB, i),
     gap: run.gap[i]!,
     difference: differences(voltages),
-    air: { peak: stress.airPeak, startsAt: stress.startsAt, outcome: stress.outcome },
+    air: {
+      peak: stress.airPeak,
+      startsAt: stress.startsAt,
+      outcome: stress.outcome,
+      ...(broken.rms > 0 && {
+        open: { peak: opened.airPeak, outcome: opened.outcome, counted: openCounted },
+      }),
+    },
     rules,
     ...verdict,
-    judgedOn: onLit ? 'lit' : 'nameplate',
+    judgedOn,
     unsure: (atLow.verdict === 'fix') !== (verdict.verdict === 'fix'),
   }
+}
+
+/** Lit where it is asked for and solved, else nameplate. */
+const basisOf = (condition: Condition, { lit }: Voltages): Condition =>
+  condition === 'lit' && !lit ? 'nameplate' : condition
+
+function ruleVoltages(
+  judgedOn: Condition,
+  place: PlaceVoltage,
+  { nameplate, broken }: Voltages,
+): RuleVoltages {
+  if (judgedOn === 'broken') return { nameplate, broken, all: 'broken' }
+  return judgedOn === 'lit' ? { lit: place, nameplate, broken } : { nameplate, broken }
 }
 
 /** starts of discharge do not depend on the wiring: kept by the samples of the run they belong to */
 const starts = new WeakMap<Float64Array, Map<string, GapStart>>()
 
 function startOf(context: PairContext, run: CloseRun, i: number): GapStart {
-  const { altitude } = context.layout
-  const frequency = Math.max(...context.supplies.map((s) => s.frequency))
   const known = starts.get(run.gap) ?? new Map<string, GapStart>()
   starts.set(run.gap, known)
-  const name = `${i} ${frequency} ${altitude}`
-  const start =
-    known.get(name) ??
-    gapStart({
-      gap: run.gap[i]!,
-      a: surface(context, run.a, run.atA[i]!),
-      b: surface(context, run.b, run.atB[i]!),
-      frequency,
-      altitude,
-      mode: 'cautious',
-    })
+  const name = `${i} ${highestFrequency(context)} ${context.layout.altitude}`
+  const [a, b] = [
+    { body: run.a, at: run.atA[i]! },
+    { body: run.b, at: run.atB[i]! },
+  ]
+  const start = known.get(name) ?? gapStart(gapBetween(context, run.gap[i]!, a, b))
   known.set(name, start)
   return start
 }
+
+const highestFrequency = ({ supplies }: PairContext): number => Math.max(...supplies.map((s) => s.frequency))
+
+/** The surfaces and the air between two places, as verdicts take them: the sign's highest frequency, cautious. */
+export const gapBetween = (
+  context: PairContext,
+  gap: number,
+  a: Pick<Spot, 'body' | 'at'>,
+  b: Pick<Spot, 'body' | 'at'>,
+): Gap => ({
+  gap,
+  a: surface(context, a.body, a.at),
+  b: surface(context, b.body, b.at),
+  frequency: highestFrequency(context),
+  altitude: context.layout.altitude,
+  mode: 'cautious',
+})
+
+/** the criterion of physics with a tube open, as verdicts name it */
+export const openTubePhysics = 'physics: discharge in the air, a tube open'
 
 /** Verdict, severity and which criterion governs: the worst verdict, then the worst severity. */
 function judge(
   rules: readonly RuleFinding[],
   margin: number,
+  openMargin: number,
 ): { severity: number; verdict: Verdict; governs: string } {
+  const physics = (governs: string, by: number) => ({
+    governs,
+    severity: Math.min(severityCap, by),
+    verdict: verdictOf(by),
+  })
   const criteria = [
-    {
-      governs: 'physics: discharge in the air',
-      severity: Math.min(severityCap, margin),
-      verdict: verdictOf(margin),
-    },
+    physics('physics: discharge in the air', margin),
+    physics(openTubePhysics, openMargin),
     ...rules.map((r) => ({
       governs: `${r.set}: ${r.clause}`,
       severity: r.severity ?? 0,

@@ -1,6 +1,6 @@
 /** Two bodies at the place where they pass each other, in the words of rules: part bits, supplies, metal. */
 import type { Surface } from '../gaps/gap-stress.js'
-import type { Body, FixedBody, LeadBody } from '../geometry/conductors.js'
+import type { Body, FixedBody, LeadBody, SheetBody } from '../geometry/conductors.js'
 import type { BodyRef, CloseRun } from '../geometry/runs.js'
 import type { Face, Supply } from '../layout/layout.js'
 import type { PartKind } from './findings.js'
@@ -10,6 +10,7 @@ import { partBits } from './rule-set.js'
 export interface Parts {
   readonly layout: { readonly face: Face }
   readonly bodies: readonly FixedBody[]
+  readonly sheets: readonly SheetBody[]
   readonly leads: readonly LeadBody[]
   /** circuit of each lead and of each tube (−1: none), and the leads that are feeds */
   readonly circuitOfLead: readonly number[]
@@ -28,11 +29,13 @@ export function bodyOf(parts: Parts, ref: BodyRef): Body | undefined {
 }
 
 export function partKind(parts: Parts, ref: BodyRef): PartKind {
+  if (ref.kind === 'sheet') return 'metal'
   const part = bodyOf(parts, ref)
   return !part ? 'face' : part.kind === 'bar' ? 'metal' : part.kind
 }
 
-export const partName = (parts: Parts, ref: BodyRef): string => bodyOf(parts, ref)?.name ?? 'face'
+export const partName = (parts: Parts, ref: BodyRef): string =>
+  (ref.kind === 'sheet' ? parts.sheets[ref.index] : bodyOf(parts, ref))?.name ?? 'face'
 
 export function circuitOf(parts: Parts, body: BodyRef): number {
   if (body.kind === 'lead') return parts.circuitOfLead[body.index] ?? -1
@@ -56,6 +59,7 @@ const metalBits = (grounded: boolean): number =>
   partBits.any | partBits.metal | (grounded ? partBits.grounded : partBits.floating)
 
 export function bodyBits(parts: Parts, ref: BodyRef): BodyBits {
+  if (ref.kind === 'sheet') return uniform(metalBits(parts.sheets[ref.index]?.grounded === true))
   const part = bodyOf(parts, ref)
   if (!part) return uniform(metalBits(parts.layout.face.metal === 'grounded') | partBits.face)
   if (part.kind === 'bar') return uniform(metalBits(part.grounded))
@@ -83,7 +87,7 @@ function onBareElectrode({ bodies }: Parts, end: string): boolean {
   return bodies.some((body) => body.kind === 'tube' && body.name === tube && !body.boots)
 }
 
-/** What the air meets at a place. */
+/** What the air meets at a place; plates, walls and the face are planes. */
 export function surface(parts: Parts, ref: BodyRef, at: number): Surface {
   const part = bodyOf(parts, ref)
   if (!part) return { kind: 'plane', outerRadius: 0, wall: 0, permittivity: 1 }

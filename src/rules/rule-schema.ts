@@ -40,7 +40,7 @@ const when = z.strictObject(
 
 const by = z.strictObject(
   {
-    condition: choice(['lit', 'nameplate']).optional(),
+    condition: choice(['lit', 'nameplate', 'broken']).optional(),
     value: choice(['rms', 'peak']).optional(),
     of: choice(['difference', 'to-ground', 'no-load']).optional(),
     times: number.optional(),

@@ -55,7 +55,7 @@ export interface Conditions {
 
 /** The voltage that a rule goes by. */
 export interface VoltageBasis {
-  readonly condition: 'lit' | 'nameplate'
+  readonly condition: 'lit' | 'nameplate' | 'broken'
   readonly value: 'rms' | 'peak'
   /** the difference at the place, the higher potential to ground there, or the supply's no-load voltage */
   readonly of: 'difference' | 'to-ground' | 'no-load'

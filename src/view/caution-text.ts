@@ -51,14 +51,12 @@ export function cautionText(caution: Caution, units: Units): string {
       return ruleText(caution.supply, caution.finding, units)
     case 'conduit':
       return `Never run an electronic supply's lead in metal conduit: ${some(caution.leads)} (${caution.governs}).`
-    case 'not-modelled':
-      return caution.what === 'sheets'
-        ? `Not modelled yet, so its capacitance and gaps are missing: ${some(caution.parts)} (plate or wall).`
-        : 'Not modelled yet: the midpoint return is left out of the solution.'
     case 'rules-missing':
       return `Rule set missing, so not judged by it: ${caution.missing.map(missingText).join('; ')}.`
     case 'glass-meets':
       return `Glass meets in the drawing: ${some(caution.tubes.map(([a, b]) => (a === b ? `${a} with itself` : `${a} and ${b}`)))}. Which is in front? Give their heights (z).`
+    case 'strained':
+      return `Drawn into other parts, so capacitances there are rough: ${some(caution.parts)}. Give heights (z).`
     case 'route-assumed':
       return `Route assumed where it passes glass or metal: ${some(caution.leads)}. Give the real route in the file.`
     case 'off-metal':

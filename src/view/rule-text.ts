@@ -73,7 +73,7 @@ function distanceWords({ distance, by, altitude, fromConduit }: PairRule): strin
     by.of
   ]
   const times = by.times === 1 ? '' : `${by.times} times the `
-  const basis = `${times}${by.condition === 'lit' ? 'lit ' : 'nameplate '}${of}, ${by.value}`
+  const basis = `${times}${by.condition === 'broken' ? 'open-tube' : by.condition} ${of}, ${by.value}`
   return `${tableWords(distance)} of ${basis}${factor}`
 }
 

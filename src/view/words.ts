@@ -10,6 +10,8 @@ const fixed = (value: number, decimals: number): string => {
 /** kilovolts with the digits that the model can stand behind: 0.45, 2.1, 12.3 */
 export const kvFigure = (volts: number): string => fixed(volts / 1000, Math.abs(volts) < 995 ? 2 : 1)
 export const kv = (volts: number): string => `${kvFigure(volts)} kV`
+/** kilovolts to a hundredth, where figures are added up: the last digit is not the model's to promise */
+export const kv2 = (volts: number): string => `${fixed(volts / 1000, 2)} kV`
 export const signedKv = (volts: number): string =>
   `${volts > 0 && Number(kvFigure(volts)) !== 0 ? '+' : ''}${kvFigure(volts)} kV`
 export const maFigure = (amperes: number): string => fixed(amperes * 1000, 1)

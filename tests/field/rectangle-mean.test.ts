@@ -81,11 +81,9 @@ describe('two rectangles', () => {
         other[10]!,
         (t) =>
           pointMean(
-            ...([0, 1, 2].map((k) => other[k]! + s * other[3 + k]! + t * other[6 + k]!) as [
-              number,
-              number,
-              number,
-            ]),
+            other[0]! + s * other[3]! + t * other[6]!,
+            other[1]! + s * other[4]! + t * other[7]!,
+            other[2]! + s * other[5]! + t * other[8]!,
             0.5,
             0.5,
           ),

@@ -9,6 +9,8 @@ test('names say the place on the glass, the metal, and the two ends of a lead', 
     tubes: [tubeOf(0, 0, 45.4, 90.8), tubeOf(3, 0, 30)],
     firstBar: 5,
     bars: 1,
+    firstSheet: 6,
+    sheets: 0,
     face: 6,
     count: 7,
   }
@@ -17,7 +19,7 @@ test('names say the place on the glass, the metal, and the two ends of a lead', 
     ['K.b', 'Ö.b'],
     ['Ö.a', 'S1.2'],
   ]
-  expect(nodeNames(nodes, { tubes: ['K', 'Ö'], bars: ['old frame'], leads })).toEqual([
+  expect(nodeNames(nodes, { tubes: ['K', 'Ö'], metal: ['old frame'], leads })).toEqual([
     ...['K_0', 'K_45', 'K_e', 'O_0', 'O_e', 'M_old_frame', 'face'],
     ...['L_S1_1_K_a', 'L_K_b_O_b', 'L_O_a_S1_2'],
   ])
@@ -38,10 +40,12 @@ test('whatever the ids are: letters, digits and _ only, a letter first, and no n
           tubes: tubes.map((_, t) => tubeOf(3 * t, 0, 0.3, 0.6)),
           firstBar: 3 * tubes.length,
           bars: bars.length,
+          firstSheet: 3 * tubes.length + bars.length,
+          sheets: 0,
           count: 3 * tubes.length + bars.length,
         }
         const leads = tubes.map((id): [string, string] => [`${id}.a`, `${id}.b`])
-        const names = nodeNames(nodes, { tubes, bars, leads })
+        const names = nodeNames(nodes, { tubes, metal: bars, leads })
         expect(names.length).toBe(nodes.count + leads.length)
         for (const name of names) expect(name).toMatch(/^[A-Za-z][A-Za-z0-9_]*$/)
         expect(new Set(names.map((name) => name.toLowerCase())).size).toBe(names.length)

@@ -24,7 +24,7 @@ const shipped = (name: string): Layout =>
 function solvedDeck(layout: Layout, source = 0) {
   const prepared = prepare(layout)
   const solved = networkSolver(prepared)(layout.wiring)
-  return { prepared, solved, deck: deckOf('sign.yaml', prepared, solved, source, []) }
+  return { prepared, solved, deck: deckOf('sign.yaml', prepared, solved, source) }
 }
 
 /** Largest difference of any node over the largest potential; every node but grounded metal must be there. */
@@ -36,7 +36,7 @@ async function disagreement(layout: Layout, source = 0): Promise<number> {
   const field = solved.nominal.fields.find((f) => f.supply === supply)!
   const names = nodeNames(prepared.nodes, {
     tubes: layout.tubes.map(({ id }) => id),
-    bars: layout.metal.flatMap((m) => (m.kind === 'bar' ? [m.id] : [])),
+    metal: layout.metal.flatMap((m) => (m.kind === 'bar' ? [m.id] : [])),
     leads: circuitLeads(layout.wiring).map(({ between }) => between),
   })
   const largest = Math.max(...field.re.map((re, i) => Math.hypot(re, field.im[i]!)))

@@ -27,7 +27,7 @@ rules:
     between: [bare]
     and: [bare, metal]
     by: {condition: nameplate, value: peak, of: difference, times: 1}
-    # condition lit or nameplate; value rms or peak; of difference, to-ground (the higher one) or no-load (the supply's);
+    # condition lit, nameplate or broken (a tube open); value rms or peak; of difference, to-ground (the higher one) or no-load (the supply's);
     # times: the voltage is multiplied with this first
     table_kv_mm: [[1, 1], [5, 10], [10, 25]]
     interpolation: linear                    # linear or step
