@@ -19,7 +19,7 @@ import { fixedSheetRuns, leadSheetRuns } from './geometry/sheet-runs.js'
 import { sheetBodies } from './geometry/sheets.js'
 import type { EndName, Layout, Wiring } from './layout/layout.js'
 import { brokenStrings } from './network/broken.js'
-import { calibrations } from './network/calibration.js'
+import { type MeasuredCircuit, measuredLaw } from './network/calibration.js'
 import { solveBand } from './network/lit.js'
 import { nameplateField } from './network/nameplate.js'
 import { type Network, network } from './network/network.js'
@@ -37,6 +37,8 @@ import { type CircuitLead, circuitLeads } from './wiring/leads.js'
 /** A lead in its place with where it passes glass and metal. Depends on its two ends only: kept between edits. */
 interface PlacedLead {
   readonly body: LeadBody
+  /** the same for a lead told the other way round: its charges are kept by this */
+  readonly conductor: object
   readonly runs: readonly CloseRun[]
 }
 
@@ -78,6 +80,7 @@ export interface Solved {
   readonly lit: LitFields
   readonly stray: StrayShares
   readonly floating: readonly FloatingFinding[]
+  readonly measured: readonly (MeasuredCircuit | undefined)[]
   /** supplies whose string is lit by the nominal law and not at the upper end of its band */
   readonly mayGoDark: readonly string[]
   /** parts drawn so far into others that capacitances there are rough */
@@ -96,6 +99,10 @@ export function preparedAgain(prepared: Prepared, layout: Layout): Prepared {
     : { ...prepared, layout, leads: new Map(), crossings: new Map() }
 }
 
+/** leads and crossings kept; each lead holds about half a megabyte of charges */
+const mostLeads = 200
+const mostCrossings = 20_000
+
 /** A lead by its two ends, from the memo. */
 function placedLead(
   { layout, bodies, sheets, leads }: Prepared,
@@ -103,11 +110,19 @@ function placedLead(
 ): PlacedLead {
   const name = between.join(' ')
   const known = leads.get(name)
-  if (known) return known
-  const body = leadBody(layout, between)
-  const placed = { body, runs: [...leadRuns(body, bodies, layout), ...leadSheetRuns(body, sheets)] }
+  const placed = known ?? newLead()
+  // the ones used last stand at the end: the first is the one to forget
+  leads.delete(name)
   leads.set(name, placed)
+  const [oldest] = leads.keys()
+  if (leads.size > mostLeads && oldest !== undefined) leads.delete(oldest)
   return placed
+
+  function newLead(): PlacedLead {
+    const body = leadBody(layout, between)
+    const runs = [...leadRuns(body, bodies, layout), ...leadSheetRuns(body, sheets)]
+    return { body, runs, conductor: leads.get([...between].reverse().join(' '))?.conductor ?? body }
+  }
 }
 
 /** Where the leads of a wiring pass glass, metal and each other. */
@@ -118,6 +133,7 @@ function runsOfLeads(prepared: Prepared, placed: readonly PlacedLead[]): CloseRu
       if (j <= i) continue
       const name = `${a.body.name}|${b.body.name}`
       const known = prepared.crossings.get(name) ?? leadLeadRuns(a.body, b.body)
+      if (prepared.crossings.size > mostCrossings) prepared.crossings.clear()
       prepared.crossings.set(name, known)
       runs.push(...withLeadIndex(known, i, j))
     }
@@ -129,16 +145,10 @@ export interface SolvedNetwork {
   readonly net: Network
   readonly nominal: LitState
   readonly others: readonly LitState[]
+  /** of each circuit, what was measured beside what the law has */
+  readonly measured: readonly (MeasuredCircuit | undefined)[]
   /** parts drawn so far into others that capacitances there are rough */
   readonly strained: readonly string[]
-}
-
-/** The leads of the file's own wiring and all routes it draws: where leads will run. */
-function usualLeads(prepared: Prepared): LeadBody[] {
-  const { routes, wiring } = prepared.layout
-  const drawn = routes.map(({ between }) => between)
-  const wired = circuitLeads(wiring).map(({ between }) => between)
-  return [...wired, ...drawn].map((between) => placedLead(prepared, between).body)
 }
 
 /** Prepares the capacitances of the glass (the slow part) and gives the function that solves the network of a wiring. */
@@ -148,22 +158,27 @@ export function networkSolver(
 ): (wiring: Wiring, layout?: Layout) => SolvedNetwork {
   const { bodies, tubes, sheets, nodes } = prepared
   const metal = [...bodies.filter((body) => body.kind === 'bar'), ...sheets]
-  const near = sheets.length > 0 ? usualLeads(prepared) : []
-  const fixed = prepareField(bodies, nodes, prepared.layout.face, options, sheets, near)
+  const fixed = prepareField(bodies, nodes, prepared.layout.face, options, sheets)
   const { strained } = fixed
-  const known = new WeakMap<LeadBody, LeadField>()
-  const fieldOf = (body: LeadBody): LeadField => {
-    const field = known.get(body) ?? leadField(fixed, body)
-    known.set(body, field)
+  const known = new WeakMap<object, LeadField>()
+  const fieldOf = ({ body, conductor }: PlacedLead): LeadField => {
+    const field = known.get(conductor) ?? leadField(fixed, body)
+    known.set(conductor, field)
     return field
   }
+  const networkOf = (placed: Prepared, wiring: Wiring): Network => {
+    const leads = circuitLeads(wiring).map(({ between }) => placedLead(placed, between))
+    const capacitance = nodeCapacitance(fixed, leads.map(fieldOf))
+    return network(placed.layout, wiring, tubes, metal, nodes, capacitance)
+  }
+  const lawOf = measuredLaw(prepared.layout, (wiring) => networkOf(prepared, wiring))
   let now = prepared
   return (wiring, layout = prepared.layout) => {
     now = preparedAgain(now, layout)
-    const leads = circuitLeads(wiring).map(({ between }) => placedLead(now, between).body)
-    const capacitance = nodeCapacitance(fixed, leads.map(fieldOf))
-    const net = network(layout, wiring, tubes, metal, nodes, capacitance)
-    return { net, strained, ...solveBand(net, calibrations(layout, wiring, net)) }
+    const net = networkOf(now, wiring)
+    const measured = lawOf(wiring)
+    const factors = measured.map((circuit) => circuit?.factor)
+    return { net, measured, strained, ...solveBand(net, factors) }
   }
 }
 
@@ -174,11 +189,12 @@ export function solver(
 ): (wiring: Wiring, layout?: Layout) => Solved {
   const solveNetwork = networkSolver(prepared, options)
   return (wiring, layout = prepared.layout) => {
-    const { net, nominal, others, strained } = solveNetwork(wiring, layout)
+    const { net, nominal, others, measured, strained } = solveNetwork(wiring, layout)
     const noLoads = wiring.circuits.map((circuit) => noLoadVoltage(supplyOf(layout, circuit)))
     return {
       ...litFields(nominal, others, noLoads),
       outcomes: nominal.circuits,
+      measured,
       strained,
       ...strayShares(net, nominal),
     }
@@ -246,7 +262,12 @@ export function inspection(
     places,
     probe: context.probe,
     nameplate: context.nameplate,
-    ...(solved && { outcomes: solved.outcomes, fields: solved.lit.nominal, stray: solved.stray }),
+    ...(solved && {
+      outcomes: solved.outcomes,
+      fields: solved.lit.nominal,
+      stray: solved.stray,
+      measured: solved.measured,
+    }),
   })
   const pairs = pairFindings(context, [...prepared.runs, ...runs])
   const floating = solved?.floating ?? []

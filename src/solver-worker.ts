@@ -1,7 +1,8 @@
 /** The worker thread: prepares the capacitances of the glass and solves wirings, off the thread that reads keys. */
 import { parentPort } from 'node:worker_threads'
-import { prepare, type Solved, solver } from './inspection.js'
+import { inspection, prepare, type Solved, solver } from './inspection.js'
 import type { Layout, Wiring } from './layout/layout.js'
+import { type LeadSaving, leadSavings } from './rules/lead-savings.js'
 import { noRules } from './rules/resolve.js'
 
 export interface SolveJob {
@@ -10,11 +11,15 @@ export interface SolveJob {
   readonly glass: number
   readonly layout: Layout
   readonly wiring: Wiring
+  /** also what laying the output leads otherwise would give back: one solution more for each way */
+  readonly leads?: boolean
 }
 
 export interface SolveAnswer {
   readonly revision: number
   readonly solved: Solved
+  /** where they were asked for */
+  readonly savings?: readonly LeadSaving[]
   /** what it took, ms */
   readonly prepareMs: number
   readonly solveMs: number
@@ -38,9 +43,16 @@ parentPort?.on('message', (job: SolveJob) => {
     solved,
     prepareMs: prepared - start,
     solveMs: performance.now() - prepared,
+    ...(job.leads && { savings: savingsOf(ready, job, solved) }),
   }
   parentPort?.postMessage(answer)
 })
+
+/** Rules have no say in it: the pairs tell where metal is near. */
+function savingsOf({ solve }: Ready, { layout, wiring }: SolveJob, solved: Solved): readonly LeadSaving[] {
+  const found = inspection(prepare(layout, noRules), wiring, solved)
+  return leadSavings({ layout, ...found }, solved, (laid) => solve(wiring, laid))
+}
 
 /** A layout that crossed between threads is a copy: what did not change is put back as the values known here. */
 function onKnownGlass(known: Layout, { supplies, ...layout }: Layout): Layout {

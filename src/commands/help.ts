@@ -3,7 +3,8 @@ import { standingCaution } from '../view/caution-text.js'
 
 export const usage = {
   tubewright: 'tubewright LAYOUT [--color WHEN] [--ground dark|light] [--ascii]',
-  check: 'tubewright check LAYOUT… [--json] [--condition lit|nameplate] [--rules NAME,NAME] [--all]',
+  check: 'tubewright check LAYOUT… [--json] [--condition lit|nameplate|broken] [--rules NAME,NAME] [--all]',
+  why: 'tubewright check LAYOUT --why N | --symptom NAME',
   netlist: 'tubewright netlist LAYOUT [--supply ID]',
   rules: 'tubewright rules [NAME…] [--template]',
 } as const
@@ -14,6 +15,8 @@ export const helpText = `tubewright – potentials, stray current and gaps of ne
       opens the inspector, full screen. Without LAYOUT: an example sign.
   ${usage.check}
       the findings as text or JSON
+  ${usage.why}
+      the number of pair N derived step by step; or what to look at when the sign hums, smells, trips …
   ${usage.netlist}
       the solved network as a SPICE deck (R, C, sources)
   ${usage.rules}
@@ -24,10 +27,13 @@ Options
   --ground dark|light                      the ground of the terminal, where it does not tell
   --ascii                                  nothing but ASCII on the screen
   --json                                   findings as JSON, one object a file
-  --condition lit|nameplate                what verdicts go by; lit unless said
+  --condition lit|nameplate|broken         what verdicts go by; lit unless said
   --rules NAME,NAME                        rule sets instead of those of the file
   --supply ID                              the supply that feeds the deck of netlist; the first unless said
   --all                                    list every pair
+  --why N                                  derive the verdict on pair N of the list, from the terminal on
+  --symptom NAME                           hum, ozone, dark-spot, dim-far-tube, dark-tube, tripping, radio-noise;
+                                           "list" lists them
   --template                               a commented rule file for a shop's own, to stdout
   --help, --version
 

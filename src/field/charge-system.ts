@@ -32,9 +32,9 @@ import {
   nearPair,
 } from './near-pairs.js'
 import {
+  addPatches,
   barePatchCross,
   couplePatches,
-  type PatchCross,
   type PatchSet,
   patchPotential,
   raiseOrders,
@@ -107,19 +107,6 @@ function bareSystem(
     }
   }
   return { potential, near, settled }
-}
-
-/** Puts the coefficients of patches behind those of the segments. */
-function addPatches(potential: Float64Array, count: number, between: Float64Array, cross: PatchCross): void {
-  const patches = Math.sqrt(between.length)
-  const charges = count + patches
-  for (let i = 0; i < count; i++)
-    for (let j = 0; j < patches; j++) {
-      potential[i * charges + count + j] = cross.charges[i * patches + j]!
-      potential[(count + j) * charges + i] = cross.charges[i * patches + j]!
-    }
-  for (let i = 0; i < patches; i++)
-    potential.set(between.subarray(i * patches, (i + 1) * patches), (count + i) * charges + count)
 }
 
 /** What each segment and each patch has with itself alone, without images. */

@@ -1,5 +1,5 @@
 /** What does not depend on the wiring: glass, bars and the face, with their coefficients factored. */
-import type { FixedBody, LeadBody, SheetBody } from '../geometry/conductors.js'
+import type { FixedBody, SheetBody } from '../geometry/conductors.js'
 import type { FixedNodes } from '../geometry/nodes.js'
 import { type CutRules, crossingWindows, cutPlaces, type Segments, segmentsAt } from '../geometry/segments.js'
 import type { Face } from '../layout/layout.js'
@@ -9,7 +9,8 @@ import { definiteFactor } from './definite.js'
 import { plateCapacitance } from './face-plate.js'
 import type { LeadField } from './lead-field.js'
 import type { LeadPair } from './node-capacitance.js'
-import { patchesOf, sources } from './patches.js'
+import { sources } from './patch-sources.js'
+import { patchesOf } from './patches.js'
 
 /** How finely the field is resolved. */
 export interface FieldOptions {
@@ -152,8 +153,7 @@ function faceSize(face: Face, segments: Segments): readonly [number, number] {
 }
 
 /**
- * Prepares glass, bars, sheets and face. `leads` are those known to run here: sheets are cut finer near them, and
- * a lead that comes later near a sheet is a few per cent less exact. A metal face is an infinite plane z = 0 seen through mirror images; conductors on
+ * Prepares glass, bars, sheets and face. A metal face is an infinite plane z = 0 seen through mirror images; conductors on
  * opposite sides of it do not see each other. A floating one is the same plane at an unknown potential: every
  * conductor has its capacitance to the plane, and the plane that of a thin sheet of the face's size to the
  * surroundings. So conductors near the rim of a floating face, or wider than it, are shielded too well.
@@ -164,14 +164,14 @@ export function prepareField(
   face: Face,
   options: FieldOptions = usualField,
   sheets: readonly SheetBody[] = [],
-  leads: readonly LeadBody[] = [],
 ): FixedField {
   const plane = face.metal !== 'none'
   const rules: CutRules = { usual: options.tubeSegment, least: options.least, plane }
   const segments = cutFixed(bodies, nodes, rules, options)
   const least = new Int32Array(segments.count).fill(1)
-  const patches = patchesOf(sheets, sources(segments, leads, sheets, plane), {
+  const patches = patchesOf(sheets, sources(segments, sheets, plane), {
     size: options.patch,
+    stretch: 3,
     most: options.mostPatches,
     plane,
   })

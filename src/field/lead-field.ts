@@ -15,7 +15,9 @@ import {
   segmentLength,
 } from './cross-system.js'
 import type { FixedField } from './fixed-field.js'
+import { followCharges, subtract } from './follow.js'
 import { harmonicSelf, leadDipoleReach } from './harmonics.js'
+import { type LocalField, localField } from './local-field.js'
 import { middleDistance } from './near-pairs.js'
 import { barePatchCross, couplePatches, raiseOrders } from './patch-system.js'
 import { solveSkyline, solveSkylineTransposed } from './skyline.js'
@@ -44,6 +46,8 @@ export interface OpenField {
   readonly schur: Float64Array
   /** L_h⁻¹ P_hl of the fixed harmonics: l × h */
   readonly woken: Float64Array
+  /** uneven charge of sheets that only this lead wakes */
+  readonly local?: LocalField
   /** the same of harmonics that only leads wake: l × 2 (to − from + 1) */
   readonly extras: ReadonlyMap<number, Extra & { readonly columns: Float64Array }>
 }
@@ -108,31 +112,6 @@ function ownResponse(system: ChargeSystem): Float64Array {
     })
   }
   return out
-}
-
-/** rows[l] −= Σ_h response[l][h] harmonics[h], rows of equal width: the lead's harmonics follow its charges. */
-export function followCharges(
-  rows: Float64Array,
-  harmonics: Float64Array,
-  width: number,
-  response: Float64Array,
-  charges: number,
-): void {
-  const count = harmonics.length / width
-  for (let h = 0; h < count; h++) {
-    const row = harmonics.subarray(h * width, (h + 1) * width)
-    if (row.every((x) => x === 0)) continue
-    for (let l = 0; l < charges; l++) {
-      const share = response[l * count + h]!
-      if (share === 0) continue
-      for (let k = 0; k < width; k++) rows[l * width + k]! -= share * row[k]!
-    }
-  }
-}
-
-/** a −= b, element by element. */
-export function subtract(a: Float64Array, b: Float64Array): void {
-  for (let k = 0; k < a.length; k++) a[k]! -= b[k]!
 }
 
 /**
@@ -243,5 +222,22 @@ export function leadField(fixed: FixedField, lead: LeadBody): LeadField {
   subtract(schur, rowGram(woken, l, glass.hh.count))
   for (const { columns } of extras.values()) subtract(schur, rowGram(columns, l, columns.length / l))
   const toNodes = rowProducts(fixed.solvedWeights, fixed.nodes.count, solved, l, f)
-  return { kind: 'open', lead, system, response, toFixed, solved, toNodes, schur, woken, extras }
+  const local = localField(fixed, system, response, solved)
+  if (local) {
+    subtract(schur, rowGram(local.solved, l, local.count))
+    subtract(toNodes, rowProducts(local.toNodes, fixed.nodes.count, local.solved, l, local.count))
+  }
+  return {
+    kind: 'open',
+    lead,
+    system,
+    response,
+    toFixed,
+    solved,
+    toNodes,
+    schur,
+    woken,
+    extras,
+    ...(local && { local }),
+  }
 }

@@ -6,7 +6,9 @@ import { bareCross, crossHarmonics, noJoint } from './cross-system.js'
 import { definiteFactor } from './definite.js'
 import type { NodeCapacitance } from './field.js'
 import type { FixedField } from './fixed-field.js'
-import { followCharges, type LeadField, type OpenField, subtract } from './lead-field.js'
+import { followCharges, subtract } from './follow.js'
+import type { LeadField, OpenField } from './lead-field.js'
+import { localAnswer } from './local-field.js'
 import { solveSkyline } from './skyline.js'
 
 /** What two open leads do to each other; over K = 1/4πε0. */
@@ -56,6 +58,22 @@ function shareFixed({ system }: FixedField, a: OpenField, b: OpenField, between:
   }
 }
 
+/**
+ * Takes off what both leads share through the uneven charge of sheets. Where both wake it, each does so with parts of
+ * its own: the mean of the two answers counts.
+ */
+function shareSheets(a: OpenField, b: OpenField, between: Float64Array): void {
+  const nb = b.system.segments.count
+  const ofA = localAnswer(a, b)
+  const ofB = localAnswer(b, a)
+  if (ofA) for (let k = 0; k < between.length; k++) between[k]! -= ofA[k]! / 2
+  if (ofB)
+    subtract(
+      between,
+      transposed(ofB, nb, between.length / nb).map((x) => x / 2),
+    )
+}
+
 function makePair(fixed: FixedField, a: OpenField, b: OpenField): LeadPair {
   const na = a.system.segments.count
   const nb = b.system.segments.count
@@ -69,6 +87,7 @@ function makePair(fixed: FixedField, a: OpenField, b: OpenField): LeadPair {
   followCharges(turned, harmonicsOfB, na, b.response, nb)
   const schur = transposed(turned, nb, na)
   shareFixed(fixed, a, b, schur)
+  shareSheets(a, b, schur)
   const onB = answerOfLead(a, ab.toCharges, nb)
   const onA = answerOfLead(b, harmonicsOfB, na)
   return { schur, ...(onA && { onA }), ...(onB && { onB }) }

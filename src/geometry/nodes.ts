@@ -49,7 +49,11 @@ export function fixedNodes(
   for (const body of bodies) {
     if (body.kind !== 'tube') continue
     const pieces = Math.max(1, Math.ceil(body.line.length / spacing - 1e-9))
-    const at = Float64Array.from({ length: pieces + 1 }, (_, k) => (body.line.length * k) / pieces)
+    const { length } = body.line
+    // the last one exactly: who asks for the whole length asks for the electrode
+    const at = Float64Array.from({ length: pieces + 1 }, (_, k) =>
+      k === pieces ? length : (length * k) / pieces,
+    )
     tubes.push({ first: next, at })
     next += pieces + 1
   }

@@ -15,19 +15,93 @@ export const supplyEfficiency = 0.85
 /** factors outside are not believed */
 const believable = [0.4, 2.5] as const
 
-/** One for each circuit; undefined where nothing was measured or no believable factor explains it. */
-export function calibrations(layout: Layout, wiring: Wiring, network: Network): Calibrations {
-  const found: (number | undefined)[] = network.circuits.map(() => undefined)
-  for (const [c, { measured }] of wiring.circuits.entries()) {
-    if (measured !== undefined && says(network.circuits[c]!, measured))
-      found[c] = measuredFactor(layout, network, c, measured, found)
-  }
-  return found
+/** What was measured on a circuit, and what the law without that knowledge has in its place. W, A. */
+export interface MeasuredCircuit {
+  /** on gradient and electrode drop; absent where the figures say nothing of the glass or no believable factor explains them */
+  readonly factor?: number
+  readonly primaryPower?: MeasuredFigure
+  readonly currents: readonly (MeasuredFigure & { readonly end: EndName })[]
+  /** the figures that the factor comes from */
+  readonly from: 'watts' | 'milliamps' | 'nothing'
+}
+export interface MeasuredFigure {
+  readonly measured: number
+  /** absent where the law does not light the string */
+  readonly computed?: number
 }
 
+/** One for each circuit; undefined where nothing was measured. */
+export function measuredCircuits(
+  layout: Layout,
+  wiring: Wiring,
+  network: Network,
+): readonly (MeasuredCircuit | undefined)[] {
+  const factors: (number | undefined)[] = network.circuits.map(() => undefined)
+  return wiring.circuits.map(({ measured }, c) => {
+    if (measured === undefined) return undefined
+    const circuit = network.circuits[c]!
+    const solved = solveLit(network, { factor: 1, calibrations: factors }).circuits[c]!
+    const from = saysOf(circuit, measured)
+    if (from !== 'nothing') factors[c] = measuredFactor(layout, network, c, measured, factors)
+    const factor = factors[c]
+    const { primaryPower, currents } = measured
+    const figure = (value: number, computed: (lit: CircuitSolution) => number): MeasuredFigure =>
+      solved.lit ? { measured: value, computed: computed(solved) } : { measured: value }
+    return {
+      ...(factor !== undefined && { factor }),
+      ...(primaryPower !== undefined && {
+        primaryPower: figure(primaryPower, ({ power }) => power / supplyEfficiency),
+      }),
+      currents: [...currents].map(([end, amperes]) => ({
+        end,
+        ...figure(amperes, (lit) => currentAt(layout, circuit.supply.id, lit, end)),
+      })),
+      from,
+    }
+  })
+}
+
+/** The factors alone; undefined where nothing was measured or no believable factor explains it. */
+export const calibrations = (layout: Layout, wiring: Wiring, network: Network): Calibrations =>
+  measuredCircuits(layout, wiring, network).map((circuit) => circuit?.factor)
+
+/**
+ * The same for a wiring under edit: its figures were measured on the wiring they stand with in the file (or in a
+ * variant), so that one is solved for them, once. `networkOf` makes the network of a wiring of the layout.
+ */
+export function measuredLaw(
+  layout: Layout,
+  networkOf: (wiring: Wiring) => Network,
+): (wiring: Wiring) => readonly (MeasuredCircuit | undefined)[] {
+  const known = new Map<Wiring, readonly (MeasuredCircuit | undefined)[]>()
+  const bases = [layout.wiring, ...layout.variants]
+  return (wiring) => {
+    if (wiring.circuits.every(({ measured }) => measured === undefined))
+      return wiring.circuits.map(() => undefined)
+    const base = bases.find((one) => sameMeasured(one, wiring)) ?? wiring
+    const found = known.get(base) ?? measuredCircuits(layout, base, networkOf(base))
+    if (base !== wiring || bases.includes(base)) known.set(base, found)
+    return wiring.circuits.map(({ measured }, c) => (measured === undefined ? undefined : found[c]))
+  }
+}
+
+/** Do all figures of a wiring stand with the same circuits of another one? */
+const sameMeasured = (one: Wiring, other: Wiring): boolean =>
+  other.circuits.every(({ measured, supply }, c) => {
+    const base = one.circuits[c]
+    return (
+      measured === undefined ||
+      (base?.supply === supply && measuredText(base.measured) === measuredText(measured))
+    )
+  })
+const measuredText = (measured: Measured | undefined): string =>
+  JSON.stringify([measured?.primaryPower, ...(measured?.currents ?? [])])
+
 /** An electronic supply's milliamps are the supply's doing and say little of the glass. */
-const says = ({ supply }: CircuitString, { primaryPower, currents }: Measured): boolean =>
-  primaryPower !== undefined || (currents.size > 0 && supply.type === 'core-and-coil')
+function saysOf({ supply }: CircuitString, { primaryPower, currents }: Measured): MeasuredCircuit['from'] {
+  if (primaryPower !== undefined) return 'watts'
+  return currents.size > 0 && supply.type === 'core-and-coil' ? 'milliamps' : 'nothing'
+}
 
 /** Secant steps on the logarithms of factor and measured quantity. */
 function measuredFactor(

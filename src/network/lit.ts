@@ -25,7 +25,8 @@ export interface LitOptions {
 
 /** the band of the column law, and the share of it that remains where a circuit was measured (±30 % → ±5 %) */
 const bandFactors = [0.7, 1.3] as const
-const measuredShare = 1 / 6
+export const bandWidth = 0.3
+export const measuredShare = 1 / 6
 
 /** Three lit states: the nominal law, and the weakest and strongest columns that its uncertainty allows. */
 export function solveBand(

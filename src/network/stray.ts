@@ -14,6 +14,8 @@ export interface StrayShare {
   readonly toGround: number
   /** to every other part of the sign */
   readonly toNeighbours: number
+  /** to ground as a phasor: these of all parts add up to what the supply gets back through ground */
+  readonly ground: Complex
 }
 
 export interface FloatingMetal {
@@ -78,6 +80,7 @@ function shares(
       total: magnitude(all),
       toGround: magnitude(ground),
       toNeighbours: magnitude(minus(all, ground)),
+      ground,
     }
   }
 }

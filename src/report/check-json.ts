@@ -2,6 +2,7 @@
 import type { Inspection } from '../inspection.js'
 import type { Layout } from '../layout/layout.js'
 import { type Complex, degrees, magnitude } from '../math/complex.js'
+import type { MeasuredCircuit, MeasuredFigure } from '../network/calibration.js'
 import type {
   CircuitFinding,
   EndState,
@@ -11,6 +12,7 @@ import type {
   TubeFinding,
 } from '../rules/findings.js'
 import { cautionText, generalCautions } from '../view/caution-text.js'
+import { bandOf } from '../view/measured-text.js'
 
 const rounded = (value: number, decimals: number): number => Number(value.toFixed(decimals))
 const kv = (volts: number): number => rounded(volts / 1000, 4)
@@ -45,6 +47,7 @@ function circuitJson(c: CircuitFinding): object {
     ...(c.power !== undefined && { power_w: rounded(c.power, 2) }),
     ...(c.stray !== undefined && { stray_ma: ma(c.stray) }),
     ...(c.residual !== undefined && { residual_ma: ma(c.residual) }),
+    ...(c.measured && { measured: measuredJson(c.measured) }),
     tube_m: rounded(c.tubeLength, 3),
     electrode_pairs: c.electrodePairs,
     verdict: c.verdict,
@@ -60,6 +63,20 @@ function circuitJson(c: CircuitFinding): object {
     leads: c.leads.map(leadJson),
   }
 }
+
+/** computed: by the law without what was measured */
+const measuredJson = (m: MeasuredCircuit): object => ({
+  ...(m.primaryPower && { primary_w: figureJson(m.primaryPower, (watts) => rounded(watts, 2)) }),
+  ...(m.currents.length > 0 && {
+    ma: Object.fromEntries(m.currents.map((current) => [current.end, figureJson(current, ma)])),
+  }),
+  ...(m.factor !== undefined && { law_factor: rounded(m.factor, 4) }),
+  band: rounded(bandOf(m), 4),
+})
+const figureJson = ({ measured, computed }: MeasuredFigure, figure: (value: number) => number): object => ({
+  measured: figure(measured),
+  ...(computed !== undefined && { computed: figure(computed) }),
+})
 
 const wrapped = (angle: number): number => ((((angle + 180) % 360) + 360) % 360) - 180
 
@@ -120,8 +137,14 @@ function pairJson(p: PairFinding): object {
       ...(d.litLow !== undefined && { lit_low: kv(d.litLow) }),
       ...(d.litHigh !== undefined && { lit_high: kv(d.litHigh) }),
       nameplate: kv(d.nameplate),
+      broken: kv(d.broken),
     },
-    air: { peak_kv: kv(p.air.peak), starts_at_kv: kv(p.air.startsAt) },
+    ...(d.openTubes.length > 0 && { open_tubes: d.openTubes }),
+    air: {
+      peak_kv: kv(p.air.peak),
+      starts_at_kv: kv(p.air.startsAt),
+      ...(p.air.open && { open_peak_kv: kv(p.air.open.peak), open_counts: p.air.open.counted }),
+    },
     rules: p.rules.map((r) => ({ set: r.set, clause: r.clause, needs_mm: mm(r.needs), ok: r.ok })),
     severity: rounded(p.severity, 3),
     verdict: p.verdict,

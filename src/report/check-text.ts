@@ -3,8 +3,11 @@ import type { Inspection } from '../inspection.js'
 import type { Layout, Supply } from '../layout/layout.js'
 import { magnitude } from '../math/complex.js'
 import { supplyOf } from '../rules/circuits.js'
-import type { CircuitFinding, Loading, PairFinding, Verdict } from '../rules/findings.js'
+import type { CircuitFinding, Condition, Loading, PairFinding, Verdict } from '../rules/findings.js'
+import type { LeadSaving } from '../rules/lead-savings.js'
 import { cautionText, generalCautions, standingCaution } from '../view/caution-text.js'
+import { leadLines, residualLines } from '../view/lead-text.js'
+import { measuredText } from '../view/measured-text.js'
 import {
   groundingText,
   hertz,
@@ -16,6 +19,7 @@ import {
   maFigure,
   metres,
   needOf,
+  openTubeGoverns,
   percent,
   severityFigure,
   spotText,
@@ -28,7 +32,9 @@ import { folded, table } from './table.js'
 export interface CheckOptions {
   /** list every pair, not only those to fix or watch and the first few within */
   readonly all: boolean
-  readonly condition: 'lit' | 'nameplate'
+  readonly condition: Condition
+  /** what laying the output leads otherwise gives back, where it was computed */
+  readonly savings?: readonly LeadSaving[]
 }
 
 const columns = 100
@@ -49,6 +55,18 @@ export function checkText(
     '',
     ...inspection.circuits.flatMap((circuit, i) => circuitLines(layout, inspection, circuit, i)),
     ...pairLines(layout, inspection.pairs, options),
+    '',
+    'LEADS',
+    ...inspection.circuits.flatMap((c, i) =>
+      [
+        ...leadLines(
+          layout,
+          c,
+          options.savings?.filter(({ circuit }) => circuit === i),
+        ),
+        ...residualLines(c),
+      ].flatMap(bullet),
+    ),
     '',
     ...floatingLines(inspection),
     'CAUTIONS',
@@ -78,6 +96,7 @@ function circuitLines(layout: Layout, inspection: Inspection, c: CircuitFinding,
     `SUPPLY ${supply.id}  ${supplyText(supply)}`,
     ...wrap(`string  ${string}   (- = entered at end b)`, columns - 2).map((l) => `  ${l}`),
     ...stateLines(c),
+    ...(c.measured ? wrap(measuredText(c.measured), columns - 2).map((l) => `  ${l}`) : []),
     ...c.loadings.map((l) => `  ${loadingText(l).padEnd(66)} ${mark(l.verdict)}`),
     '',
     ...table(
@@ -174,14 +193,20 @@ function pairLines(layout: Layout, pairs: readonly PairFinding[], options: Check
   const shown = options.all ? pairs : pairs.slice(0, urgent + listedWithin)
   const left = pairs.length - shown.length
   const criteria = [...new Set(shown.map((p) => p.governs))]
+  const opened = shown.some(openTubeGoverns)
   const titles = ['', '', 'from', 'to', `gap ${layout.units}`, 'kV', 'low–high', 'paper', 'needs', 'x', 'by']
   const rows = shown.map((p, i) => pairCells(layout, p, i, letter(criteria.indexOf(p.governs))))
+  if (opened) {
+    titles.splice(8, 0, 'broken')
+    for (const [i, row] of rows.entries()) row.splice(8, 0, brokenCell(shown[i]!))
+  }
   return [
     head,
     ...table([titles, ...rows], columns, [2, 3]),
     ...(left > 0 ? [`  and ${left} more ${within} (--all lists them)`] : []),
     ...criteria.map((criterion, i) => `  ${letter(i)} = ${criterion}`),
     '  kV: lit, with its band; paper: nameplate, shared out; x: difference over what the gap may have',
+    ...(opened ? ['  broken: the worst with one tube open (in a circuit), and which'] : []),
   ]
 }
 
@@ -208,6 +233,10 @@ function pairCells(layout: Layout, p: PairFinding, i: number, by: string): strin
     by,
   ]
 }
+
+/** `8.0 K`: the worst over all breaks, and the tube that is open then */
+const brokenCell = ({ difference: { broken, openTubes } }: PairFinding): string =>
+  [kvFigure(broken), openTubes.join('+')].join(' ').trimEnd()
 
 const floatingLines = ({ floating }: Inspection): string[] =>
   floating.length === 0

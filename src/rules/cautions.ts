@@ -53,6 +53,7 @@ export function cautions(context: CautionContext): Caution[] {
     ...missingRules(context),
     ...crossings(context),
     ...strained(context),
+    ...openTube(context),
     ...leadCautions(context),
     ...supplyCautions(context),
   ]
@@ -134,6 +135,15 @@ function crossings({ pairs }: CautionContext): Caution[] {
     ]),
   )
   return tubes.size === 0 ? [] : [{ level: 'fix', code: 'glass-meets', tubes: [...tubes.values()] }]
+}
+
+/** Where only open-circuit protection keeps an open tube from starting a discharge. */
+function openTube({ pairs }: CautionContext): Caution[] {
+  const margin = ({ air }: PairFinding) => (air.open ? air.open.peak / air.startsAt : 0)
+  const found = pairs.filter((pair) => pair.air.open?.counted === false && margin(pair) > 1)
+  if (found.length === 0) return []
+  const pair = found.reduce((worst, one) => (margin(one) > margin(worst) ? one : worst))
+  return [{ level: 'note', code: 'open-tube', pair, places: found.length }]
 }
 
 const strained = ({ strained: parts }: CautionContext): Caution[] =>

@@ -2,9 +2,10 @@
 import type { FixedBody, LeadBody } from '../geometry/conductors.js'
 import type { CircuitWiring, Layout, Supply, Tube, Wiring } from '../layout/layout.js'
 import { type Complex, magnitude, minus } from '../math/complex.js'
+import type { MeasuredCircuit } from '../network/calibration.js'
 import { nodeMix, type Probe, readIm, readRe } from '../network/potentials.js'
-import type { CircuitOutcome, ColumnCurrents, PotentialField } from '../network/solution.js'
-import type { StrayShares } from '../network/stray.js'
+import type { CircuitOutcome, CircuitSolution, ColumnCurrents, PotentialField } from '../network/solution.js'
+import type { StrayShare, StrayShares } from '../network/stray.js'
 import { noLoadVoltage } from '../network/supplies.js'
 import type { CircuitLead } from '../wiring/leads.js'
 import { type CircuitFacts, circuitRuleFindings, efficiency } from './circuit-rules.js'
@@ -32,6 +33,7 @@ export interface CircuitContext {
   readonly outcomes?: readonly CircuitOutcome[]
   readonly fields?: readonly PotentialField[]
   readonly stray?: StrayShares
+  readonly measured?: readonly (MeasuredCircuit | undefined)[]
 }
 
 /** m of chart that an electrode pair counts as (common practice, no published source) */
@@ -49,6 +51,7 @@ function circuitFinding(context: CircuitContext, circuit: CircuitWiring, index: 
   const rules = circuitRuleFindings(context.ruleSets, facts)
   const loadings = loadingsOf(facts).map((loading) => ruledLoading(loading, rules))
   const lit = outcome?.lit === true
+  const measured = context.measured?.[index]
   return {
     supply: supply.id,
     solved: outcome !== undefined,
@@ -65,6 +68,7 @@ function circuitFinding(context: CircuitContext, circuit: CircuitWiring, index: 
       stray: strayOf(outcome),
       residual: magnitude(outcome.residual),
     }),
+    ...(measured && { measured }),
     tubeLength: facts.tubeLength,
     electrodePairs: tubes.length,
     terminals: outcome?.lit
@@ -76,10 +80,8 @@ function circuitFinding(context: CircuitContext, circuit: CircuitWiring, index: 
       : [],
     loadings,
     rules,
-    tubes: tubes.map((t) =>
-      tubeFinding(context, t, outcome?.lit ? outcome.columns.get(t) : undefined, field),
-    ),
-    leads: leadFindings(context, index, outcome?.lit ? field : undefined),
+    tubes: tubes.map((t) => tubeFinding(context, t, outcome?.lit ? outcome : undefined, field)),
+    leads: leadFindings(context, index, outcome?.lit ? outcome : undefined, field),
     verdict: worst([
       ...(outcome && !outcome.lit ? (['fix'] as const) : []),
       ...loadings.map((l) => l.verdict),
@@ -210,9 +212,10 @@ function footage(supply: Supply, tubes: readonly Tube[], lengths: readonly numbe
 function tubeFinding(
   { layout, bodies, probe, nameplate, stray }: CircuitContext,
   tube: number,
-  column: ColumnCurrents | undefined,
+  outcome: CircuitSolution | undefined,
   field: PotentialField | undefined,
 ): TubeFinding {
+  const column = outcome?.columns.get(tube)
   const length = bodies[tube]!.line.length
   const at = (f: PotentialField, s: number): Complex => {
     const mix = nodeMix(probe, { kind: 'fixed', index: tube }, s)
@@ -225,7 +228,7 @@ function tubeFinding(
     nameplateA: own ? signedNameplate(nameplate, probe, tube, 0) : 0,
     nameplateB: own ? signedNameplate(nameplate, probe, tube, length) : 0,
   }
-  if (!column || !field) return base
+  if (!outcome || !column || !field) return base
   const a: EndState = { voltage: at(field, 0), current: column.atA }
   const b: EndState = { voltage: at(field, length), current: column.atB }
   const share = stray?.tubes[tube]
@@ -236,8 +239,17 @@ function tubeFinding(
     drop: magnitude(minus(a.voltage, b.voltage)),
     stray: magnitude(minus(a.current, b.current)),
     least: leastCurrent(column, length),
-    ...(share && { toGround: share.toGround, toNeighbours: share.toNeighbours }),
+    ...(share && strayWords(share, outcome.residual)),
   }
+}
+
+const strayWords = (
+  { toGround, toNeighbours, ground }: StrayShare,
+  residual: Complex,
+): Pick<TubeFinding, 'toGround' | 'toNeighbours' | 'ofResidual'> => {
+  const all = magnitude(residual)
+  const inStep = (ground.re * residual.re + ground.im * residual.im) / all
+  return { toGround, toNeighbours, ...(all > 0 && { ofResidual: inStep }) }
 }
 
 const signedNameplate = (fields: readonly PotentialField[], probe: Probe, tube: number, at: number): number =>
@@ -260,6 +272,7 @@ function leastCurrent({ re, im }: ColumnCurrents, length: number): { current: nu
 function leadFindings(
   context: CircuitContext,
   circuit: number,
+  outcome: CircuitSolution | undefined,
   field: PotentialField | undefined,
 ): LeadFinding[] {
   const { places, leads, probe, nameplate, stray } = context
@@ -275,8 +288,8 @@ function leadFindings(
         length: lead.line.length,
         assumed: lead.assumed,
         nameplate: nameplate.reduce((sum, f) => sum + readRe(f, mix), 0),
-        ...(field && { voltage: Math.hypot(readRe(field, mix), readIm(field, mix)) }),
-        ...(share && { stray: share.total, toGround: share.toGround, toNeighbours: share.toNeighbours }),
+        ...(outcome && field && { voltage: Math.hypot(readRe(field, mix), readIm(field, mix)) }),
+        ...(outcome && share && { stray: share.total, ...strayWords(share, outcome.residual) }),
       },
     ]
   })

@@ -2,6 +2,7 @@
 import type { BodyRef } from '../geometry/runs.js'
 import type { Point } from '../layout/layout.js'
 import type { Complex } from '../math/complex.js'
+import type { MeasuredCircuit } from '../network/calibration.js'
 import type { Mark, MissingRules, Quantity } from './rule-set.js'
 
 export type Condition = 'lit' | 'nameplate' | 'broken'
@@ -96,6 +97,8 @@ export interface TubeFinding {
   /** this tube's capacitive current to ground and to other parts, A */
   readonly toGround?: number
   readonly toNeighbours?: number
+  /** what of the circuit's residual it makes, A: its current to ground in step with that; negative where it balances */
+  readonly ofResidual?: number
 }
 
 export interface LeadFinding {
@@ -108,6 +111,8 @@ export interface LeadFinding {
   readonly stray?: number
   readonly toGround?: number
   readonly toNeighbours?: number
+  /** as of a tube */
+  readonly ofResidual?: number
 }
 
 export interface TerminalFinding {
@@ -161,6 +166,8 @@ export interface CircuitFinding {
   readonly power?: number
   readonly stray?: number
   readonly residual?: number
+  /** on the running circuit, beside what the law without that knowledge has */
+  readonly measured?: MeasuredCircuit
   readonly tubeLength: number
   readonly electrodePairs: number
   readonly terminals: readonly TerminalFinding[]
@@ -199,6 +206,8 @@ export type CautionFacts =
   | { readonly code: 'may-go-dark'; readonly supply: string }
   /** the worst pair, and how many more are to fix and to watch */
   | { readonly code: 'pairs'; readonly pair: PairFinding; readonly fix: number; readonly watch: number }
+  /** with a tube open a discharge can start: at the worst of `places`; its supplies have open-circuit protection */
+  | { readonly code: 'open-tube'; readonly pair: PairFinding; readonly places: number }
   | { readonly code: 'floating-metal'; readonly id: string; readonly voltage: number; readonly touch: number }
   | { readonly code: 'loading'; readonly supply: string; readonly loading: Loading }
   | { readonly code: 'rule'; readonly supply: string; readonly finding: CircuitRuleFinding }

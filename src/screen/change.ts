@@ -5,7 +5,8 @@ import type { Message } from './state.js'
 
 export function editChange(said: string, before: Inspection, after: Inspection): Message {
   const [was, is] = [before.pairs[0], after.pairs[0]]
-  const difference = (p: typeof was) => (p ? kvFigure(p.difference.lit ?? p.difference.nameplate) : '–')
+  const difference = (p: typeof was) =>
+    p ? kvFigure(p.difference[p.judgedOn] ?? p.difference.nameplate) : '–'
   const parts: string[] = []
   if (was && is)
     parts.push(

@@ -1,7 +1,9 @@
 /** Dialogs: what they ask, how an answer is read, and what follows. Figures typed carry the unit of their prompt. */
 import type { Fill, Grounding, SupplyType } from '../layout/layout.js'
+import { aboutLeads, type Symptom, symptomNamed, symptoms } from '../view/symptoms.js'
 import { kvFigure, maFigure, supplyShort } from '../view/words.js'
-import { onPair } from './aim.js'
+import { findingInView, onPair } from './aim.js'
+import { groundingChosen, midpointReturnHere, otherCircuits, tubeMoved } from './circuits.js'
 import {
   circuitUnderCursor,
   feedAt,
@@ -16,7 +18,16 @@ import {
   variantKept,
 } from './editing.js'
 import type { Action } from './keys.js'
-import type { Choice, Dialog, Next, PickKind, PromptKind, State, SupplyFigure } from './state.js'
+import {
+  type Choice,
+  type Dialog,
+  freshSavings,
+  type Next,
+  type PickKind,
+  type PromptKind,
+  type State,
+  type SupplyFigure,
+} from './state.js'
 import {
   currentUnits,
   frequencyUnits,
@@ -47,6 +58,17 @@ export function dialogByKey(state: State, action: Action): Next | undefined {
       return open(state, { kind: 'help', scroll: 0 })
     case 'cautions':
       return open(state, { kind: 'cautions', scroll: 0 })
+    case 'why':
+      return findingInView(state)
+        ? open(state, { kind: 'why', scroll: 0 })
+        : say(state, 'No pair here: Tab goes to one, or m marks a place to probe from.')
+    case 'symptoms':
+      return choose(
+        state,
+        { for: 'symptom' },
+        'Symptom',
+        symptoms.map(({ symptom, name }) => ({ label: name, value: symptom })),
+      )
     case 'filter':
       return ask(state, { for: 'filter' }, 'Show only pairs that name (empty: all)', state.filter)
     case 'tube-height':
@@ -61,6 +83,10 @@ export function dialogByKey(state: State, action: Action): Next | undefined {
       return chooseLink(state)
     case 'supply-figures':
       return chooseSupply(state)
+    case 'move-tube':
+      return onTube(state, (tube) => chooseCircuit(state, tube))
+    case 'midpoint-return':
+      return midpointReturnHere(state)
     default:
       return undefined
   }
@@ -107,6 +133,21 @@ function chooseLink(state: State): Next {
   if (links.length === 0)
     return say(state, 'One tube only: the feed has nowhere else to go. Swap the terminals (x) instead.')
   return choose(state, { for: 'link', circuit }, 'Move the feed to the jumper', links)
+}
+
+/** With one other circuit there is nothing to choose. */
+function chooseCircuit(state: State, tube: string): Next {
+  const { layout, wiring } = state.present.sign
+  const [only, ...more] = otherCircuits(state, tube)
+  if (only === undefined)
+    return say(state, 'There is one circuit only: the tube has nowhere else to go.', 'bad')
+  if (more.length === 0) return tubeMoved(state, tube, only)
+  const choices = [only, ...more].map((circuit): Choice => {
+    const { supply } = wiring.circuits[circuit]!
+    const figures = layout.supplies.find(({ id }) => id === supply)
+    return { label: `${supply}  ${figures ? supplyShort(figures) : ''}`, value: String(circuit) }
+  })
+  return choose(state, { for: 'circuit', tube }, `Move ${tube} to the circuit of`, choices)
 }
 
 function chooseSupply(state: State): Next {
@@ -172,10 +213,23 @@ export function picked(state: State, pick: PickKind, value: string): Next {
     case 'supply-type':
       return figureTyped(after, pick.supply, { type: types.find((t) => t === value) ?? 'electronic' })
     case 'grounding':
-      return figureTyped(after, pick.supply, { grounding: groundings.find((g) => g === value) ?? 'none' })
+      return groundingChosen(after, pick.supply, groundings.find((g) => g === value) ?? 'none')
+    case 'circuit':
+      return tubeMoved(after, pick.tube, Number(value))
+    case 'symptom': {
+      const symptom = symptomNamed(value)
+      return symptom ? openSymptom(state, symptom) : stay(after)
+    }
     case 'fill':
       return fillChosen(after, pick.tube, fills.find((f) => f === value) ?? 'neon')
   }
+}
+
+/** Where leads matter, what laying them otherwise gives back is asked for once per sign. */
+function openSymptom(state: State, symptom: Symptom): Next {
+  const next = open(state, { kind: 'symptom', symptom, scroll: 0 })
+  const wanted = aboutLeads(symptom) && !freshSavings(state)
+  return wanted ? { ...next, effects: [{ do: 'lay-leads' }] } : next
 }
 
 function figureChosen(state: State, supply: string, value: string): Next {

@@ -10,7 +10,6 @@ import {
   leavingEnd,
   moveFeed,
   placeOf,
-  type Refusal,
   type Sign,
   type SupplyFigures,
   sameWiring,
@@ -26,6 +25,7 @@ import {
 } from '../wiring/edits.js'
 import { footsOfPair, footUnderCursor, placeOfCursor } from './aim.js'
 import type { Action } from './keys.js'
+import { refusalText } from './refusal-text.js'
 import { type Foot, type Next, type State, type Step, selectedPair, unsaved } from './state.js'
 
 export const stay = (state: State): Next => ({ state, effects: [] })
@@ -185,7 +185,7 @@ function joinAtCursor(state: State): Next {
   )
 }
 
-function endNear(state: State, foot: Foot | undefined): string | undefined {
+export function endNear(state: State, foot: Foot | undefined): string | undefined {
   const tube = tubeOf(state, foot)
   if (tube === undefined || foot?.body.kind !== 'fixed') return undefined
   const { line } = state.prepared.tubes[foot.body.index]!
@@ -268,30 +268,4 @@ export function variantKept(state: State, name: string): Next {
     `Kept as variant "${text}". Save (s) writes it into the file.`,
     'good',
   )
-}
-
-const figureNames: Readonly<Record<string, string>> = {
-  noLoadVoltage: 'No-load voltage',
-  shortCircuitCurrent: 'Short-circuit current',
-  frequency: 'Frequency',
-  height: 'Height',
-}
-
-export function refusalText(why: Refusal): string {
-  switch (why.code) {
-    case 'no-such-part':
-      return `There is no ${why.part} in the wiring.`
-    case 'nothing-to-change':
-      return `Nothing to change: ${why.what}.`
-    case 'same-tube':
-      return `Both ends belong to ${why.tube}: a jumper there would short the tube.`
-    case 'both-terminals':
-      return `Both ends are terminals of ${why.supply}: a jumper there would short the supply.`
-    case 'other-circuit':
-      return `${why.ends[0]} and ${why.ends[1]} belong to different circuits.`
-    case 'out-of-range':
-      return `${figureNames[why.what] ?? why.what} must be ${why.allowed}.`
-    case 'only-tube':
-      return `${why.supply} has one tube only: its feed has nowhere else to go. Swap the terminals (x) instead.`
-  }
 }

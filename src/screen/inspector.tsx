@@ -14,7 +14,7 @@ import { titleLine } from './panes/title.js'
 import { asciiOnly } from './panes/words.js'
 import { worstLines } from './panes/worst.js'
 import type { Event } from './reduce.js'
-import type { State } from './state.js'
+import { type State, sheetOf } from './state.js'
 import { textWidth } from './text-width.js'
 
 /** The state outside React: handlers never read a captured one. */
@@ -32,11 +32,10 @@ export function Inspector({ store, theme }: { readonly store: Store; readonly th
   const draw = (place: Place, lines: readonly Line[]) => (
     <Rows place={place} lines={state.ascii ? lines.map(asciiLine) : lines} theme={theme} />
   )
-  const sheet = state.dialog?.kind === 'help' || state.dialog?.kind === 'cautions'
   return (
     <Box flexDirection="column" width={columns} height={rows}>
       {draw(boxes.title, [titleLine(state, columns)])}
-      {sheet ? (
+      {sheetOf(state.dialog) ? (
         draw(sheetBox(columns, rows), sheetPage(state))
       ) : (
         <Panes state={state} store={store} theme={theme} draw={draw} />

@@ -1,13 +1,44 @@
 /** Which potentials are on the screen: the fields of the condition, at the instant chosen. */
+import type { Inspection } from '../inspection.js'
+import { brokenField } from '../network/broken.js'
 import { instantPotential, type NodeMix } from '../network/potentials.js'
 import type { PotentialField } from '../network/solution.js'
+import { openTube } from './conditions.js'
 import type { State } from './state.js'
 
-type Shown = Pick<State, 'condition' | 'inspection' | 'instant'>
+type Shown = Pick<State, 'condition' | 'inspection' | 'instant' | 'open'>
 
-/** Lit fields where they are solved, else the nameplate condition. */
-export const fieldsShown = ({ condition, inspection }: Shown): readonly PotentialField[] =>
-  condition === 'lit' && inspection.lit ? inspection.lit : inspection.nameplate
+/** Lit fields where they are solved, the snapshot of the break that is shown, else the nameplate condition. */
+export function fieldsShown(
+  state: Pick<State, 'condition' | 'inspection' | 'open'>,
+): readonly PotentialField[] {
+  const { condition, inspection } = state
+  if (condition === 'broken') return breakShown(state)
+  return condition === 'lit' && inspection.lit ? inspection.lit : inspection.nameplate
+}
+
+/** the break last shown of each inspection: its fields are read for every cell of the map */
+const breaks = new WeakMap<Inspection, BreakShown>()
+interface BreakShown {
+  /** `open` of the state it was made for */
+  readonly asked: string | undefined
+  readonly fields: readonly PotentialField[]
+}
+
+function breakShown(state: Pick<State, 'inspection' | 'open'>): readonly PotentialField[] {
+  const { inspection, open: asked } = state
+  const known = breaks.get(inspection)
+  if (known && known.asked === asked) return known.fields
+  const { context, probe, leads, wiring, nameplate } = inspection
+  const tubes = context.bodies.filter((body) => body.kind === 'tube')
+  const open = openTube(state)
+  const fields =
+    open === undefined
+      ? nameplate
+      : brokenField(context.layout, wiring, tubes, probe.nodes, leads.length, open)
+  breaks.set(inspection, { asked, fields })
+  return fields
+}
 
 /** Radians: the instant counts from the peak of terminal 1 of the first supply. */
 export function phaseShown(state: Shown): number {

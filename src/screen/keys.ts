@@ -17,6 +17,8 @@ export type Action =
   | 'far-down'
   | 'mark'
   | 'condition'
+  | 'next-break'
+  | 'previous-break'
   | 'instant-on'
   | 'instant-back'
   | 'zoom-in'
@@ -26,6 +28,8 @@ export type Action =
   | 'glyphs'
   | 'names'
   | 'filter'
+  | 'why'
+  | 'symptoms'
   | 'feed-other-end'
   | 'feed-here'
   | 'supply-here'
@@ -34,6 +38,8 @@ export type Action =
   | 'join-ends'
   | 'earlier'
   | 'later'
+  | 'move-tube'
+  | 'midpoint-return'
   | 'supply-figures'
   | 'tube-height'
   | 'tube-fill'
@@ -92,14 +98,29 @@ export const keyTable: readonly KeyEntry[] = [
     does: 'mark this place: probe from here to the cursor',
     footer: { label: 'mark', rank: 6 },
   },
+  {
+    keys: ['y'],
+    action: 'why',
+    group: 'find',
+    does: 'why: the figures of this pair derived step by step',
+    footer: { label: 'why', rank: 5.5 },
+  },
+  { keys: ['Y'], action: 'symptoms', group: 'find', does: 'by symptom: which figures to look at' },
   { keys: ['/'], action: 'filter', group: 'find', does: 'show only pairs that name this text' },
   {
     keys: ['c'],
     action: 'condition',
     group: 'map',
-    does: 'condition: lit or nameplate',
+    does: 'condition: lit, nameplate or broken (each tube open in turn)',
     footer: { label: 'condition', rank: 7 },
   },
+  {
+    keys: ['d'],
+    action: 'next-break',
+    group: 'map',
+    does: 'condition broken: the next tube open on the map',
+  },
+  { keys: ['D'], action: 'previous-break', group: 'map', does: 'condition broken: the tube before' },
   { keys: ['i'], action: 'instant-on', group: 'map', does: 'the instant: 30 degrees on in the cycle' },
   { keys: ['I'], action: 'instant-back', group: 'map', does: 'the instant: 30 degrees back' },
   { keys: ['+', '='], action: 'zoom-in', group: 'map', does: 'zoom in at the cursor' },
@@ -134,6 +155,13 @@ export const keyTable: readonly KeyEntry[] = [
   },
   { keys: [','], action: 'earlier', group: 'wiring', does: 'this tube one place earlier in the string' },
   { keys: ['.'], action: 'later', group: 'wiring', does: 'this tube one place later' },
+  { keys: ['M'], action: 'move-tube', group: 'wiring', does: 'this tube to another circuit' },
+  {
+    keys: ['R'],
+    action: 'midpoint-return',
+    group: 'wiring',
+    does: 'midpoint return at the joint under the cursor, or none',
+  },
   { keys: ['e'], action: 'supply-figures', group: 'wiring', does: "type the supply's figures" },
   {
     keys: ['h'],

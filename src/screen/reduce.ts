@@ -1,18 +1,25 @@
 /** Every event of the inspector: keys, answers of dialogs, solutions, saves. A pure function from state to state. */
 import { inspection, type Solved } from '../inspection.js'
+import type { LeadSaving } from '../rules/lead-savings.js'
 import { aimByKey, inView, marked } from './aim.js'
 import { editChange } from './change.js'
+import { breakStepped, otherCondition } from './conditions.js'
 import { closed, dialogByKey, picked, submitted } from './dialogs.js'
 import { asFiled, editByKey, redo, say, stay, undo } from './editing.js'
 import { tooSmall } from './frame.js'
 import { type Action, actionOf } from './keys.js'
 import { lastScroll } from './panes/sheets.js'
-import { type Next, type Opened, type State, unsaved } from './state.js'
+import { type Next, type Opened, type SheetDialog, type State, unsaved } from './state.js'
 
 export type Event =
   | { readonly type: 'key'; readonly key: string }
   | { readonly type: 'resized'; readonly columns: number; readonly rows: number }
-  | { readonly type: 'solved'; readonly revision: number; readonly solved: Solved }
+  | {
+      readonly type: 'solved'
+      readonly revision: number
+      readonly solved: Solved
+      readonly savings?: readonly LeadSaving[]
+    }
   | { readonly type: 'typed'; readonly text: string }
   | { readonly type: 'submitted'; readonly text: string }
   | { readonly type: 'picked'; readonly value: string }
@@ -26,7 +33,7 @@ export function reduce(state: State, event: Event): Next {
     case 'resized':
       return stay(resized(state, event.columns, event.rows))
     case 'solved':
-      return solved(state, event.revision, event.solved)
+      return solved(state, event.revision, event.solved, event.savings)
     case 'typed':
       return stay(
         state.dialog?.kind === 'prompt'
@@ -57,11 +64,22 @@ function resized(state: State, columns: number, rows: number): State {
 }
 
 /** The lit solution of the sign on screen: its findings, and what the edit did. Answers for older signs are dropped. */
-function solved(state: State, revision: number, answer: Solved): Next {
+function solved(
+  state: State,
+  revision: number,
+  answer: Solved,
+  savings: readonly LeadSaving[] | undefined,
+): Next {
   if (revision !== state.revision) return stay(state)
   const found = inspection(state.prepared, state.present.sign.wiring, answer, state.condition)
   const { pending, ...rest } = state
-  const next: State = { ...rest, inspection: found, solved: answer, solving: false }
+  const next: State = {
+    ...rest,
+    inspection: found,
+    solved: answer,
+    solving: false,
+    ...(savings && { savings: { revision, list: savings } }),
+  }
   return pending ? stay({ ...next, message: editChange(pending.said, pending.before, found) }) : stay(next)
 }
 
@@ -102,6 +120,10 @@ function viewByKey(state: State, action: Action): Next | undefined {
       return marked(state)
     case 'condition':
       return otherCondition(state)
+    case 'next-break':
+      return breakStepped(state, 1)
+    case 'previous-break':
+      return breakStepped(state, -1)
     case 'instant-on':
       return stay({ ...state, instant: (state.instant + 1) % 12 })
     case 'instant-back':
@@ -124,17 +146,6 @@ function viewByKey(state: State, action: Action): Next | undefined {
     default:
       return undefined
   }
-}
-
-function otherCondition(state: State): Next {
-  const condition = state.condition === 'lit' ? 'nameplate' : 'lit'
-  const found = inspection(state.prepared, state.inspection.wiring, state.solved, condition)
-  return say(
-    { ...state, condition, inspection: found },
-    condition === 'lit'
-      ? 'Condition lit: the solved potentials of the burning sign.'
-      : 'Condition nameplate: no-load kV shared out along the string, no stray current.',
-  )
 }
 
 function fileByKey(state: State, action: Action): Next {
@@ -165,7 +176,9 @@ function dialogKey(state: State, name: string): Next {
   switch (dialog?.kind) {
     case 'help':
     case 'cautions':
-      return scrolled(state, name)
+    case 'why':
+    case 'symptom':
+      return scrolled(state, dialog, name)
     case 'quit':
       if (name === 's')
         return { state: closed(state), effects: [{ do: 'save', force: false }, { do: 'quit' }] }
@@ -188,9 +201,7 @@ const scrollKeys: Record<string, number> = {
   'shift-tab': -1,
 }
 
-function scrolled(state: State, name: string): Next {
-  const { dialog } = state
-  if (dialog?.kind !== 'help' && dialog?.kind !== 'cautions') return stay(state)
+function scrolled(state: State, dialog: SheetDialog, name: string): Next {
   const by = scrollKeys[name]
   if (by === undefined) return stay(closed(state))
   const scroll = Math.min(lastScroll(state), Math.max(0, dialog.scroll + by))

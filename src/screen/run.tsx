@@ -8,7 +8,7 @@ import { mapPane } from './map-pane.js'
 import { type Event, reduce } from './reduce.js'
 import type { Solving } from './solving.js'
 import { initialState } from './start.js'
-import { type Effect, unsaved } from './state.js'
+import { type Effect, sheetOf, unsaved } from './state.js'
 import { frameSink } from './terminal/frame-sink.js'
 import { keyPump } from './terminal/key-pump.js'
 import { openScreen } from './terminal/open-screen.js'
@@ -54,7 +54,7 @@ export function runInspector(file: LayoutFile, options: RunOptions, worker: Solv
   /** The map lies over the frame, except where a dialog is open in front of it. */
   function showMap(): void {
     const { columns, rows, dialog } = state
-    if (tooSmall(state) || dialog?.kind === 'help' || dialog?.kind === 'cautions') {
+    if (tooSmall(state) || sheetOf(dialog)) {
       sink.setOverlay('map', undefined)
       return
     }
@@ -73,6 +73,9 @@ export function runInspector(file: LayoutFile, options: RunOptions, worker: Solv
     switch (effect.do) {
       case 'solve':
         worker.request({ revision: state.revision, glass, ...state.present.sign })
+        return
+      case 'lay-leads':
+        worker.request({ revision: state.revision, glass, leads: true, ...state.present.sign })
         return
       case 'save':
         save(effect.force)
@@ -114,7 +117,9 @@ export function runInspector(file: LayoutFile, options: RunOptions, worker: Solv
     return true
   }
 
-  worker.onAnswer(({ revision, solved }) => dispatch({ type: 'solved', revision, solved }))
+  worker.onAnswer(({ revision, solved, savings }) =>
+    dispatch({ type: 'solved', revision, solved, ...(savings && { savings }) }),
+  )
   perform({ do: 'solve' })
   showMap()
   const app = render(<Inspector store={store} theme={options.theme} />, {

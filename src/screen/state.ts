@@ -2,8 +2,10 @@
 
 import type { BodyRef } from '../geometry/runs.js'
 import type { Inspection, Prepared, Solved } from '../inspection.js'
-import type { PairFinding } from '../rules/findings.js'
+import type { Condition, PairFinding } from '../rules/findings.js'
+import type { LeadSaving } from '../rules/lead-savings.js'
 import type { MapWindow } from '../view/map-window.js'
+import type { Symptom } from '../view/symptoms.js'
 import { type Sign, sameWiring } from '../wiring/edits.js'
 
 /** The file as it was read. */
@@ -53,6 +55,8 @@ export type PickKind =
   | { readonly for: 'supply-type'; readonly supply: string }
   | { readonly for: 'grounding'; readonly supply: string }
   | { readonly for: 'fill'; readonly tube: string }
+  | { readonly for: 'symptom' }
+  | { readonly for: 'circuit'; readonly tube: string }
 
 export interface Choice {
   readonly label: string
@@ -69,8 +73,15 @@ export type Dialog =
     }
   | { readonly kind: 'help'; readonly scroll: number }
   | { readonly kind: 'cautions'; readonly scroll: number }
+  | { readonly kind: 'why'; readonly scroll: number }
+  | { readonly kind: 'symptom'; readonly symptom: Symptom; readonly scroll: number }
   | { readonly kind: 'quit' }
   | { readonly kind: 'overwrite' }
+
+/** A long text that takes the place of the panes and can be scrolled. */
+export type SheetDialog = Extract<Dialog, { readonly scroll: number }>
+export const sheetOf = (dialog: Dialog | undefined): SheetDialog | undefined =>
+  dialog && 'scroll' in dialog ? dialog : undefined
 
 export interface Message {
   readonly text: string
@@ -98,9 +109,13 @@ export interface State {
   readonly inspection: Inspection
   readonly solved?: Solved
   readonly solving: boolean
+  /** what laying the output leads otherwise gives back, and for which revision */
+  readonly savings?: { readonly revision: number; readonly list: readonly LeadSaving[] }
   /** counts signs shown; an answer for an older one is dropped */
   readonly revision: number
-  readonly condition: 'lit' | 'nameplate'
+  readonly condition: Condition
+  /** the tube that is open on the map in condition broken; absent: the first of the first string */
+  readonly open?: string
   /** of twelve steps of 30 degrees */
   readonly instant: number
   readonly filter: string
@@ -115,6 +130,8 @@ export interface State {
 /** What the reducer asks the world to do. */
 export type Effect =
   | { readonly do: 'solve' }
+  /** solve again, with what laying the output leads otherwise would give back */
+  | { readonly do: 'lay-leads' }
   | { readonly do: 'save'; readonly force: boolean }
   | { readonly do: 'quit' }
   | { readonly do: 'suspend' }
@@ -127,6 +144,10 @@ export interface Next {
 /** the sign on screen says something else than the file */
 export const unsaved = ({ present, opened }: Pick<State, 'present' | 'opened'>): boolean =>
   present.sign.layout !== opened.sign.layout || !sameWiring(present.sign.wiring, opened.sign.wiring)
+
+/** savings of the sign on screen, where they are known */
+export const freshSavings = ({ savings, revision }: State): readonly LeadSaving[] | undefined =>
+  savings?.revision === revision ? savings.list : undefined
 
 /** The pairs that pass the filter, worst first. */
 export function listedPairs({

@@ -11,6 +11,9 @@ import {
   maFigure,
   metres,
   needOf,
+  openText,
+  openTubeGoverns,
+  outcomeText,
   percent,
   spotText,
   watts,
@@ -43,6 +46,8 @@ export function cautionText(caution: Caution, units: Units): string {
       return `${caution.supply} lights the string by the default gradient law, but not if the glass takes 30 % more: the sign may go dark.`
     case 'pairs':
       return pairsText(caution.pair, caution.fix, caution.watch, units)
+    case 'open-tube':
+      return openTubeText(caution, units)
     case 'floating-metal':
       return `Metal "${caution.id}" is not grounded: it floats to ${kv(caution.voltage)} rms, and ${ma(caution.touch)} would flow through a person touching it. Bond it to ground.`
     case 'loading':
@@ -87,7 +92,11 @@ function darkText({ supply, why, neededVoltage, noLoadVoltage, dark }: Of<'dark'
 /** The worst pair with its gap, kV and need, and how many more there are. */
 function pairsText(pair: PairFinding, fix: number, watch: number, units: Units): string {
   const { lit, nameplate } = pair.difference
-  const difference = lit === undefined ? `${kv(nameplate)} rms on paper` : `${kv(lit)} rms`
+  const difference = openTubeGoverns(pair)
+    ? `${kv(pair.difference.broken)} rms with ${openText(pair)}`
+    : lit === undefined
+      ? `${kv(nameplate)} rms on paper`
+      : `${kv(lit)} rms`
   const need = needOf(pair)
   const same = need !== undefined && length(need, units) === length(pair.gap, units)
   // 37.5 mm where 38 are needed is not to read "38 mm, needs 38 mm"
@@ -101,6 +110,13 @@ function pairsText(pair: PairFinding, fix: number, watch: number, units: Units):
     `${spotText(pair.a, units)} to ${spotText(pair.b, units)}: gap ${gap} at ${difference}, ${asked}` +
     `${more.length > 0 ? `; ${more.join(', ')}` : ''}.`
   )
+}
+
+function openTubeText({ pair, places }: Of<'open-tube'>, units: Units): string {
+  const where = `${spotText(pair.a, units)} and ${spotText(pair.b, units)}`
+  const outcome = outcomeText[pair.air.open?.outcome ?? ''] ?? ''
+  const more = places > 1 ? ` (and in ${places - 1} more places)` : ''
+  return `With ${openText(pair)}, ${kv(pair.difference.broken)} rms stand between ${where}${more}: ${outcome}. Open-circuit protection must switch the supply off: test it.`
 }
 
 /** the rule that asks for the widest gap */

@@ -1,6 +1,7 @@
 /** Figures in words: the same on the screen, in `check` and on the job sheet. In: SI. Out: text with its unit. */
 import type { Supply, Units } from '../layout/layout.js'
 import type { PairFinding, Spot, Verdict } from '../rules/findings.js'
+import { openTubePhysics } from '../rules/pairs.js'
 
 const fixed = (value: number, decimals: number): string => {
   const text = value.toFixed(decimals)
@@ -53,6 +54,14 @@ export const needOf = (pair: PairFinding): number | undefined => {
   const needs = pair.rules.filter((r) => !r.ok).map((r) => r.needs)
   return needs.length > 0 ? Math.max(...needs) : undefined
 }
+
+/** is it what an open tube does that decides? */
+export const openTubeGoverns = ({ judgedOn, governs }: PairFinding): boolean =>
+  judgedOn === 'broken' || governs === openTubePhysics
+
+/** `K open`, `K and X open`; empty where no break makes a difference */
+export const openText = ({ difference: { openTubes } }: PairFinding): string =>
+  openTubes.length === 0 ? '' : `${openTubes.join(' and ')} open`
 
 export const outcomeText: Record<string, string> = {
   nothing: 'no discharge in the air',

@@ -16,26 +16,9 @@ import type {
   Variant,
   Wiring,
 } from '../layout/layout.js'
+import { done, type Edit, refused } from './edit.js'
 
-/** The edited thing: a layout with the wiring on screen (layout.wiring is the one of the file). */
-export interface Sign {
-  readonly layout: Layout
-  readonly wiring: Wiring
-}
-
-export type Refusal =
-  | { readonly code: 'no-such-part'; readonly part: string }
-  | { readonly code: 'nothing-to-change'; readonly what: string }
-  | { readonly code: 'same-tube'; readonly tube: string }
-  | { readonly code: 'both-terminals'; readonly supply: string }
-  | { readonly code: 'other-circuit'; readonly ends: readonly [EndName, EndName] }
-  | { readonly code: 'out-of-range'; readonly what: string; readonly allowed: string }
-  | { readonly code: 'only-tube'; readonly supply: string }
-
-export type Edit<T> = { readonly ok: true; readonly value: T } | { readonly ok: false; readonly why: Refusal }
-
-const done = <T>(value: T): Edit<T> => ({ ok: true, value })
-const refused = <T>(why: Refusal): Edit<T> => ({ ok: false, why })
+export type { Edit, Refusal, Sign } from './edit.js'
 
 export const enteringEnd = ({ tube, reversed }: StringEntry): EndName => `${tube}.${reversed ? 'b' : 'a'}`
 export const leavingEnd = ({ tube, reversed }: StringEntry): EndName => `${tube}.${reversed ? 'a' : 'b'}`
@@ -55,7 +38,10 @@ const withString = (wiring: Wiring, circuit: number, string: readonly StringEntr
 })
 
 /** The way back to the midpoint stays at its tube end, as long as that lies inside the string and not at the feed. */
-function restrung({ midpointReturn, ...rest }: CircuitWiring, string: readonly StringEntry[]): CircuitWiring {
+export function restrung(
+  { midpointReturn, ...rest }: CircuitWiring,
+  string: readonly StringEntry[],
+): CircuitWiring {
   const inside = [...string.slice(0, -1).map(leavingEnd), ...string.slice(1).map(enteringEnd)]
   const stays = midpointReturn !== undefined && inside.includes(midpointReturn)
   return stays ? { ...rest, string, midpointReturn } : { ...rest, string }
@@ -216,6 +202,7 @@ export const sameWiring = (one: Wiring, other: Wiring): boolean =>
     const d = other.circuits[i]!
     return (
       c.supply === d.supply &&
+      c.midpointReturn === d.midpointReturn &&
       c.string.length === d.string.length &&
       c.string.every(
         (entry, k) => entry.tube === d.string[k]!.tube && entry.reversed === d.string[k]!.reversed,

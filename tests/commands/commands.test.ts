@@ -55,9 +55,22 @@ describe('check', () => {
 
   test.each([
     [['check'], 'check needs a layout file'],
-    [['check', 'good.yaml', '--condition', 'wet'], 'there is no condition "wet"; expected lit or nameplate'],
+    [
+      ['check', 'good.yaml', '--condition', 'wet'],
+      'there is no condition "wet"; expected lit, nameplate or broken',
+    ],
     [['check', 'good.yaml', '--jsonn'], "Unknown option '--jsonn'"],
     [['check', 'good.yaml', '--condition'], "Option '--condition <value>' argument missing"],
+    [['check', 'good.yaml', '--why', '0'], '--why "0" is not a number of the list of pairs, from 1 on'],
+    [['check', 'good.yaml', '--why', '1.5'], '--why "1.5" is not a number of the list of pairs, from 1 on'],
+    [['check', 'good.yaml', '--why', '999'], '--why 999: the pairs of good.yaml are numbered 1 to '],
+    [['check', 'good.yaml', '--why', '1', '--json'], '--why does not go with --json'],
+    [['check', 'good.yaml', '--why', '1', '--symptom', 'hum'], '--why does not go with --symptom'],
+    [['check', 'good.yaml', 'close.yaml', '--why', '1'], '--why takes one layout; 2 were named'],
+    [
+      ['check', 'good.yaml', '--symptom', 'smoke'],
+      'there is no symptom "smoke"; expected hum, ozone, dark-spot, dim-far-tube, dark-tube, tripping, radio-noise or list',
+    ],
     [['--colour'], "Unknown option '--colour'"],
     [['good.yaml', 'close.yaml'], 'one layout at a time; 2 were named'],
     [['netlist'], 'netlist needs a layout file'],
@@ -96,6 +109,40 @@ describe('check', () => {
 bad.yaml: 1 problem; the layout is not used
 `,
     )
+  })
+
+  test('--why derives the pair of that number, and ends as check does', () => {
+    const { status, stdout, stderr } = run('check', 'close.yaml', '--why', '1')
+    expect({ status, stderr }).toEqual({ status: 1, stderr: '' })
+    expect(stdout).toMatch(/^Two bars \(close\.yaml\)\n/)
+    expect(stdout).toContain('\nWhy K at 0.0 mm to I at 800 mm: gap 3.0 mm\n')
+    expect(stdout).toContain('\nVerdict\n  - FIX')
+    expect(run('check', 'good.yaml', '--why', '1').status).toBe(0)
+    const second = run('check', 'close.yaml')
+      .stdout.split('\n')
+      .find((line) => /^ +2 {2}/.test(line))
+    const [, from] = /^ +2 {2}\w+\?? +(\S+) @/.exec(second ?? '') ?? []
+    expect(from).toBeDefined()
+    expect(run('check', 'close.yaml', '--why', '2').stdout).toMatch(new RegExp(`\\nWhy (lead )?${from} at`))
+  })
+
+  test('--symptom says what to look at; list lists the names', () => {
+    const { status, stdout, stderr } = run('check', 'close.yaml', '--symptom', 'dim far tube')
+    expect({ status, stderr }).toEqual({ status: 1, stderr: '' })
+    expect(stdout).toContain('\nSymptom: dim far tube.')
+    expect(stdout).toContain('\nWhat this program cannot see\n')
+    const { status: fine, stdout: names } = run('check', '--symptom', 'list')
+    expect(fine).toBe(0)
+    expect(names.split('\n').map((line) => line.split(' ')[0])).toEqual([
+      'hum',
+      'ozone',
+      'dark-spot',
+      'dim-far-tube',
+      'dark-tube',
+      'tripping',
+      'radio-noise',
+      '',
+    ])
   })
 
   test('several files: each is checked, one line for each at the end, the worst status', () => {

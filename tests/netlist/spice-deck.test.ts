@@ -36,7 +36,9 @@ async function disagreement(layout: Layout, source = 0): Promise<number> {
   const field = solved.nominal.fields.find((f) => f.supply === supply)!
   const names = nodeNames(prepared.nodes, {
     tubes: layout.tubes.map(({ id }) => id),
-    metal: layout.metal.flatMap((m) => (m.kind === 'bar' ? [m.id] : [])),
+    metal: [true, false].flatMap((bars) =>
+      layout.metal.flatMap((m) => ((m.kind === 'bar') === bars ? [m.id] : [])),
+    ),
     leads: circuitLeads(layout.wiring).map(({ between }) => between),
   })
   const largest = Math.max(...field.re.map((re, i) => Math.hypot(re, field.im[i]!)))
@@ -59,6 +61,7 @@ describe('ngspice finds the potentials of', () => {
     ['open-window.yaml', 0, 'an electronic supply with its midpoint grounded'],
     ['core-and-coil-6kv.yaml', 0, 'a core-and-coil one'],
     ['channel-letters.yaml', 0, 'one with a joint back to its midpoint'],
+    ['conversion-gone-wrong.yaml', 0, 'one with a plate that floats'],
     ['reference-12-tubes.yaml', 1, 'the second of two supplies'],
   ])('%s, circuit %i: %s', async (name, source) => {
     expect(await disagreement(shipped(name), source)).toBeLessThan(sameSolution)

@@ -1,7 +1,7 @@
 import { expect, test } from 'vitest'
-import type { Measured, Supply } from '../../src/layout/layout.js'
+import type { Measured, Supply, Wiring } from '../../src/layout/layout.js'
 import { magnitude } from '../../src/math/complex.js'
-import { calibrations } from '../../src/network/calibration.js'
+import { calibrations, measuredCircuits, measuredLaw } from '../../src/network/calibration.js'
 import { solveBand, solveLit } from '../../src/network/lit.js'
 import { networkOf, sketch, supplyOf, wired } from './signs.js'
 
@@ -49,4 +49,56 @@ test('milliamps calibrate a core-and-coil circuit, not an electronic one', () =>
 test('what no believable column explains is not used', () => {
   expect(calibrated({}, { primaryPower: 2000, currents: new Map() }).found).toEqual([undefined])
   expect(calibrated(coreAndCoil, { primaryPower: 2000, currents: new Map() }).found).toEqual([undefined])
+})
+
+test('what was measured stands beside what the default law has', () => {
+  const byDefault = trueState({}, 1)
+  const parts = signOf({}, { primaryPower: 60, currents: new Map([['I.b', 0.021]]) })
+  const [found] = measuredCircuits(parts.layout, parts.wiring, networkOf(parts))
+  expect(found).toMatchObject({ from: 'watts', primaryPower: { measured: 60 } })
+  // 0.85: the efficiency taken for every supply (ours)
+  expect(found?.primaryPower?.computed).toBeCloseTo(byDefault.power / 0.85, 6)
+  expect(found?.currents).toEqual([
+    { end: 'I.b', measured: 0.021, computed: magnitude(byDefault.columns.get(1)!.atB) },
+  ])
+})
+
+test('milliamps of an electronic supply are told and scale nothing', () => {
+  const parts = signOf({}, { currents: new Map([['S.1', 0.03]]) })
+  const [found] = measuredCircuits(parts.layout, parts.wiring, networkOf(parts))
+  expect(found).toMatchObject({ from: 'nothing', currents: [{ end: 'S.1', measured: 0.03 }] })
+  expect(found).not.toHaveProperty('factor')
+  // an electronic supply holds the larger of its terminal currents
+  expect(found?.currents[0]?.computed).toBeGreaterThan(0.029)
+})
+
+test('a string that the default law does not light has nothing computed', () => {
+  const parts = signOf({ noLoadVoltage: 500 }, { primaryPower: 60, currents: new Map() })
+  const [found] = measuredCircuits(parts.layout, parts.wiring, networkOf(parts))
+  expect(found).toEqual({ primaryPower: { measured: 60 }, currents: [], from: 'watts' })
+})
+
+test('under edit the factor stays that of the wiring which was measured, and is sought once', () => {
+  const primaryPower = trueState({}, 1.2).power / 0.85
+  const parts = signOf({}, { primaryPower, currents: new Map() })
+  let solved = 0
+  const law = measuredLaw(parts.layout, (wiring) => {
+    solved++
+    return networkOf({ ...parts, wiring })
+  })
+  const edited: Wiring = {
+    // a copy, as an answer from another thread would be
+    circuits: [
+      {
+        supply: 'S',
+        string: parts.wiring.circuits[0]!.string.slice().reverse(),
+        measured: { primaryPower, currents: new Map() },
+      },
+    ],
+  }
+  expect(law(parts.wiring)[0]?.factor).toBeCloseTo(1.2, 4)
+  expect(law(edited)[0]?.factor).toBe(law(parts.wiring)[0]?.factor)
+  expect(solved).toBe(1)
+  // taken away with the tube that left: nothing is known of the glass then
+  expect(law({ circuits: [{ supply: 'S', string: edited.circuits[0]!.string }] })).toEqual([undefined])
 })

@@ -6,6 +6,7 @@ import { type Inspection, inspection, prepare, solver } from '../../src/inspecti
 import type { Layout } from '../../src/layout/layout.js'
 import { parseLayout } from '../../src/layout/parse.js'
 import { checkJson } from '../../src/report/check-json.js'
+import type { Condition } from '../../src/rules/findings.js'
 import { twoBars } from './signs.js'
 
 // a machine that does other things at the same time is slow
@@ -39,6 +40,7 @@ const lead = z.object({
   kv: positive.optional(),
   stray_ma: positive.optional(),
 })
+const measured = z.object({ measured: positive, computed: positive.optional() })
 const circuit = z.object({
   supply: z.string(),
   lit: z.boolean(),
@@ -49,6 +51,14 @@ const circuit = z.object({
   power_w: positive.optional(),
   stray_ma: positive.optional(),
   residual_ma: positive.optional(),
+  measured: z
+    .object({
+      primary_w: measured.optional(),
+      ma: z.record(z.string(), measured).optional(),
+      law_factor: positive.optional(),
+      band: positive,
+    })
+    .optional(),
   tube_m: positive,
   electrode_pairs: z.int(),
   terminals: z.array(terminal),
@@ -70,8 +80,15 @@ const pair = z.object({
     lit_low: positive.optional(),
     lit_high: positive.optional(),
     nameplate: positive,
+    broken: positive,
   }),
-  air: z.object({ peak_kv: positive, starts_at_kv: positive }),
+  open_tubes: z.array(z.string()).optional(),
+  air: z.object({
+    peak_kv: positive,
+    starts_at_kv: positive,
+    open_peak_kv: positive.optional(),
+    open_counts: z.boolean().optional(),
+  }),
   rules: z.array(z.object({ set: z.string(), clause: z.string(), needs_mm: positive, ok: z.boolean() })),
   severity: positive.max(999),
   verdict,
@@ -98,7 +115,7 @@ const shipped = (name: string) => readFileSync(new URL(`../../layouts/${name}`, 
 
 function checked(
   text: string,
-  condition: 'lit' | 'nameplate' = 'lit',
+  condition: Condition = 'lit',
 ): { layout: Layout; found: Inspection; json: string } {
   const layout = layoutOf(text)
   const prepared = prepare(layout)
@@ -197,4 +214,43 @@ test('a floating bar is listed with its voltage and what a person would draw', (
 test('gap 0 is severity 999 at most', () => {
   const { pairs } = parsed(checked(twoBars({ gap: -12 })).json)
   expect(pairs[0]).toMatchObject({ kind: 'tube-tube', gap_mm: 0, severity: 999, verdict: 'fix' })
+})
+
+test('every pair has its worst over all breaks, with the open tube; all of no-load between two bars of one circuit', () => {
+  const { json } = checked(twoBars({ noLoadKv: 6 }))
+  const { pairs } = parsed(json)
+  const bars = pairs.find((p) => p.a.part === 'K' && p.b.part === 'I')
+  expect(bars?.difference_kv.broken).toBe(6)
+  expect(bars?.open_tubes).toEqual(['K'])
+  // the supply says it has open-circuit protection
+  expect(bars?.air.open_counts).toBe(false)
+  for (const { difference_kv, air } of pairs) {
+    expect(difference_kv.broken).toBeGreaterThanOrEqual(0)
+    if (air.open_peak_kv !== undefined) expect(air.open_peak_kv).toBeGreaterThanOrEqual(air.peak_kv)
+  }
+})
+
+test('condition broken judges by it', () => {
+  const between = (condition: Condition) =>
+    parsed(checked(twoBars({ gap: 12.5 }), condition).json).pairs.find(
+      (p) => p.a.part === 'K' && p.b.part === 'I',
+    )
+  // the thumb (common practice, no published source): 12.5 mm may have 1.5 kV (ours)
+  expect(between('broken')?.severity).toBeCloseTo(4, 2)
+  expect(between('lit')?.severity).toBeLessThan(1.5)
+})
+
+test('what was measured stands beside what is computed', () => {
+  const { json, found } = checked(
+    twoBars().replace('    leads:', '    measured: {primary_w: 50, ma: {K.a: 28}}\n    leads:'),
+  )
+  const [first] = parsed(json).circuits
+  expect(first?.measured).toMatchObject({
+    primary_w: { measured: 50 },
+    ma: { 'K.a': { measured: 28 } },
+    band: 0.05,
+  })
+  // calibrated: 0.85 of the watts at the plug arrive in the glass (the efficiency is ours)
+  expect(first?.power_w).toBeCloseTo(0.85 * 50, 1)
+  expect(found.circuits[0]?.measured?.factor).not.toBe(1)
 })

@@ -6,15 +6,13 @@ import { inspection, prepare, solver } from '../../src/inspection.js'
 import { parseLayout } from '../../src/layout/parse.js'
 import { checkSummary } from '../../src/report/check-summary.js'
 import { checkText } from '../../src/report/check-text.js'
+import type { Condition } from '../../src/rules/findings.js'
 import { twoBars } from './signs.js'
 
 // a machine that does other things at the same time is slow
 vi.setConfig({ testTimeout: 30_000 })
 
-function checked(
-  text: string,
-  { all = false, condition = 'lit' as 'lit' | 'nameplate', file = 'sign.yaml' } = {},
-) {
+function checked(text: string, { all = false, condition = 'lit' as Condition, file = 'sign.yaml' } = {}) {
   const { layout, problems } = parseLayout(text, 'sign.yaml')
   expect(problems).toEqual([])
   if (!layout) throw new Error('no layout')
@@ -126,4 +124,21 @@ test('--all lists every pair, without it the worst and the first few within', ()
   expect(rows(text)).toBe(found.pairs.length)
   expect(found.pairs.length).toBeGreaterThan(6)
   expect(rows(checked(twoBars({ gap: 3 })).text)).toBe(1 + 5)
+})
+
+test('condition broken has a column with the worst break and its tube', () => {
+  const { text } = checked(twoBars({ gap: 3 }), { condition: 'broken' })
+  expect(text).toContain('Condition broken.')
+  expect(text).toMatch(/ {2}1 +fix +K @\S+ +I @\S+ +3\.0 .* 6\.0 K /)
+  expect(text).toContain('  broken: the worst with one tube open (in a circuit), and which\n')
+  expect(tooLong(text)).toEqual([])
+  // where it decides nothing it takes no room
+  expect(checked(twoBars({ gap: 3 })).text).not.toContain('broken')
+})
+
+test('what was measured, in one line', () => {
+  const { text } = checked(twoBars().replace('    leads:', '    measured: {primary_w: 50}\n    leads:'))
+  expect(text).toMatch(
+    / {2}measured 50 W at the plug, computed 5\d W: the law is scaled by 0\.\d\d, band ±5 %\n/,
+  )
 })

@@ -26,7 +26,7 @@ test('the most pressing come first', () => {
   const levels = found.cautions.map((c) => order.indexOf(c.level))
   expect(levels).toEqual([...levels].sort())
   expect(codes(found)).toEqual(
-    expect.arrayContaining(['pairs', 'not-modelled', 'rules-missing', 'rule', 'lower-voltage', 'frequency']),
+    expect.arrayContaining(['pairs', 'rules-missing', 'rule', 'lower-voltage', 'frequency']),
   )
 })
 
@@ -158,4 +158,17 @@ test('glass that meets in the drawing asks which is in front', () => {
 test('a route that is ours is said where it passes glass or metal', () => {
   const found = onPaper(twoTubes({ gap: 20 }))
   expect(find(found, 'route-assumed')?.leads).toContain('S1.1–A.a')
+})
+
+describe('parts drawn into each other', () => {
+  const wall = (id: string) =>
+    `{id: ${id}, wall: [[1000, 1300], [2000, 1300]], from: 250, to: 350, grounded: true}`
+  test('are named, since capacitances there are rough', () => {
+    const found = litSign({ more: `metal: [${wall('one')}, ${wall('same')}]` })
+    expect(find(found, 'strained')).toMatchObject({ level: 'watch', parts: expect.arrayContaining(['same']) })
+  })
+  test('plates and walls that stand clear need no caution of their own', () => {
+    const found = litSign({ more: `metal: [${wall('one')}]` })
+    expect(find(found, 'strained')).toBeUndefined()
+  })
 })

@@ -1,9 +1,11 @@
 /** Prompts, pick lists, sheets and questions. */
 import { describe, expect, test } from 'vitest'
+import { findingInView } from '../../src/screen/aim.js'
 import type { Action } from '../../src/screen/keys.js'
 import { sheetPage } from '../../src/screen/panes/sheets.js'
+import { selectedPair } from '../../src/screen/state.js'
 import { currentUnits, lengthUnits, typedFigure, voltageUnits } from '../../src/screen/typed.js'
-import { type Session, session } from './session.js'
+import { type Session, session, solution } from './session.js'
 
 const supplyOf = (s: Session) => s.state().present.sign.layout.supplies[0]
 const heightOf = (s: Session, tube: string) =>
@@ -292,6 +294,7 @@ describe('saving', () => {
 describe.each<[Action, string]>([
   ['help', '?'],
   ['cautions', 'w'],
+  ['why', 'y'],
 ])('the sheet of %s', (_action, key) => {
   test('scrolls to its last line and no further', () => {
     const s = session('conversion-gone-wrong')
@@ -317,5 +320,94 @@ describe.each<[Action, string]>([
     expect(s.state().dialog).toBeUndefined()
     // the key that closed it did nothing else
     expect(s.state().past).toEqual([])
+  })
+})
+
+const sheetText = (s: Session): string =>
+  sheetPage(s.state())
+    .map((spans) =>
+      spans
+        .map(({ text }) => text)
+        .join('')
+        .trimEnd(),
+    )
+    .join('\n')
+
+describe('why', () => {
+  // tall enough for the whole text
+  const tall = { columns: 100, rows: 120 }
+  test('derives the pair the cursor is on', () => {
+    const s = session('open-window', tall)
+    s.keys('tab', 'y')
+    const { pair } = selectedPair(s.state()) ?? {}
+    expect(sheetText(s)).toContain(`Why ${pair?.a.part} at `)
+    expect(sheetText(s)).toMatch(/S1\.1 stands at \d\.\d\d kV to ground/)
+    expect(sheetText(s)).toContain('Verdict')
+  })
+  test('derives what is between mark and cursor', () => {
+    const s = session('open-window', tall)
+    s.keys('m', 'o', 'tab', 'm')
+    // from the place that is marked to what the cursor walks onto
+    for (let i = 0; i < 40 && !findingInView(s.state()); i++) s.keys('right')
+    const probe = findingInView(s.state())
+    expect(probe?.key).toBe('probe')
+    s.keys('y')
+    expect(sheetText(s)).toContain(`Why ${probe?.a.part} at `)
+  })
+  test('says where to go when there is no pair', () => {
+    const s = session('open-window')
+    s.keys('left')
+    s.keys(...Array<string>(30).fill('shift-up'), 'y')
+    expect(findingInView(s.state())).toBeUndefined()
+    expect(s.state().dialog).toBeUndefined()
+    expect(s.state().message?.text).toMatch(/^No pair here/)
+  })
+  test('goes by the condition on the screen', () => {
+    const s = session('open-window', tall)
+    s.keys('c', 'y')
+    expect(sheetText(s)).toContain('the condition asked for is nameplate')
+  })
+  test('nothing but ASCII where that is asked for', () => {
+    const s = session('open-window', { ...tall, ascii: true })
+    s.keys('y')
+    expect(sheetText(s)).toMatch(/^[\x20-\x7e\n]+$/)
+    expect(sheetText(s)).not.toContain('?')
+  })
+})
+
+describe('by symptom', () => {
+  const tall = { columns: 100, rows: 120 }
+  test('the choice opens its sheet; any other key closes it', () => {
+    const s = session('open-window', tall)
+    s.keys('Y')
+    s.send({ type: 'picked', value: 'ozone' })
+    expect(sheetText(s)).toContain('Symptom: ozone')
+    expect(s.effects()).toEqual([])
+    s.keys('x')
+    expect(s.state().dialog).toBeUndefined()
+  })
+  test('where leads matter, laying them otherwise is asked for once, and told when it is known', () => {
+    const s = session('open-window', tall)
+    s.keys('Y')
+    s.send({ type: 'picked', value: 'tripping' })
+    expect(s.effects()).toEqual([{ do: 'lay-leads' }])
+    expect(sheetText(s)).not.toContain('cut to the straight')
+    const saving = {
+      circuit: 0,
+      between: ['N.b', 'S1.2'] as const,
+      cut: { length: 0.322, stray: 0.0006, least: 0.0001, residual: 0 },
+    }
+    const { revision } = s.state()
+    s.send({ type: 'solved', revision, solved: solution(s.state()), savings: [saving] })
+    expect(sheetText(s)).toContain('N.b–S1.2 cut to the straight 322 mm: it eats less by 0.6 mA')
+    s.keys('escape', 'Y')
+    s.send({ type: 'picked', value: 'dim-far-tube' })
+    expect(s.effects()).toEqual([])
+    expect(sheetText(s)).toContain('cut to the straight')
+    // another wiring, other leads
+    s.keys('escape', 'f', 'Y')
+    s.send({ type: 'picked', value: 'tripping' })
+    expect(sheetText(s)).not.toContain('cut to the straight')
+    expect(s.effects()).toEqual([{ do: 'lay-leads' }])
   })
 })

@@ -1,6 +1,7 @@
 /** Every key of the table does what the table says of it. */
 import { describe, expect, test } from 'vitest'
 import { mapWindow, placeOfCursor } from '../../src/screen/aim.js'
+import { openTube } from '../../src/screen/conditions.js'
 import { type Action, keyTable } from '../../src/screen/keys.js'
 import { listedPairs, type State, selectedPair } from '../../src/screen/state.js'
 import { cellAt } from '../../src/view/map-window.js'
@@ -94,8 +95,26 @@ const checks: Record<Action, (key: string) => void> = {
     expect(s.state().condition).toBe('nameplate')
     expect(s.state().inspection.pairs.every((p) => p.judgedOn === 'nameplate')).toBe(true)
     s.keys(key)
+    expect(s.state().condition).toBe('broken')
+    expect(s.state().inspection.pairs.every((p) => p.judgedOn === 'broken')).toBe(true)
+    s.keys(key)
     expect(s.state().condition).toBe('lit')
     expect(s.state().inspection.pairs[0]?.judgedOn).toBe('lit')
+  },
+  'next-break': (key) => {
+    const s = session('open-window')
+    s.keys('c', 'c')
+    // the break of the worst pair: the E against itself
+    expect(openTube(s.state())).toBe('E')
+    s.keys(key)
+    expect(openTube(s.state())).toBe('N')
+    s.keys(key)
+    expect(openTube(s.state())).toBe('border')
+  },
+  'previous-break': (key) => {
+    const s = session('open-window')
+    s.keys('c', 'c', key)
+    expect(openTube(s.state())).toBe('P')
   },
   'instant-on': (key) => {
     const s = session('open-window')
@@ -149,6 +168,8 @@ const checks: Record<Action, (key: string) => void> = {
     s.keys(key)
     expect(s.state().view.names).toBe(false)
   },
+  why: opens('why'),
+  symptoms: opens('pick', /Symptom.*dim far tube/),
   filter: opens('prompt', /Show only pairs/),
   'feed-other-end': (key) => {
     const s = session('open-window')
@@ -205,6 +226,24 @@ const checks: Record<Action, (key: string) => void> = {
     // on the border, the first of the string
     s.keys('tab', key)
     expect(strings(s.state())).toEqual(['O border P E N'])
+  },
+  'move-tube': (key) => {
+    const s = session('reference-12-tubes')
+    const [one = '', two = ''] = strings(s.state())
+    s.keys(key)
+    const [less = '', more = ''] = strings(s.state()).sort((a, b) => a.length - b.length)
+    expect(less.split(' ').length).toBe(one.split(' ').length - 1)
+    expect(more.split(' ').length).toBe(two.split(' ').length + 1)
+  },
+  'midpoint-return': (key) => {
+    const s = session('open-window')
+    // on the border at 333 of 1945 mm: its end a is the feed; then on its end b, joined to O.a
+    s.keys('o', key)
+    expect(s.state().message?.text).toMatch(/^border\.a is joined to the supply/)
+    s.keys('escape', 'tab', 'o', key)
+    expect(s.state().present.sign.wiring.circuits[0]?.midpointReturn).toBe('border.b')
+    s.keys(key)
+    expect(s.state().present.sign.wiring.circuits[0]).not.toHaveProperty('midpointReturn')
   },
   'supply-figures': opens('pick', /Figures of S1/),
   'tube-height': opens('prompt', /Height of N, mm.*"40"/),

@@ -7,7 +7,7 @@ import { readoutLines } from '../../src/screen/panes/readout.js'
 import { sheetPage } from '../../src/screen/panes/sheets.js'
 import { titleLine } from '../../src/screen/panes/title.js'
 import { worstLines } from '../../src/screen/panes/worst.js'
-import type { State } from '../../src/screen/state.js'
+import { type State, sheetOf } from '../../src/screen/state.js'
 
 export interface DrawnPane {
   readonly name: string
@@ -19,7 +19,7 @@ export function drawnPanes(state: State): DrawnPane[] {
   const { columns, rows } = state
   const boxes = frame(columns, rows, state.present.sign.wiring.circuits.length)
   const { worst, loading, readout } = boxes
-  const sheet = state.dialog?.kind === 'help' || state.dialog?.kind === 'cautions'
+  const sheet = sheetOf(state.dialog)
   const under: DrawnPane[] = sheet
     ? [{ name: 'sheet', box: sheetBox(columns, rows), lines: sheetPage(state) }]
     : [

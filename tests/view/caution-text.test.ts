@@ -28,7 +28,7 @@ describe('the worst pair', () => {
   test('a lit difference is not on paper', () => {
     const lit: PairFinding = {
       ...pair(10),
-      difference: { nameplate: 6000, lit: 3456, litLow: 1, litHigh: 2 },
+      difference: { ...pair(10).difference, lit: 3456, litLow: 1, litHigh: 2 },
     }
     expect(said({ level: 'fix', code: 'pairs', pair: lit, fix: 0, watch: 0 })).toContain(
       'at 3.5 kV rms, needs',

@@ -54,6 +54,8 @@ const dialogHints: Partial<Record<NonNullable<State['dialog']>['kind'], string>>
   pick: ' Up/Down choose   Enter takes   Esc leaves',
   help: ' Up/Down/PgUp/PgDn scroll   others close',
   cautions: ' Up/Down/PgUp/PgDn scroll   others close',
+  why: ' Up/Down/PgUp/PgDn scroll   others close',
+  symptom: ' Up/Down/PgUp/PgDn scroll   others close',
 }
 
 /** As many keys as fit, the most needed first; those of an open dialog where one is open. */

@@ -2,6 +2,7 @@
 import { magnitude } from '../../math/complex.js'
 import { supplyOf } from '../../rules/circuits.js'
 import type { CircuitFinding, Loading, Verdict } from '../../rules/findings.js'
+import { measuredBriefly } from '../../view/measured-text.js'
 import type { Meaning } from '../../view/theme.js'
 import { hertz, kvFigure, ma, maFigure, metres, percent, supplyShort, watts } from '../../view/words.js'
 import { fitted, type Line, line, lineWidth, span } from '../lines.js'
@@ -79,12 +80,15 @@ function circuitLines(state: State, c: CircuitFinding, index: number, width: num
         : []),
     ]
   const bars = c.loadings.map((l) => barLine(state, l, width))
+  const measured = c.measured ? measuredBriefly(c.measured).map((l) => line(l, 'dim')) : []
   return [
     name,
     ...bars.slice(0, 1),
     line(`${currents(c)}  stray ${maFigure(c.stray ?? 0)}`),
+    ...measured.slice(0, 1),
     ...bars.slice(1, 2),
     [span(`residual ${ma(c.residual ?? 0)}  `), ...dimmest(c)],
+    ...measured.slice(1),
     ...bars.slice(2),
     line(`glass ${metres(c.tubeLength)}, ${c.electrodePairs} pairs, ${watts(c.power ?? 0)}`, 'dim'),
   ]

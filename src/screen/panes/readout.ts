@@ -9,12 +9,14 @@ import {
   lengthFigure,
   ma,
   needOf,
+  openText,
   outcomeText,
   severityFigure,
   signedKv,
   verdictText,
 } from '../../view/words.js'
 import { bodyOf, findingInView, footUnderCursor, underCursor } from '../aim.js'
+import { openTube } from '../conditions.js'
 import { fieldsShown, phaseShown } from '../instant.js'
 import { fitted, type Line, line, span } from '../lines.js'
 import type { Foot, State } from '../state.js'
@@ -61,6 +63,7 @@ function pairReadout(state: State, pair: PairFinding): Line[] {
         outcomeText[pair.air.outcome] ?? pair.air.outcome,
         pair.air.outcome === 'nothing' ? 'within' : 'fix',
       ),
+      ...openSpans(pair),
     ],
     [...spotSpans(state, 'a', pair.a), span('  '), ...spotSpans(state, 'b', pair.b)],
     ...pair.rules.map(
@@ -71,6 +74,16 @@ function pairReadout(state: State, pair: PairFinding): Line[] {
         ),
     ),
   ]
+}
+
+/** what a tube open does in the air, where it is more than without */
+function openSpans({ air: { open, outcome, startsAt }, judgedOn }: PairFinding): Line {
+  if (!open || judgedOn === 'broken' || open.outcome === outcome) return []
+  const share = `; with a tube open ${kvFigure(open.peak)} of ${kv(startsAt)}: `
+  const words = outcomeText[open.outcome] ?? open.outcome
+  return open.counted
+    ? [span(share), span(words, 'fix')]
+    : [span(share, 'dim'), span(`${words} unless the supply's protection trips`, 'dim')]
 }
 
 const brokenRule = (pair: PairFinding) => pair.rules.find((r) => !r.ok)
@@ -96,6 +109,14 @@ function differenceLine(state: State, pair: PairFinding): Line {
     ...lit,
     span(`now ${signedKv(now)}  `),
     span(`nameplate ${kv(d.nameplate)} rms`, state.condition === 'nameplate' ? 'title' : 'dim'),
+    ...(d.openTubes.length > 0
+      ? [
+          span(
+            `  broken ${kv(d.broken)} rms, ${openText(pair)}`,
+            state.condition === 'broken' ? 'title' : 'dim',
+          ),
+        ]
+      : []),
   ]
 }
 
@@ -147,6 +168,9 @@ function currentAt(state: State, { body, at }: Foot): number | undefined {
   return undefined
 }
 
+const conditionText = (state: State): string =>
+  state.condition === 'broken' ? `broken, ${openTube(state) ?? 'none'} open` : state.condition
+
 /** One conductor under a free cursor, or what to do where there is none. */
 function footReadout(state: State): Line[] {
   const foot = footUnderCursor(state)
@@ -174,7 +198,7 @@ function footReadout(state: State): Line[] {
       ),
       span(`  x ${lengthFigure(x, units)} y ${lengthFigure(y, units)} height ${length(z, units)}`, 'dim'),
     ],
-    [span(potentialText(state, foot)), span(` to ground (${state.condition})`, 'dim')],
+    [span(potentialText(state, foot)), span(` to ground (${conditionText(state)})`, 'dim')],
     others.length > 0
       ? line(
           `also here: ${others.map((n) => bodyOf(state, n.body)?.name ?? '').join(', ')} (o picks the next)`,

@@ -1,17 +1,22 @@
 /** Long texts shown over the map: the help from the key table, and all cautions and assumptions. */
 import { cautionText, generalCautions } from '../../view/caution-text.js'
+import { type Explanation, explanationRows } from '../../view/explanation.js'
+import { symptomSheet } from '../../view/symptoms.js'
 import type { Meaning } from '../../view/theme.js'
+import { why } from '../../view/why.js'
 import { wrap } from '../../view/wrap.js'
+import { findingInView } from '../aim.js'
 import { sheetBox } from '../frame.js'
 import { groupTitles, keyTable, keyText } from '../keys.js'
 import { fitted, type Line, line, span } from '../lines.js'
-import type { State } from '../state.js'
+import { freshSavings, type State, sheetOf } from '../state.js'
 import { asciiOnly, dots } from './words.js'
 
 const marksHelp = [
   'Colour and glyph of the glass say its potential at the instant: = ~ - negative, o about 0, + * # positive.',
   '( and ) are the electrodes at ends a and b, 1 and 2 the terminals. Underlined: several conductors share the cell; the one furthest from 0 V is drawn.',
   'Verdicts: ! fix, ~ watch, blank within the rule sets asked; ? means the verdict flips inside the +-30 % band of the default gradient law.',
+  'Condition broken: kV brk is the worst with one tube of a circuit open; the map shows one break at a time, the open tube half and half where both sides are live.',
   'x limit: the difference there over the difference this gap may have. n: not lit, judged on nameplate.',
 ]
 
@@ -19,8 +24,7 @@ const marksHelp = [
 export function sheetPage(state: State): Line[] {
   const { width, height } = sheetBox(state.columns, state.rows)
   const all = sheetLines(state, width)
-  const scroll = state.dialog?.kind === 'help' || state.dialog?.kind === 'cautions' ? state.dialog.scroll : 0
-  const from = Math.min(scroll, lastScroll(state))
+  const from = Math.min(sheetOf(state.dialog)?.scroll ?? 0, lastScroll(state))
   const shown = all.slice(from, from + height - 1)
   const more = all.length - from - shown.length
   return more > 0 ? [...shown, line(`  ${more} more lines: Down, PgDn`, 'dim')] : shown
@@ -33,7 +37,27 @@ export function lastScroll(state: State): number {
 }
 
 function sheetLines(state: State, width: number): Line[] {
-  return state.dialog?.kind === 'help' ? helpLines(state, width) : cautionSheet(state, width)
+  const { dialog, inspection } = state
+  const sign = { layout: state.present.sign.layout, inspection }
+  switch (dialog?.kind) {
+    case 'help':
+      return helpLines(state, width)
+    case 'why': {
+      const pair = findingInView(state)
+      return pair ? explanationLines(state, why(sign, pair), width) : []
+    }
+    case 'symptom':
+      return explanationLines(state, symptomSheet(sign, dialog.symptom, freshSavings(state)), width)
+    default:
+      return cautionSheet(state, width)
+  }
+}
+
+function explanationLines(state: State, explanation: Explanation, width: number): Line[] {
+  const plain = (text: string) => (state.ascii ? asciiOnly(text) : text)
+  return explanationRows(explanation, width - 1, plain).map(({ text, title }) =>
+    fitted(line(text, title ? 'title' : 'text'), width, dots(state)),
+  )
 }
 
 function helpLines(state: State, width: number): Line[] {

@@ -1,4 +1,5 @@
 /** First row: the program, the sign, what has to be fixed, and which condition and instant is shown. */
+import { openTube } from '../conditions.js'
 import { type Line, span, spread } from '../lines.js'
 import { type State, unsaved } from '../state.js'
 import { activeVariant, dots } from './words.js'
@@ -20,6 +21,7 @@ export function titleLine(state: State, width: number): Line {
     ...(dark ? [span('DARK ', 'fix')] : []),
     ...(inspection.solved ? [fix > 0 ? span(`${fix} TO FIX `, 'fix') : span('0 to fix ', 'within')] : []),
     span(`${condition.toUpperCase()} `, 'key'),
+    ...(condition === 'broken' ? [span(`${openTube(state) ?? 'none'} open `, 'key')] : []),
     span(`now ${String(instant * 30).padStart(3)}${state.ascii ? ' deg' : '°'} `, 'text'),
     ...(solving ? [span('SOLVING ', 'watch')] : []),
   ]

@@ -53,7 +53,7 @@ function headLine(state: State, pairs: readonly PairFinding[], width: number): L
   const units = state.present.sign.layout.units
   const counts = `${count('fix')} fix ${count('watch')} watch`
   const as = count('fix') > 0 ? 'fix' : count('watch') > 0 ? 'watch' : 'within'
-  const kv = state.condition === 'lit' ? 'kV rms' : 'kV n.p.'
+  const kv = { lit: 'kV rms', nameplate: 'kV n.p.', broken: 'kV brk' }[state.condition]
   const columns = isWide(width)
     ? `${units.padStart(6)} ${kv.padStart(7)} x limit`
     : `${units.padStart(4)} ${kv.replace(' ', '').slice(-5)}    x`
@@ -66,10 +66,13 @@ const isWide = (width: number): boolean => width >= 45
 
 const rowMeaning = ({ verdict }: PairFinding): Meaning => (verdict === 'within' ? 'text' : verdict)
 
+/** of the condition on the screen; nameplate where that is lit and the circuit is not */
+const shownDifference = ({ difference }: PairFinding, condition: State['condition']): number =>
+  difference[condition] ?? difference.nameplate
+
 function rowSpans(pair: PairFinding, units: 'mm' | 'in', width: number, condition: State['condition']): Line {
   const wide = isWide(width)
-  const shown =
-    condition === 'lit' ? (pair.difference.lit ?? pair.difference.nameplate) : pair.difference.nameplate
+  const shown = shownDifference(pair, condition)
   const kv = kvFigure(shown) + (condition === 'lit' && pair.difference.lit === undefined ? 'n' : '')
   const figures = wide
     ? `${lengthFigure(pair.gap, units).padStart(6)} ${kv.padStart(7)} ${severityFigure(pair.severity).padStart(7)}`
