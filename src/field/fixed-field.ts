@@ -27,8 +27,8 @@ export interface FieldOptions {
 }
 
 export const usualField: FieldOptions = {
-  tubeSegment: 3.5,
-  leadSegment: 24,
+  tubeSegment: 5,
+  leadSegment: 36,
   least: 1.1,
   harmonics: 6,
   patch: 0.8,
@@ -36,8 +36,8 @@ export const usualField: FieldOptions = {
 }
 /** A quarter of the usual lengths and twice the harmonics: slow, to see how far the usual choice is off. */
 export const fineField: FieldOptions = {
-  tubeSegment: 0.9,
-  leadSegment: 6,
+  tubeSegment: 1.25,
+  leadSegment: 9,
   least: 0.8,
   harmonics: 12,
   patch: 0.4,

@@ -3,7 +3,7 @@
  * the efficiency of the supply are the watts of the string; milliamps count where there are no watts and the supply
  * does not hold its current by itself.
  */
-import type { EndName, Layout, Measured, Wiring } from '../layout/layout.js'
+import type { CircuitWiring, EndName, Layout, Measured, Wiring } from '../layout/layout.js'
 import { magnitude } from '../math/complex.js'
 import type { Calibrations } from './lit.js'
 import { solveLit } from './lit.js'
@@ -67,7 +67,8 @@ export const calibrations = (layout: Layout, wiring: Wiring, network: Network): 
 
 /**
  * The same for a wiring under edit: its figures were measured on the wiring they stand with in the file (or in a
- * variant), so that one is solved for them, once. `networkOf` makes the network of a wiring of the layout.
+ * variant), so that one is solved for them, once. A circuit without figures has those of the file's circuit where both
+ * hold the same tubes: the law is the glass's. `networkOf` makes the network of a wiring of the layout.
  */
 export function measuredLaw(
   layout: Layout,
@@ -76,13 +77,24 @@ export function measuredLaw(
   const known = new Map<Wiring, readonly (MeasuredCircuit | undefined)[]>()
   const bases = [layout.wiring, ...layout.variants]
   return (wiring) => {
-    if (wiring.circuits.every(({ measured }) => measured === undefined))
-      return wiring.circuits.map(() => undefined)
-    const base = bases.find((one) => sameMeasured(one, wiring)) ?? wiring
+    const told = wiring.circuits.map((circuit) => withFigures(layout.wiring, circuit))
+    if (told.every(({ measured }) => measured === undefined)) return told.map(() => undefined)
+    const base = bases.find((one) => sameMeasured(one, { circuits: told })) ?? { circuits: told }
     const found = known.get(base) ?? measuredCircuits(layout, base, networkOf(base))
-    if (base !== wiring || bases.includes(base)) known.set(base, found)
-    return wiring.circuits.map(({ measured }, c) => (measured === undefined ? undefined : found[c]))
+    if (bases.includes(base)) known.set(base, found)
+    return told.map(({ measured }, c) => (measured === undefined ? undefined : found[c]))
   }
+}
+
+function withFigures({ circuits }: Wiring, circuit: CircuitWiring): CircuitWiring {
+  const tubes = (of: CircuitWiring) =>
+    of.string
+      .map(({ tube }) => tube)
+      .sort()
+      .join('\n')
+  const filed = circuits.find(({ supply }) => supply === circuit.supply)
+  const figures = filed !== undefined && tubes(filed) === tubes(circuit) ? filed.measured : undefined
+  return circuit.measured !== undefined || figures === undefined ? circuit : { ...circuit, measured: figures }
 }
 
 /** Do all figures of a wiring stand with the same circuits of another one? */

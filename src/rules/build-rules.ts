@@ -104,6 +104,9 @@ function conditions(when: NonNullable<RuleValue['when']>): Conditions {
     ...(when.conduit && { conduit: when.conduit }),
     ...(when.fill && { fill: when.fill }),
     ...(when.circuits && { circuits: when.circuits }),
+    ...(when.open_circuit_protection !== undefined && {
+      openCircuitProtection: when.open_circuit_protection,
+    }),
     ...(when.kv && { voltage: range(when.kv, kilo) }),
     ...(when.metal_mm && { metal: range(when.metal_mm, milli) }),
   }

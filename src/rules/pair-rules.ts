@@ -129,6 +129,8 @@ export function suppliesFit(when: Conditions, supplies: readonly Supply[]): bool
     )
   )
     return false
+  const asked = when.openCircuitProtection
+  if (asked !== undefined && !supplies.some(({ openCircuitProtection: has }) => has === asked)) return false
   const highest = (figure: (supply: Supply) => number) => Math.max(0, ...supplies.map(figure))
   return (
     (when.frequency === undefined ||

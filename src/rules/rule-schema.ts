@@ -32,6 +32,7 @@ const when = z.strictObject(
     conduit: choices(['none', 'nonmetallic', 'metal']).optional(),
     fill: choices(fills).optional(),
     circuits: choice(['same', 'different']).optional(),
+    open_circuit_protection: z.boolean({ error: 'yes-no' }).optional(),
     kv: range.optional(),
     metal_mm: range.optional(),
   },

@@ -45,6 +45,8 @@ export interface Conditions {
   readonly terminal?: Range
   readonly conduit?: readonly Conduit[]
   readonly fill?: readonly Fill[]
+  /** the layout says that the supply has it, or does not */
+  readonly openCircuitProtection?: boolean
   /** of a pair: its circuits are one, or two */
   readonly circuits?: 'same' | 'different'
   /** of a pair: the voltage that the rule goes by */

@@ -103,7 +103,7 @@ export const keyTable: readonly KeyEntry[] = [
     action: 'why',
     group: 'find',
     does: 'why: the figures of this pair derived step by step',
-    footer: { label: 'why', rank: 5.5 },
+    footer: { label: 'why', rank: 6.5 },
   },
   { keys: ['Y'], action: 'symptoms', group: 'find', does: 'by symptom: which figures to look at' },
   { keys: ['/'], action: 'filter', group: 'find', does: 'show only pairs that name this text' },

@@ -8,6 +8,8 @@ import type { LeadSaving, Saving } from '../rules/lead-savings.js'
 import { terminalVoltage } from '../rules/pair-rules.js'
 import { kv, length, ma, maFigure, percent } from './words.js'
 
+/** what shows in figures with a tenth of a milliamp, A */
+const visible = 5e-5
 /** of the parts that make the residual, so many are named */
 const named = 5
 
@@ -79,16 +81,20 @@ export function residualLines(circuit: CircuitFinding): string[] {
   const others = ranked.slice(named).reduce((sum, { share }) => sum + share, 0)
   const rest = residual - parts.reduce((sum, { share }) => sum + share, 0)
   const trip = circuit.loadings.find(({ by }) => by === 'residual')
-  const signed = (amperes: number) => `${amperes > 0 ? '+' : ''}${maFigure(amperes)}`
+  const signed = (amperes: number) => `${amperes >= visible ? '+' : ''}${maFigure(amperes)}`
   return [
     `${supply} gets ${ma(residual)} back through ground` +
       (trip
         ? `: ${percent(trip.share)} of the ${ma(trip.limit)} that trips it.`
         : '; no trip value is stated.'),
-    `Made by (mA in step with it, minus balances the others): ${[
-      ...told.map(({ name, share }) => `${name} ${signed(share)}`),
-      ...(ranked.length > named ? [`${ranked.length - named} more parts ${signed(others)}`] : []),
-      ...(Math.abs(rest) > 5e-5 ? [`ungrounded metal and other circuits ${signed(rest)}`] : []),
-    ].join(', ')}.`,
+    ...(residual < visible
+      ? []
+      : [
+          `Made by (mA in step with it, minus balances the others): ${[
+            ...told.map(({ name, share }) => `${name} ${signed(share)}`),
+            ...(ranked.length > named ? [`${ranked.length - named} more parts ${signed(others)}`] : []),
+            ...(Math.abs(rest) >= visible ? [`ungrounded metal and other circuits ${signed(rest)}`] : []),
+          ].join(', ')}.`,
+        ]),
   ]
 }

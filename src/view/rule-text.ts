@@ -115,6 +115,9 @@ function conditionWords(when: Conditions): string[] {
     ...range('terminal to ground ', when.terminal, kilovolts),
     ...(when.conduit ? [`conduit ${anyOf(when.conduit)}`] : []),
     ...(when.fill ? [`fill ${anyOf(when.fill)}`] : []),
+    ...(when.openCircuitProtection === undefined
+      ? []
+      : [`${when.openCircuitProtection ? 'with' : 'without'} open-circuit protection`]),
     ...(when.circuits ? [`${when.circuits === 'same' ? 'one circuit' : 'two circuits'}`] : []),
     ...range('', when.voltage, kilovolts),
     ...range('metal ', when.metal, mm),

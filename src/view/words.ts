@@ -16,7 +16,9 @@ export const kv2 = (volts: number): string => `${fixed(volts / 1000, 2)} kV`
 export const signedKv = (volts: number): string =>
   `${volts > 0 && Number(kvFigure(volts)) !== 0 ? '+' : ''}${kvFigure(volts)} kV`
 export const maFigure = (amperes: number): string => fixed(amperes * 1000, 1)
-export const ma = (amperes: number): string => `${maFigure(amperes)} mA`
+/** milliamperes, or microamperes where those would read 0.0 */
+export const ma = (amperes: number): string =>
+  amperes > 0 && amperes < 5e-5 ? `${fixed(amperes * 1e6, 0)} µA` : `${maFigure(amperes)} mA`
 export const watts = (power: number): string => `${fixed(power, power < 9.95 ? 1 : 0)} W`
 export const percent = (share: number): string => `${fixed(share * 100, 0)} %`
 export const metres = (length: number): string => `${fixed(length, length < 9.95 ? 2 : 1)} m`

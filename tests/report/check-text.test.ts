@@ -34,10 +34,10 @@ SUPPLY S1  core-and-coil, 6.0 kV no-load, 30.0 mA short-circuit, 60 Hz, midpoint
   string  K I   (- = entered at end b)
   lit  S1.1 0.78 kV 29.0 mA   S1.2 0.78 kV 29.0 mA
   glass 1.60 m, 2 electrode pairs, 45 W in the glass
-  stray 0.0 mA, residual to ground 0.0 mA, dimmest K with 29.0 mA
+  stray 10 µA, residual to ground 0 µA, dimmest K with 29.0 mA
   needs 1.6 kV:  26 % of the no-load 6.0 kV
   mains input about 53 W:  30 % of the rated 180 W
-  residual 0.0 mA:   0 % of the trip value 15.0 mA
+  residual 0 µA:   0 % of the trip value 15.0 mA
 
   tube  length  kV a  kV b  drop kV  mA a  mA b  least mA  stray mA  nameplate a/b
   K     0.80 m  0.78  0.00     0.78  29.0  29.0      29.0       0.0     3.0 / 0.00
@@ -60,6 +60,15 @@ PAIRS  1 to fix, 0 to watch, 6 within common-practice
   a = common-practice: thumb
   b = physics: discharge in the air
   kV: lit, with its band; paper: nameplate, shared out; x: difference over what the gap may have
+
+LEADS
+  - S1 gives 29.0 mA; what each lead eats of it sideways:
+  - S1.1–K.a, feed, 89 mm: eats 0 µA (0 %); stands at 1.1 kV peak, 4.2 kV peak at no load.
+  - K.b–I.a, jumper, 121 mm: eats 0 µA (0 %); stands at 0.00 kV peak, 0.00 kV peak at no load.
+  - I.b–S1.2, feed, 148 mm: eats 1 µA (0 %); stands at 1.1 kV peak, 4.2 kV peak at no load.
+  - With a tube open any lead of S1 may stand at 4.2 kV peak to ground: the rating of its insulation
+    must exceed that.
+  - S1 gets 0 µA back through ground: 0 % of the 15.0 mA that trips it.
 
 CAUTIONS
   - fix: K @0.0 to I @800: gap 3.0 mm at 1.6 kV rms, needs 17 mm by common-practice: thumb.

@@ -135,7 +135,17 @@ describe('a rule by condition broken', () => {
     const found = by(twoTubes({ gap: 10, supply: protectedSupply }), 'nameplate', ['shop.yaml'], shop)
     const rule = ruleOf(pairOf(found, 'A', 'B'), 'one broken tube')
     expect(rule?.condition).toBe('broken')
-    // 10 mm may have 5 kV peak
+    // 10 mm may have 5 kV peak (a figure of this test)
     expect(rule?.severity).toBeCloseTo((Math.SQRT2 * 6) / 5, 3)
+  })
+  test('can leave out supplies that switch off', () => {
+    const only = shop.replace('  table_kv_mm', '  when: {open_circuit_protection: false}\n    table_kv_mm')
+    const ruleWith = (supply: string) =>
+      ruleOf(
+        pairOf(by(twoTubes({ gap: 10, supply }), 'lit', ['shop.yaml'], only), 'A', 'B'),
+        'one broken tube',
+      )
+    expect(ruleWith(protectedSupply)).toBeUndefined()
+    expect(ruleWith('open_circuit_protection: false')?.condition).toBe('broken')
   })
 })

@@ -42,7 +42,14 @@ describe('condition broken', () => {
     const difference = () => textOf(readoutLines(s.state(), 160, 8)[1])
     expect(difference()).toMatch(/broken 6\.5 kV rms, \S+ open/)
     s.keys('c', 'c')
-    expect(difference()).toContain('broken 6.5 kV rms, E open')
+    expect(difference()).toMatch(/^6\.5 kV rms, E open {2}now .* lit .* nameplate/)
+  })
+
+  test('on a narrow screen it is told in condition broken, not cut to a stump elsewhere', () => {
+    const s = session('open-window')
+    expect(textOf(readoutLines(s.state(), 80, 5)[1])).not.toContain('broken')
+    s.keys('c', 'c')
+    expect(textOf(readoutLines(s.state(), 80, 5)[1])).toContain('6.5 kV rms, E open')
   })
 
   test('a conductor alone is told with the break that is shown', () => {

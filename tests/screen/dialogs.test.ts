@@ -346,7 +346,7 @@ describe('why', () => {
   })
   test('derives what is between mark and cursor', () => {
     const s = session('open-window', tall)
-    s.keys('m', 'o', 'tab', 'm')
+    s.keys('tab', 'm')
     // from the place that is marked to what the cursor walks onto
     for (let i = 0; i < 40 && !findingInView(s.state()); i++) s.keys('right')
     const probe = findingInView(s.state())

@@ -127,13 +127,13 @@ test('two bars 3 mm apart: the whole text', () => {
 
 From S1.1 to K at 0.0 mm
   - S1.1 stands at 0.78 kV to ground; angles are against it, 180° is the opposite polarity.
-  - Lead S1.1–K.a, 89 mm: drops nothing, takes 0.0 mA of stray current.
+  - Lead S1.1–K.a, 89 mm: drops nothing, takes 0 µA of stray current.
   - So K at 0.0 mm stands at 0.78 kV (0°).
 
 On to I at 800 mm
   - K drops 0.78 kV (0°) along its 800 mm, 0.20 kV of it at the electrodes, entered by 29.0 mA: 0.00
     kV at K.b.
-  - Lead K.b–I.a, 121 mm: drops nothing, takes 0.0 mA of stray current.
+  - Lead K.b–I.a, 121 mm: drops nothing, takes 0 µA of stray current.
   - I drops 0.78 kV (0°) along its 800 mm, 0.20 kV of it at the electrodes, entered by 29.0 mA: 0.78
     kV (180°) at I.b.
   - So I at 800 mm stands at 0.78 kV (180°).

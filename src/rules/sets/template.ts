@@ -63,6 +63,14 @@ rules:
     when: {circuits: same}
     distance_mm: 25
 
+  # With one tube broken (open), where the supply would not switch off.
+  - clause: one tube broken
+    between: [tube]
+    and: [tube, metal]
+    when: {open_circuit_protection: false}   # true or false: what the layout says of the supply
+    by: {condition: broken}
+    table_kv_mm: [[0, 0], [9, 30]]
+
   # Small loose metal near glass.
   - clause: loose clips
     between: [tube]

@@ -18,18 +18,18 @@ import {
 import { bodyOf, findingInView, footUnderCursor, underCursor } from '../aim.js'
 import { openTube } from '../conditions.js'
 import { fieldsShown, phaseShown } from '../instant.js'
-import { fitted, type Line, line, span } from '../lines.js'
+import { fitted, type Line, line, lineWidth, span } from '../lines.js'
 import type { Foot, State } from '../state.js'
 import { dots } from './words.js'
 import { verdictMark } from './worst.js'
 
 export function readoutLines(state: State, width: number, height: number): Line[] {
   const finding = findingInView(state)
-  const lines = finding ? pairReadout(state, finding) : footReadout(state)
+  const lines = finding ? pairReadout(state, finding, width) : footReadout(state)
   return lines.slice(0, height).map((spans) => fitted(spans, width, dots(state)))
 }
 
-function pairReadout(state: State, pair: PairFinding): Line[] {
+function pairReadout(state: State, pair: PairFinding, width: number): Line[] {
   const { layout } = state.present.sign
   const need = needOf(pair)
   const verdict = verdictText(pair.verdict, layout.rules)
@@ -48,7 +48,7 @@ function pairReadout(state: State, pair: PairFinding): Line[] {
       // names of rule sets may be long: last, where a narrow screen cuts
       span(pair.verdict === 'within' ? `, ${verdict}${pair.unsure ? '?' : ''}` : '', 'within'),
     ],
-    differenceLine(state, pair),
+    differenceLine(state, pair, width),
     [
       span(
         need === undefined ? 'gap is enough: ' : `needs ${length(need, layout.units)}: `,
@@ -93,9 +93,22 @@ function ruleAdvice(pair: PairFinding): string {
   return broken ? ` – ${broken.advice}` : ''
 }
 
-function differenceLine(state: State, pair: PairFinding): Line {
+/** What the condition on the screen goes by comes first; what an open tube does is left out where it has no room. */
+function differenceLine(state: State, pair: PairFinding, width: number): Line {
   const d = pair.difference
-  const now = instantOf(state, pair.a) - instantOf(state, pair.b)
+  const now = span(`now ${signedKv(instantOf(state, pair.a) - instantOf(state, pair.b))}  `)
+  const nameplate = span(
+    `nameplate ${kv(d.nameplate)} rms`,
+    state.condition === 'nameplate' ? 'title' : 'dim',
+  )
+  const open = openText(pair)
+  if (state.condition === 'broken')
+    return [
+      span(`${kv(d.broken)} rms${open === '' ? '' : `, ${open}`}  `, 'title'),
+      now,
+      ...(d.lit === undefined ? [] : [span(`lit ${kv(d.lit)} rms  `, 'dim')]),
+      nameplate,
+    ]
   const lit =
     d.lit === undefined
       ? [span('not lit: judged on nameplate  ', 'watch')]
@@ -105,19 +118,9 @@ function differenceLine(state: State, pair: PairFinding): Line {
             ` (${kvFigure(d.litLow ?? d.lit)} to ${kvFigure(d.litHigh ?? d.lit)}), peak ${kv(d.litPeak ?? d.lit * Math.SQRT2)}  `,
           ),
         ]
-  return [
-    ...lit,
-    span(`now ${signedKv(now)}  `),
-    span(`nameplate ${kv(d.nameplate)} rms`, state.condition === 'nameplate' ? 'title' : 'dim'),
-    ...(d.openTubes.length > 0
-      ? [
-          span(
-            `  broken ${kv(d.broken)} rms, ${openText(pair)}`,
-            state.condition === 'broken' ? 'title' : 'dim',
-          ),
-        ]
-      : []),
-  ]
+  const always = [...lit, now, nameplate]
+  const broken = span(`  broken ${kv(d.broken)} rms, ${open}`, 'dim')
+  return open !== '' && lineWidth([...always, broken]) <= width ? [...always, broken] : always
 }
 
 function instantOf(state: State, spot: Spot): number {

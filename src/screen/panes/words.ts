@@ -8,6 +8,7 @@ export const dash = ({ ascii }: Pick<State, 'ascii'>): string => (ascii ? '-' : 
 /** Pure-ASCII mode: every sign that is not ASCII has a stand-in. */
 const standIns: Record<string, string> = {
   '–': '-',
+  µ: 'u',
   '—': '-',
   '→': '>',
   '°': ' deg',
