@@ -206,7 +206,9 @@ function pairLines(layout: Layout, pairs: readonly PairFinding[], options: Check
     ...(left > 0 ? [`  and ${left} more ${within} (--all lists them)`] : []),
     ...criteria.map((criterion, i) => `  ${letter(i)} = ${criterion}`),
     '  kV: lit, with its band; paper: nameplate, shared out; x: difference over what the gap may have',
-    ...(opened ? ['  broken: the worst with one tube open (in a circuit), and which'] : []),
+    ...(opened
+      ? ['  broken: the worst with a tube open (one of each circuit, or half circuit, there), and which']
+      : []),
   ]
 }
 

@@ -4,7 +4,7 @@ import type { CircuitFinding, PairFinding } from '../rules/findings.js'
 import type { LeadSaving } from '../rules/lead-savings.js'
 import { cautionText } from './caution-text.js'
 import { givenBy, leadLines, residualLines } from './lead-text.js'
-import { placeName, type WhySign } from './why.js'
+import { placeName, type WhySign } from './why-walk.js'
 import { hertz, kv, length, ma, metres, outcomeText, percent, severityFigure } from './words.js'
 
 /** so many of a list are told */

@@ -17,7 +17,7 @@ import {
   tripLines,
   weakestLines,
 } from './symptom-figures.js'
-import type { WhySign } from './why.js'
+import type { WhySign } from './why-walk.js'
 
 export type Symptom =
   | 'hum'

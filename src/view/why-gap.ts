@@ -7,7 +7,7 @@ import type { PairFinding, RuleFinding } from '../rules/findings.js'
 import { gapBetween } from '../rules/pairs.js'
 import type { ExplanationPart } from './explanation.js'
 import { markText } from './rule-text.js'
-import type { WhySign } from './why.js'
+import type { WhySign } from './why-walk.js'
 import { hertz, kv2, length, openText, outcomeText, percent, severityFigure, verdictText } from './words.js'
 
 const mm = (metres: number): string => `${(metres * 1000).toFixed(2)} mm`

@@ -139,7 +139,9 @@ test('condition broken has a column with the worst break and its tube', () => {
   const { text } = checked(twoBars({ gap: 3 }), { condition: 'broken' })
   expect(text).toContain('Condition broken.')
   expect(text).toMatch(/ {2}1 +fix +K @\S+ +I @\S+ +3\.0 .* 6\.0 K /)
-  expect(text).toContain('  broken: the worst with one tube open (in a circuit), and which\n')
+  expect(text).toContain(
+    '  broken: the worst with a tube open (one of each circuit, or half circuit, there), and which\n',
+  )
   expect(tooLong(text)).toEqual([])
   // where it decides nothing it takes no room
   expect(checked(twoBars({ gap: 3 })).text).not.toContain('broken')

@@ -22,7 +22,7 @@ describe('a sound file', () => {
     const { set, texts } = parseRuleSet(ruleTemplate, 'our-shop.yaml')
     expect(texts).toEqual([])
     expect(set?.rules.map((r) => r.kind)).toEqual([
-      ...['pair', 'pair', 'pair', 'pair', 'pair', 'pair'],
+      ...['pair', 'pair', 'pair', 'pair', 'pair', 'pair', 'pair'],
       ...['circuit', 'circuit', 'required', 'remark'],
     ])
     for (const key of [
