@@ -45,7 +45,8 @@ test('owner and path length of a cell name a place of that body in the cell or b
         const [x, y] = pointAt(bodies[body]!.line, grid.at[c]!)
         const cell = cellAt(window, x, y)
         // a corner cut off a staircase, or a bump left out, may hold the middle of the pass
-        expect(Math.abs(cell.column - (c % 40))).toBeLessThanOrEqual(1)
+        // (a bump is up to 1.1 heights of a row long, and a row is two columns high)
+        expect(Math.abs(cell.column - (c % 40))).toBeLessThanOrEqual(2)
         expect(Math.abs(cell.row - Math.floor(c / 40))).toBeLessThanOrEqual(1)
       })
     }),
