@@ -92,20 +92,40 @@ export function preparedAgain(prepared: Prepared, layout: Layout): Prepared {
   const was = prepared.layout
   if (layout === was) return prepared
   const sameGlass = layout.tubes === was.tubes && layout.metal === was.metal && layout.face === was.face
-  if (!sameGlass || layout.routes !== was.routes) return prepare(layout, prepared.rules)
-  const samePlaces = layout.supplies.every((s, i) => s.terminals === was.supplies[i]?.terminals)
-  return samePlaces
-    ? { ...prepared, layout }
-    : { ...prepared, layout, leads: new Map(), crossings: new Map() }
+  if (!sameGlass) return prepare(layout, prepared.rules)
+  const moved = movedLeads(was, layout)
+  if (!moved) return { ...prepared, layout }
+  const leads = new Map([...prepared.leads].filter(([, { body }]) => !moved(body.between)))
+  return { ...prepared, layout, leads, crossings: new Map() }
 }
 
-/** leads and crossings kept; each lead holds about half a megabyte of charges */
+/** Which leads run otherwise in another layout of the same glass: by their routes, or by their supply's place. */
+function movedLeads(
+  was: Layout,
+  now: Layout,
+): ((between: readonly [EndName, EndName]) => boolean) | undefined {
+  const had = new Set(was.routes)
+  const has = new Set(now.routes)
+  const joint = (between: readonly [EndName, EndName]) => [...between].sort().join(' ')
+  const rerouted = new Set(
+    [...was.routes.filter((r) => !has.has(r)), ...now.routes.filter((r) => !had.has(r))].map((r) =>
+      joint(r.between),
+    ),
+  )
+  const terminals = now.supplies.flatMap((s, i) =>
+    s.terminals === was.supplies[i]?.terminals ? [] : [`${s.id}.1`, `${s.id}.2`],
+  )
+  if (rerouted.size === 0 && terminals.length === 0) return undefined
+  return (between) => rerouted.has(joint(between)) || between.some((end) => terminals.includes(end))
+}
+
+/** leads and crossings kept beyond what a wiring uses; each lead holds about half a megabyte of charges */
 const mostLeads = 200
 const mostCrossings = 20_000
 
 /** A lead by its two ends, from the memo. */
 function placedLead(
-  { layout, bodies, sheets, leads }: Prepared,
+  { layout, bodies, sheets, tubes, leads }: Prepared,
   between: readonly [EndName, EndName],
 ): PlacedLead {
   const name = between.join(' ')
@@ -115,7 +135,7 @@ function placedLead(
   leads.delete(name)
   leads.set(name, placed)
   const [oldest] = leads.keys()
-  if (leads.size > mostLeads && oldest !== undefined) leads.delete(oldest)
+  if (leads.size > mostLeads + 3 * tubes.length && oldest !== undefined) leads.delete(oldest)
   return placed
 
   function newLead(): PlacedLead {
@@ -128,12 +148,12 @@ function placedLead(
 /** Where the leads of a wiring pass glass, metal and each other. */
 function runsOfLeads(prepared: Prepared, placed: readonly PlacedLead[]): CloseRun[] {
   const runs = placed.flatMap(({ runs: own }, i) => withLeadIndex(own, i))
+  if (prepared.crossings.size > mostCrossings + placed.length ** 2) prepared.crossings.clear()
   for (const [i, a] of placed.entries())
     for (const [j, b] of placed.entries()) {
       if (j <= i) continue
       const name = `${a.body.name}|${b.body.name}`
       const known = prepared.crossings.get(name) ?? leadLeadRuns(a.body, b.body)
-      if (prepared.crossings.size > mostCrossings) prepared.crossings.clear()
       prepared.crossings.set(name, known)
       runs.push(...withLeadIndex(known, i, j))
     }
@@ -171,12 +191,19 @@ export function networkSolver(
     const capacitance = nodeCapacitance(fixed, leads.map(fieldOf))
     return network(placed.layout, wiring, tubes, metal, nodes, capacitance)
   }
-  const lawOf = measuredLaw(prepared.layout, (wiring) => networkOf(prepared, wiring))
+  const lawOf = (placed: Prepared) => measuredLaw(placed.layout, (wiring) => networkOf(placed, wiring))
   let now = prepared
+  let law = lawOf(now)
+  let lawFor = now.layout.supplies
   return (wiring, layout = prepared.layout) => {
     now = preparedAgain(now, layout)
+    // what was measured is set against the supply's figures as they stand now
+    if (layout.supplies !== lawFor) {
+      law = lawOf(now)
+      lawFor = layout.supplies
+    }
     const net = networkOf(now, wiring)
-    const measured = lawOf(wiring)
+    const measured = law(wiring)
     const factors = measured.map((circuit) => circuit?.factor)
     return { net, measured, strained, ...solveBand(net, factors) }
   }

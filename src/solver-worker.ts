@@ -1,6 +1,6 @@
 /** The worker thread: prepares the capacitances of the glass and solves wirings, off the thread that reads keys. */
 import { parentPort } from 'node:worker_threads'
-import { inspection, prepare, type Solved, solver } from './inspection.js'
+import { inspection, type Prepared, prepare, preparedAgain, type Solved, solver } from './inspection.js'
 import type { Layout, Wiring } from './layout/layout.js'
 import { type LeadSaving, leadSavings } from './rules/lead-savings.js'
 import { noRules } from './rules/resolve.js'
@@ -27,30 +27,38 @@ export interface SolveAnswer {
 
 interface Ready {
   readonly glass: number
-  readonly layout: Layout
+  readonly prepared: Prepared
   readonly solve: (wiring: Wiring, layout?: Layout) => Solved
 }
 let ready: Ready | undefined
 
 parentPort?.on('message', (job: SolveJob) => {
   const start = performance.now()
-  if (ready?.glass !== job.glass)
-    ready = { glass: job.glass, layout: job.layout, solve: solver(prepare(job.layout, noRules)) }
-  const prepared = performance.now()
-  const solved = ready.solve(job.wiring, onKnownGlass(ready.layout, job.layout))
+  if (ready?.glass !== job.glass) {
+    const prepared = prepare(job.layout, noRules)
+    ready = { glass: job.glass, prepared, solve: solver(prepared) }
+  }
+  const preparedAt = performance.now()
+  const layout = onKnownGlass(ready.prepared.layout, job.layout)
+  const solved = ready.solve(job.wiring, layout)
   const answer: SolveAnswer = {
     revision: job.revision,
     solved,
-    prepareMs: prepared - start,
-    solveMs: performance.now() - prepared,
-    ...(job.leads && { savings: savingsOf(ready, job, solved) }),
+    prepareMs: preparedAt - start,
+    solveMs: performance.now() - preparedAt,
+    ...(job.leads && { savings: savingsOf(ready, layout, job.wiring, solved) }),
   }
   parentPort?.postMessage(answer)
 })
 
 /** Rules have no say in it: the pairs tell where metal is near. */
-function savingsOf({ solve }: Ready, { layout, wiring }: SolveJob, solved: Solved): readonly LeadSaving[] {
-  const found = inspection(prepare(layout, noRules), wiring, solved)
+function savingsOf(
+  { prepared, solve }: Ready,
+  layout: Layout,
+  wiring: Wiring,
+  solved: Solved,
+): readonly LeadSaving[] {
+  const found = inspection(preparedAgain(prepared, layout), wiring, solved)
   return leadSavings({ layout, ...found }, solved, (laid) => solve(wiring, laid))
 }
 

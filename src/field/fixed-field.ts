@@ -28,7 +28,7 @@ export interface FieldOptions {
 
 export const usualField: FieldOptions = {
   tubeSegment: 5,
-  leadSegment: 36,
+  leadSegment: 48,
   least: 1.1,
   harmonics: 6,
   patch: 0.8,
@@ -37,7 +37,7 @@ export const usualField: FieldOptions = {
 /** A quarter of the usual lengths and twice the harmonics: slow, to see how far the usual choice is off. */
 export const fineField: FieldOptions = {
   tubeSegment: 1.25,
-  leadSegment: 9,
+  leadSegment: 12,
   least: 0.8,
   harmonics: 12,
   patch: 0.4,

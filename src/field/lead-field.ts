@@ -44,8 +44,9 @@ export interface OpenField {
   readonly toNodes: Float64Array
   /** l × l: own coefficients with all harmonics and the fixed charges eliminated */
   readonly schur: Float64Array
-  /** L_h⁻¹ P_hl of the fixed harmonics: l × h */
+  /** L_h⁻¹ P_hl of the fixed harmonics: l × h, zero outside these components */
   readonly woken: Float64Array
+  readonly components: ReadonlySet<number>
   /** uneven charge of sheets that only this lead wakes */
   readonly local?: LocalField
   /** the same of harmonics that only leads wake: l × 2 (to − from + 1) */
@@ -237,6 +238,7 @@ export function leadField(fixed: FixedField, lead: LeadBody): LeadField {
     toNodes,
     schur,
     woken,
+    components: new Set(cross.components),
     extras,
     ...(local && { local }),
   }

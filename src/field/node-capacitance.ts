@@ -40,12 +40,42 @@ function transposed(a: Float64Array, rows: number, columns: number): Float64Arra
   return out
 }
 
+/** between −= A Bᵀ over columns from … to of rows of width n: what two leads share is a few components, not all */
+function takeProducts(
+  between: Float64Array,
+  a: Float64Array,
+  na: number,
+  b: Float64Array,
+  nb: number,
+  n: number,
+  from: number,
+  to: number,
+): void {
+  for (let i = 0; i < na; i++)
+    for (let k = 0; k < nb; k++) {
+      let sum = 0
+      for (let h = from; h < to; h++) sum += a[i * n + h]! * b[k * n + h]!
+      between[i * nb + k]! -= sum
+    }
+}
+
 /** Takes off what both leads share through fixed charges and fixed harmonics. */
 function shareFixed({ system }: FixedField, a: OpenField, b: OpenField, between: Float64Array): void {
   const na = a.system.segments.count
   const nb = b.system.segments.count
   subtract(between, rowProducts(a.solved, na, b.solved, nb, system.charges))
-  subtract(between, rowProducts(a.woken, na, b.woken, nb, system.hh.count))
+  for (const c of a.components)
+    if (b.components.has(c))
+      takeProducts(
+        between,
+        a.woken,
+        na,
+        b.woken,
+        nb,
+        system.hh.count,
+        system.components[c]!,
+        system.components[c + 1]!,
+      )
   for (const [j, extra] of a.extras) {
     const other = b.extras.get(j)
     if (!other) continue
