@@ -17,9 +17,10 @@ import { basename, dirname, join, resolve } from 'node:path'
 import type { Layout } from './layout/layout.js'
 import { parseLayout } from './layout/parse.js'
 import { printable } from './layout/printable.js'
-import { problemText } from './layout/problem-text.js'
+import { problemSentence, problemText } from './layout/problem-text.js'
+import type { Problem } from './layout/problems.js'
 import { type ResolvedRules, resolveRules } from './rules/resolve.js'
-import type { Sign } from './wiring/edits.js'
+import type { Sign } from './wiring/edit.js'
 import { holdsSign } from './wiring/same-sign.js'
 import { editedText } from './wiring/text.js'
 
@@ -34,7 +35,7 @@ export type Read =
   | { readonly ok: true; readonly file: LayoutFile }
   | { readonly ok: false; readonly complaint: string }
 
-/** larger files are refused before they are read (interface: 5 MB) */
+/** larger files are refused before they are read */
 const largest = 5_000_000
 
 export function readLayoutFile(path: string): Read {
@@ -99,10 +100,7 @@ export function saveSign(path: string, source: string, from: Sign, to: Sign, for
   const text = editedText(source, from, to)
   // the safety net of every save: what will be in the file is what is on the screen
   const { layout: back, problems } = parseLayout(text, path)
-  if (!back || problems.length > 0 || !holdsSign(back, to))
-    return failed(
-      'This edit cannot be written into the file as it stands (does it use anchors or aliases?). Nothing was written.',
-    )
+  if (!back || problems.length > 0 || !holdsSign(back, to)) return failed(notWritten(problems[0]))
   try {
     const target = existing(path)
     if (target === undefined) {
@@ -119,6 +117,14 @@ export function saveSign(path: string, source: string, from: Sign, to: Sign, for
   } catch (fault) {
     return failed(`Not saved: ${reason(fault)}. Your work is still here.`)
   }
+}
+
+/** Why an edited text is not written: what would be wrong with it, or that it says something else than the screen. */
+function notWritten(problem: Problem | undefined): string {
+  const why = problem
+    ? `line ${problem.place.line} would not be read back: ${printable(problemSentence(problem))}`
+    : 'does it use anchors or aliases?'
+  return `This edit cannot be written into the file as it stands (${why}). Nothing was written.`
 }
 
 /** Where the bytes of a file really lie, behind links; undefined where there is none. */

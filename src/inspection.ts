@@ -9,6 +9,7 @@
 import { type FieldOptions, prepareField, usualField } from './field/fixed-field.js'
 import { type LeadField, leadField } from './field/lead-field.js'
 import { nodeCapacitance } from './field/node-capacitance.js'
+import type { StartMode } from './gaps/air.js'
 import { fixedBodies } from './geometry/bodies.js'
 import { fixedRuns, leadLeadRuns, leadRuns, withLeadIndex } from './geometry/close-runs.js'
 import type { FixedBody, LeadBody, SheetBody, TubeBody } from './geometry/conductors.js'
@@ -17,7 +18,9 @@ import { type FixedNodes, fixedNodes, nodeSpacing } from './geometry/nodes.js'
 import type { CloseRun } from './geometry/runs.js'
 import { fixedSheetRuns, leadSheetRuns } from './geometry/sheet-runs.js'
 import { sheetBodies } from './geometry/sheets.js'
+import { partOf } from './layout/ends.js'
 import type { EndName, Layout, Wiring } from './layout/layout.js'
+import { supplyOf } from './layout/parts.js'
 import { brokenStrings } from './network/broken.js'
 import { type MeasuredCircuit, measuredLaw } from './network/calibration.js'
 import { solveBand } from './network/lit.js'
@@ -28,10 +31,11 @@ import type { CircuitOutcome, LitState, PotentialField } from './network/solutio
 import { type StrayShares, strayShares } from './network/stray.js'
 import { noLoadVoltage } from './network/supplies.js'
 import { cautions } from './rules/cautions.js'
-import { circuitFindings, supplyOf } from './rules/circuits.js'
+import { circuitFindings } from './rules/circuits.js'
 import type { Caution, CircuitFinding, Condition, FloatingFinding, PairFinding } from './rules/findings.js'
-import { type LitFields, type PairContext, pairFindings } from './rules/pairs.js'
+import { type PairContext, pairFindings } from './rules/pairs.js'
 import { type ResolvedRules, resolveRules } from './rules/resolve.js'
+import type { LitFields } from './rules/voltages.js'
 import { type CircuitLead, circuitLeads } from './wiring/leads.js'
 
 /** A lead in its place with where it passes glass and metal. Depends on its two ends only: kept between edits. */
@@ -55,10 +59,15 @@ export interface Prepared {
   readonly crossings: Map<string, readonly CloseRun[]>
   /** what the sign is judged by */
   readonly rules: ResolvedRules
+  readonly air: StartMode
 }
 
 /** `rules`: what `layout.rules` names, with the files beside it; without it the shipped sets of those names. */
-export function prepare(layout: Layout, rules: ResolvedRules = resolveRules(layout.rules)): Prepared {
+export function prepare(
+  layout: Layout,
+  rules: ResolvedRules = resolveRules(layout.rules),
+  air: StartMode = 'cautious',
+): Prepared {
   const bodies = fixedBodies(layout)
   const sheets = sheetBodies(layout)
   return {
@@ -71,6 +80,7 @@ export function prepare(layout: Layout, rules: ResolvedRules = resolveRules(layo
     leads: new Map(),
     crossings: new Map(),
     rules,
+    air,
   }
 }
 
@@ -92,7 +102,7 @@ export function preparedAgain(prepared: Prepared, layout: Layout): Prepared {
   const was = prepared.layout
   if (layout === was) return prepared
   const sameGlass = layout.tubes === was.tubes && layout.metal === was.metal && layout.face === was.face
-  if (!sameGlass) return prepare(layout, prepared.rules)
+  if (!sameGlass) return prepare(layout, prepared.rules, prepared.air)
   const moved = movedLeads(was, layout)
   if (!moved) return { ...prepared, layout }
   const leads = new Map([...prepared.leads].filter(([, { body }]) => !moved(body.between)))
@@ -106,7 +116,10 @@ function movedLeads(
 ): ((between: readonly [EndName, EndName]) => boolean) | undefined {
   const had = new Set(was.routes)
   const has = new Set(now.routes)
-  const joint = (between: readonly [EndName, EndName]) => [...between].sort().join(' ')
+  // a route serves both terminals of its supply
+  const supplies = new Set(now.supplies.map(({ id }) => id))
+  const named = (end: EndName) => (supplies.has(partOf(end)) ? partOf(end) : end)
+  const joint = (between: readonly [EndName, EndName]) => between.map(named).sort().join(' ')
   const rerouted = new Set(
     [...was.routes.filter((r) => !has.has(r)), ...now.routes.filter((r) => !had.has(r))].map((r) =>
       joint(r.between),
@@ -217,7 +230,7 @@ export function solver(
   const solveNetwork = networkSolver(prepared, options)
   return (wiring, layout = prepared.layout) => {
     const { net, nominal, others, measured, strained } = solveNetwork(wiring, layout)
-    const noLoads = wiring.circuits.map((circuit) => noLoadVoltage(supplyOf(layout, circuit)))
+    const noLoads = wiring.circuits.map((circuit) => noLoadVoltage(supplyOf(layout, circuit.supply)))
     return {
       ...litFields(nominal, others, noLoads),
       outcomes: nominal.circuits,
@@ -328,7 +341,7 @@ export function inspection(
 }
 
 function pairContext(
-  { layout, bodies, tubes, sheets, nodes, rules }: Prepared,
+  { layout, bodies, tubes, sheets, nodes, rules, air }: Prepared,
   wiring: Wiring,
   places: readonly CircuitLead[],
   leads: readonly LeadBody[],
@@ -336,7 +349,7 @@ function pairContext(
   condition: Condition,
 ): PairContext {
   const ids = tubes.map((tube) => tube.name)
-  const supplies = wiring.circuits.map((circuit) => supplyOf(layout, circuit))
+  const supplies = wiring.circuits.map((circuit) => supplyOf(layout, circuit.supply))
   return {
     layout,
     ruleSets: rules.sets,
@@ -350,6 +363,7 @@ function pairContext(
     probe: probe(wiring, ids, nodes),
     nameplate: nameplateField(layout, wiring, tubes, nodes, leads.length),
     broken: brokenStrings(layout, wiring, tubes, nodes, leads.length),
+    air,
     condition,
     ...(solved && { lit: solved.lit }),
     unlit: new Set(solved?.outcomes.flatMap((outcome, i) => (outcome.lit ? [] : [i]))),

@@ -14,7 +14,9 @@ import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { afterEach, beforeEach, describe, expect, test } from 'vitest'
 import { type LayoutFile, readLayoutFile, saveSign } from '../src/files.js'
-import { type Sign, turnTube, withTubeHeight } from '../src/wiring/edits.js'
+import type { Sign } from '../src/wiring/edit.js'
+import { turnTube } from '../src/wiring/edits.js'
+import { withTubeHeight } from '../src/wiring/figure-edits.js'
 import { kiosk } from './layout/kiosk.js'
 
 let folder = ''
@@ -180,8 +182,23 @@ describe('saving', () => {
     if (!lifted.ok) throw new Error('refused')
     const saved = saveSign(path, file.source, sign, { ...sign, layout: lifted.value }, false)
     expect(saved).toMatchObject({ ok: false, changedOnDisk: false })
-    expect(saved.ok || saved.why).toContain('cannot be written into the file as it stands')
+    expect(saved.ok || saved.why).toContain('as it stands (does it use anchors or aliases?)')
     expect(readFileSync(path, 'utf8')).toBe(text)
+  })
+
+  test('an edit that would not be read back is refused with the first thing that would be wrong', () => {
+    const path = written(kiosk)
+    const file = opened(path)
+    const sign = signOf(file)
+    const tubes = sign.layout.tubes.map((tube) => (tube.id === 'I' ? { ...tube, height: 1e9 } : tube))
+    const saved = saveSign(path, file.source, sign, { ...sign, layout: { ...sign.layout, tubes } }, false)
+    const line = 1 + kiosk.split('\n').findIndex((row) => row.includes('height: 35'))
+    expect(saved.ok || saved.why).toMatch(
+      new RegExp(
+        `\\(line ${line} would not be read back: height is 1.* mm, .*\\)\\. Nothing was written\\.$`,
+      ),
+    )
+    expect(readFileSync(path, 'utf8')).toBe(kiosk)
   })
 
   describe('without the right to', () => {

@@ -1,5 +1,6 @@
 /** `tubewright check`: the findings of one or more layouts, for people and for scripts. */
 import { readLayoutFile, rulesBeside } from '../files.js'
+import type { StartMode } from '../gaps/air.js'
 import { type Inspection, inspection, prepare, solver } from '../inspection.js'
 import type { Layout } from '../layout/layout.js'
 import { printable } from '../layout/printable.js'
@@ -9,15 +10,17 @@ import { checkText } from '../report/check-text.js'
 import { explainedText } from '../report/explained.js'
 import type { Condition } from '../rules/findings.js'
 import { type LeadSaving, leadSavings } from '../rules/lead-savings.js'
+import { toFix } from '../rules/to-fix.js'
 import type { Explanation } from '../view/explanation.js'
 import { aboutLeads, type Symptom, symptomNamed, symptomSheet, symptoms } from '../view/symptoms.js'
 import { why } from '../view/why.js'
-import { argumentsOf, complain, status, UsageFault } from './common.js'
+import { airOf, argumentsOf, complain, oneOf, status, UsageFault } from './common.js'
 
 interface Options {
   readonly json: boolean
   readonly all: boolean
   readonly condition: Condition
+  readonly air: StartMode
   readonly rules: readonly string[] | undefined
   /** number of the pair to explain, as in the list */
   readonly why: number | undefined
@@ -32,6 +35,7 @@ export function checkCommand(args: readonly string[]): number {
       json: { type: 'boolean' },
       all: { type: 'boolean' },
       condition: { type: 'string' },
+      air: { type: 'string' },
       rules: { type: 'string' },
       why: { type: 'string' },
       symptom: { type: 'string' },
@@ -42,7 +46,8 @@ export function checkCommand(args: readonly string[]): number {
   const options: Options = {
     json: values.json ?? false,
     all: values.all ?? false,
-    condition: conditionOf(values.condition),
+    condition: oneOf('--condition', values.condition ?? 'lit', ['lit', 'nameplate', 'broken'] as const),
+    air: airOf(values.air),
     rules: values.rules
       ?.split(',')
       .map((name) => name.trim())
@@ -64,14 +69,6 @@ export function checkCommand(args: readonly string[]): number {
 const statusOf = ({ inspection: found, toFix }: CheckedFile): number =>
   found === undefined ? status.unusable : toFix ? status.somethingToFix : status.fine
 
-function conditionOf(text = 'lit'): Condition {
-  const condition = conditions.find((one) => one === text)
-  if (condition === undefined)
-    throw new UsageFault(`there is no condition "${text}"; expected lit, nameplate or broken`)
-  return condition
-}
-const conditions: readonly Condition[] = ['lit', 'nameplate', 'broken']
-
 function checkFile(path: string, options: Options): CheckedFile {
   const file = printable(path)
   const read = readLayoutFile(path)
@@ -82,7 +79,7 @@ function checkFile(path: string, options: Options): CheckedFile {
   const layout: Layout = options.rules ? { ...read.file.layout, rules: options.rules } : read.file.layout
   const rules = rulesBeside(path, layout.rules)
   for (const { complaint: why } of rules.missing) complain(why)
-  const prepared = prepare(layout, rules)
+  const prepared = prepare(layout, rules, options.air)
   const solve = solver(prepared)
   const solved = solve(layout.wiring)
   const found = inspection(prepared, layout.wiring, solved, options.condition)
@@ -159,7 +156,5 @@ function listSymptoms(): number {
 }
 
 /** A pair, a dark or overloaded circuit, a rule set that is missing. */
-export const somethingToFix = ({ pairs, circuits, cautions }: Inspection): boolean =>
-  pairs.some((p) => p.verdict === 'fix') ||
-  circuits.some((c) => c.verdict === 'fix') ||
-  cautions.some((c) => c.code === 'rules-missing')
+const somethingToFix = (found: Inspection): boolean =>
+  toFix(found) > 0 || found.cautions.some((c) => c.code === 'rules-missing')

@@ -1,9 +1,10 @@
 /** Help texts of the commands. */
-import { standingCaution } from '../view/caution-text.js'
+import { standingWarning } from '../view/caution-text.js'
 
 export const usage = {
-  tubewright: 'tubewright LAYOUT [--color WHEN] [--ground dark|light] [--ascii]',
-  check: 'tubewright check LAYOUT… [--json] [--condition lit|nameplate|broken] [--rules NAME,NAME] [--all]',
+  tubewright: 'tubewright LAYOUT [--color WHEN] [--ground dark|light] [--ascii] [--air clean|cautious]',
+  check:
+    'tubewright check LAYOUT… [--json] [--condition lit|nameplate|broken] [--rules NAME,NAME] [--air clean|cautious] [--all]',
   why: 'tubewright check LAYOUT --why N | --symptom NAME',
   netlist: 'tubewright netlist LAYOUT [--supply ID]',
   rules: 'tubewright rules [NAME…] [--template]',
@@ -29,6 +30,8 @@ Options
   --json                                   findings as JSON, one object a file
   --condition lit|nameplate|broken         what verdicts go by; lit unless said
   --rules NAME,NAME                        rule sets instead of those of the file
+  --air clean|cautious                     starts of discharges: the likeliest reading of the evidence for clean
+                                           air and smooth parts, or the cautious one; cautious unless said
   --supply ID                              the supply that feeds the deck of netlist; the first unless said
   --all                                    list every pair
   --why N                                  derive the verdict on pair N of the list, from the terminal on
@@ -43,5 +46,5 @@ tube under the cursor from its other end, t turns it, j jumpers two ends, u undo
 Exit status: 0 nothing to fix, 1 something to fix, 2 wrong usage or no terminal, 3 the layout cannot be
 used, 70 internal error, 128+n signal n.
 
-${standingCaution}
+${standingWarning()}
 `

@@ -5,7 +5,7 @@ import { readLayoutFile } from '../files.js'
 import { solving } from '../screen/solving.js'
 import { backgroundOf } from '../screen/terminal/background.js'
 import { type ColourFlag, chalkLevel, colourLevel } from '../screen/terminal/colour-level.js'
-import { argumentsOf, complain, status, UsageFault } from './common.js'
+import { airOf, argumentsOf, complain, oneOf, status, UsageFault } from './common.js'
 
 /** opened where no layout is named */
 const exampleName = 'open-window.yaml'
@@ -18,6 +18,7 @@ export async function openCommand(args: readonly string[]): Promise<number | und
       color: { type: 'string' },
       ground: { type: 'string' },
       ascii: { type: 'boolean' },
+      air: { type: 'string' },
       measure: { type: 'boolean' },
     },
   })
@@ -32,6 +33,7 @@ export async function openCommand(args: readonly string[]): Promise<number | und
   ])
   const ground =
     values.ground === undefined ? undefined : oneOf('--ground', values.ground, ['dark', 'light'] as const)
+  const air = airOf(values.air)
   const path = positionals[0] ?? examplePath()
   const read = readLayoutFile(path)
   if (!read.ok) {
@@ -45,6 +47,8 @@ export async function openCommand(args: readonly string[]): Promise<number | und
   // the worker begins with the capacitances while the screen is still being loaded
   const worker = solving()
   const level = colourLevel(process.env, flag, process.stdout)
+  // raw from here on: the terminal's answer about its ground must not be echoed
+  process.stdin.setRawMode(true)
   const [{ runInspector }, { default: chalk }, asked] = await Promise.all([
     import('../screen/run.js'),
     import('chalk'),
@@ -57,17 +61,12 @@ export async function openCommand(args: readonly string[]): Promise<number | und
     {
       theme: { level, ground: asked ?? 'dark' },
       ascii: values.ascii ?? false,
+      air,
       measure: values.measure ?? false,
     },
     worker,
   )
   return undefined
-}
-
-function oneOf<T extends string>(option: string, text: string, known: readonly T[]): T {
-  const found = known.find((k) => k === text)
-  if (found === undefined) throw new UsageFault(`${option} ${text}: expected ${known.join(', ')}`)
-  return found
 }
 
 /** The example that is shipped: beside the bundle's folder, and in the tree of the sources. */

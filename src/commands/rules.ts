@@ -1,12 +1,12 @@
 /** `tubewright rules`: the rule sets with their clauses and sources, a check of a shop's own, and a template for one. */
 import { rulesFrom } from '../files.js'
+import { pageColumns as columns } from '../report/table.js'
 import { shippedNames } from '../rules/resolve.js'
 import { ruleTemplate } from '../rules/sets/template.js'
 import { markText, ruleSetLines } from '../view/rule-text.js'
 import { wrap } from '../view/wrap.js'
 import { argumentsOf, complain, status, UsageFault } from './common.js'
 
-const columns = 100
 const closing =
   'A limit that nobody could source is not shipped: enter it in a rule file of your own (--template). The local code and a licensed person decide.'
 

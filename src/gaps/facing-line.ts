@@ -149,7 +149,3 @@ export function airShare(gap: number, a: Surface, b: Surface): AirShare {
     wallsAsAir: walls / line.utilisation,
   }
 }
-
-/** Field in the air (V/m) at distance s (m) from the more curved surface, for a difference in volts. */
-export const fieldAlong = (shared: AirShare, difference: number, s: number): number =>
-  difference * shared.fieldPerVolt * fieldShape(shared.line, s)

@@ -3,8 +3,6 @@ import { airDensity, effectivePressureBar, frequencyFactor, type StartMode } fro
 import { airStart, peekField, uniformBreakdown, worstWedge } from './discharge.js'
 import { airShare, curvature, type FacingLine, facingLine, fieldShape, type Surface } from './facing-line.js'
 
-export type { Surface } from './facing-line.js'
-
 /** Two surfaces and the air between them. */
 export interface Gap {
   /** clear distance between the surfaces, m; under 1 nm counts as 1 nm */
@@ -93,10 +91,6 @@ export function stressFrom(start: GapStart, peak: number): GapStress {
     outcome: margin < 1 ? 'nothing' : airPeak < start.flashover ? 'hiss-and-ozone' : 'flashover',
   }
 }
-
-/** `gapStart` and `stressFrom` in one: what a peak difference (V) does in this gap. */
-export const gapStress = (place: Gap & { readonly peak: number }): GapStress =>
-  stressFrom(gapStart(place), place.peak)
 
 const isBare = (s: Surface): boolean => s.kind === 'bare' || (s.kind === 'plane' && s.wall <= 0)
 

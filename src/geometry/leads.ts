@@ -1,4 +1,5 @@
 /** Leads as conductors in space: the routes of the file, completed, or assumed where the file has none. */
+import { partOf, sideOf } from '../layout/ends.js'
 import type { EndName, Layout, PathPoint, Point, Route, Tube } from '../layout/layout.js'
 import { equivalentRadius } from './bodies.js'
 import type { LeadBody } from './conductors.js'
@@ -11,9 +12,7 @@ const place = ({ x, y, z }: PathPoint, height: number): Point => [x, y, z ?? hei
  * height of the leads). Throws on a name that the layout does not have: parsing has checked all names.
  */
 export function endPoint(layout: Layout, end: EndName): Point {
-  const dot = end.lastIndexOf('.')
-  const id = end.slice(0, dot)
-  const which = end.slice(dot + 1)
+  const [id, which] = [partOf(end), sideOf(end)]
   const tube = layout.tubes.find((t) => t.id === id)
   const drawn = tube === undefined ? terminal(layout, id, which) : tubeEnd(tube, which)
   if (drawn === undefined) throw new Error(`no end ${end} in this layout`)
@@ -33,13 +32,15 @@ function terminal(layout: Layout, id: string, which: string): PathPoint | undefi
 
 /**
  * The lead between two ends, running from the first to the second. Takes the first route of the library that joins
- * them, named in either order; where none has a path, an assumed one: at each end straight to the lead's height,
- * then straight across.
+ * them, named in either order; for an output lead also the one that runs to the supply's other terminal, since a lead
+ * that changes terminals stays where it lies. Where none has a path, an assumed one: at each end straight to the
+ * lead's height, then straight across.
  */
 export function leadBody(layout: Layout, between: readonly [EndName, EndName]): LeadBody {
-  const route = layout.routes.find((r) => joins(r, between) || joins(r, [between[1], between[0]]))
+  const joint = routeJoining(layout, between) ?? routeJoining(layout, otherTerminal(layout, between))
+  const route = joint?.route
   const height = route?.height ?? layout.lead.height
-  const drawn = drawnFrom(route, between[0])
+  const drawn = joint && drawnFrom(joint.route, joint.from)
   const start = endPoint(layout, between[0])
   const finish = endPoint(layout, between[1])
   // without a drawing, the two places right above or below the ends stand for it
@@ -69,11 +70,28 @@ export function leadBody(layout: Layout, between: readonly [EndName, EndName]): 
   }
 }
 
-const joins = (route: Route, [from, to]: readonly [EndName, EndName]): boolean =>
-  route.between[0] === from && route.between[1] === to
+/** A route between two ends, with the end it is told from here. */
+function routeJoining(
+  { routes }: Layout,
+  [from, to]: readonly [EndName, EndName],
+): { readonly route: Route; readonly from: EndName } | undefined {
+  const joins = ({ between: [a, b] }: Route) => (a === from && b === to) || (a === to && b === from)
+  const route = routes.find(joins)
+  return route && { route, from }
+}
+
+/** The same two ends with the other terminal of the supply, where one of them is a terminal. */
+function otherTerminal(
+  { supplies }: Layout,
+  [from, to]: readonly [EndName, EndName],
+): readonly [EndName, EndName] {
+  const swapped = (end: EndName): EndName =>
+    supplies.some(({ id }) => id === partOf(end)) ? `${partOf(end)}.${sideOf(end) === '1' ? '2' : '1'}` : end
+  return [swapped(from), swapped(to)]
+}
 
 /** The drawn path of a route, turned so that it starts at this end. */
-function drawnFrom(route: Route | undefined, end: EndName): readonly PathPoint[] | undefined {
-  if (route?.path === undefined || route.path.length === 0) return undefined
+function drawnFrom(route: Route, end: EndName): readonly PathPoint[] | undefined {
+  if (route.path === undefined || route.path.length === 0) return undefined
   return route.between[0] === end ? route.path : [...route.path].reverse()
 }

@@ -10,7 +10,7 @@
  * A lead's node is also the electrode (and supply terminal) potential at both its ends: between the electrode and
  * the first column node of a tube lies half the electrode pair's drop.
  */
-import type { FixedBody, LeadBody } from './conductors.js'
+import type { FixedBody } from './conductors.js'
 
 /** longest stretch of column between two nodes, m (physics: 50 mm of path) */
 export const nodeSpacing = 0.05
@@ -67,5 +67,3 @@ export function fixedNodes(
 
 /** The node of the lead with this index in the wiring. */
 export const leadNode = (nodes: FixedNodes, lead: number): number => nodes.count + lead
-
-export const nodeCount = (nodes: FixedNodes, leads: readonly LeadBody[]): number => nodes.count + leads.length

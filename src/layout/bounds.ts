@@ -3,6 +3,16 @@ import { glassOf, wireOf } from './defaults.js'
 import type { KeyPath } from './document.js'
 import { apart, checkPoints, pointOf } from './paths.js'
 import {
+  inside,
+  leadRanges,
+  length,
+  metalRanges,
+  type Range,
+  type Ranges,
+  supplyRanges,
+  tubeRanges,
+} from './ranges.js'
+import {
   entriesOf,
   isKeyed,
   type Keyed,
@@ -13,39 +23,6 @@ import {
   wirings,
 } from './reading.js'
 
-/** Least and greatest value, in the unit that the key names; lengths of the drawing in metres. */
-type Range = readonly [low: number, high: number, unit: string]
-type Ranges = Readonly<Record<string, Range>>
-const length = 'length'
-
-const tubeRanges: Ranges = {
-  diameter: [0.003, 0.1, length],
-  wall: [1e-4, 0.01, length],
-  height: [-10, 10, length],
-  glass: [1, 20, ''],
-}
-const leadRanges: Ranges = {
-  conductor: [1e-4, 0.01, length],
-  diameter: [5e-4, 0.05, length],
-  insulation: [1, 12, ''],
-  height: [-10, 10, length],
-  bore: [0.002, 0.2, length],
-}
-const supplyRanges: Ranges = {
-  no_load_kv: [0.1, 30, 'kV'],
-  no_load_peak_kv: [0.1, 60, 'kV'],
-  short_circuit_ma: [1, 1000, 'mA'],
-  frequency_hz: [10, 200_000, 'Hz'],
-  rated_va: [1, 20_000, 'VA'],
-  ground_fault_trip_ma: [0.1, 1000, 'mA'],
-  max_lead_mm: [1, 100_000, 'mm'],
-}
-const metalRanges: Ranges = {
-  diameter: [0.0005, 1, length],
-  height: [-10, 10, length],
-  from: [-10, 10, length],
-  to: [-10, 10, length],
-}
 const face: Range = [0.01, 1000, length]
 const chart: Range = [0.01, 1000, 'm']
 const current: Range = [0.01, 2000, 'mA']
@@ -92,10 +69,8 @@ function each(reading: Reading, values: unknown, path: KeyPath, range: Range): v
 function inRange(reading: Reading, what: string, value: unknown, path: KeyPath, range: Range): void {
   if (typeof value !== 'number' || !Number.isFinite(value)) return
   const [scale, unit] = scaleOf(reading, range[2])
+  if (inside(value, range, scale)) return
   const [low, high] = [range[0] / scale, range[1] / scale]
-  // a hair of room, so that a bound written in inches is inside
-  const slack = 1e-9 * Math.max(Math.abs(low), Math.abs(high))
-  if (value >= low - slack && value <= high + slack) return
   reading.report(reading.places.value(path), { code: 'out-of-range', what, value, low, high, unit })
 }
 

@@ -1,5 +1,6 @@
 /** Supplies, strings and routes of the file in SI units. */
 import type { Workshop } from './build.js'
+import { chartKind } from './chart-key.js'
 import { insulationValue, usual, wireOf } from './defaults.js'
 import type { CircuitWiring, Face, Measured, PathPoint, Route, StringEntry, Supply, Tube } from './layout.js'
 import { pointOf } from './paths.js'
@@ -77,7 +78,10 @@ function buildSupply(shop: Workshop, supply: SupplyValue, terminals: [PathPoint,
     openCircuitProtection: supply.open_circuit_protection ?? false,
     ...given(supply.ground_fault_trip_ma, (ma) => ({ groundFaultTrip: ma / 1000 })),
     ...given(supply.max_lead_mm, (mm) => ({ maxLead: mm / 1000 })),
-    chart: new Map(Object.entries(supply.chart_m ?? {})),
+    chart: Object.entries(supply.chart_m ?? {}).flatMap(([key, length]) => {
+      const kind = chartKind(key)
+      return kind ? [{ ...kind, length }] : []
+    }),
     terminals,
   }
 }

@@ -13,9 +13,9 @@ export const usual = {
 } as const
 
 /** relative permittivity of glass; from memory */
-export const glassPermittivity = { lead: 6.65, 'soda-lime': 7.1, borosilicate: 4.6 } as const
+const glassPermittivity = { lead: 6.65, 'soda-lime': 7.1, borosilicate: 4.6 } as const
 /** relative permittivity of lead insulation; from memory */
-export const insulationPermittivity = { polyethylene: 2.3, silicone: 3 } as const
+const insulationPermittivity = { polyethylene: 2.3, silicone: 3 } as const
 
 /** Relative permittivity by name, or the number itself. */
 export const glassValue = (glass: number | keyof typeof glassPermittivity): number =>
@@ -34,7 +34,7 @@ const walls = [
 ] as const
 
 /** The wall usual for glass of this outer diameter, linear between the known sizes; m. */
-export function usualWall(diameter: number): number {
+function usualWall(diameter: number): number {
   const d = diameter * 1000
   let [below, wallBelow]: readonly [number, number] = walls[0]
   for (const [above, wallAbove] of walls) {

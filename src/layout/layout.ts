@@ -42,6 +42,14 @@ export interface Tube {
   readonly boots: boolean
 }
 
+/** How much glass of a kind a supply lights, by its maker; m. */
+export interface ChartEntry {
+  readonly fill: Fill
+  /** outer diameter of the glass */
+  readonly diameter: number
+  readonly length: number
+}
+
 export interface Supply {
   readonly id: string
   readonly type: SupplyType
@@ -61,8 +69,8 @@ export interface Supply {
   readonly groundFaultTrip?: number
   /** m; the longest run its leads allow, uncut */
   readonly maxLead?: number
-  /** the maker's tube-length chart: `fill-diameter in mm` (as `neon-12`) → metres of glass */
-  readonly chart: ReadonlyMap<string, number>
+  /** the maker's tube-length chart; empty where there is none */
+  readonly chart: readonly ChartEntry[]
   /** where terminals 1 and 2 are */
   readonly terminals: readonly [PathPoint, PathPoint]
 }

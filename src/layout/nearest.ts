@@ -23,7 +23,7 @@ export function nearest(word: string, known: Iterable<string>): string | undefin
 const plain = (word: string): string => word.toLowerCase().replace(/[-_ ]/g, '')
 
 /** Insertions, deletions, replacements and swaps of neighbours (optimal string alignment). */
-export function editDistance(a: string, b: string): number {
+function editDistance(a: string, b: string): number {
   let older: number[] = []
   let old = Array.from({ length: b.length + 1 }, (_, j) => j)
   for (let i = 1; i <= a.length; i++) {

@@ -2,22 +2,22 @@
 import type { KeyPath } from './document.js'
 import type { PathPoint } from './layout.js'
 import type { Facts } from './problems.js'
+import { highest } from './ranges.js'
 import { entriesOf, keyedOf, metresPerUnit, type Reading } from './reading.js'
 import { flatPath, type PathRefusal } from './svg-path.js'
 
 /** largest distance of a curve from its chords, m */
-export const flatness = 5e-5
-export const mostPoints = 200_000
+const flatness = 5e-5
+const mostPoints = 200_000
 /** farthest coordinates that are no slip of the pen, m */
 const farthest = 1000
-const highest = 10
 /** longest single piece of glass, m */
 const longestTube = 50
 
 /** The paths by where they stand in the file (`tubes.0.path`). */
 export type Paths = ReadonlyMap<string, readonly PathPoint[]>
 
-export const pathKey = (path: KeyPath): string => path.join('.')
+const pathKey = (path: KeyPath): string => path.join('.')
 
 /** All paths of the file; undefined when they have too many points together. Faulty paths are reported and absent. */
 export function flatPaths(reading: Reading): Paths | undefined {

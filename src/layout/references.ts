@@ -1,10 +1,11 @@
 /** Do the names of a file fit together? Ids, ends, strings, routes; all on the values as read, whatever their form. */
+import { chartKind } from './chart-key.js'
 import type { KeyPath } from './document.js'
+import { enteringEnd, leavingEnd, partOf, sideOf } from './ends.js'
 import { nearest } from './nearest.js'
 import { cleaned, hasActing } from './printable.js'
 import type { Facts, IdFault, PartWord } from './problems.js'
 import { entriesOf, type Keyed, keyedAt, keyedOf, nameText, type Reading, wirings } from './reading.js'
-import { fills } from './schema.js'
 
 /** The parts of a file by id. */
 export type Parts = ReadonlyMap<string, { readonly kind: PartWord; readonly offset: number }>
@@ -139,16 +140,15 @@ function checkWiring(reading: Reading, parts: Parts, circuits: unknown, path: Ke
 
 /** An end as its part and side; undefined where the part or the side does not exist. */
 function endOf(parts: Parts, end: string): { id: string; kind: PartWord; side: string } | undefined {
-  const dot = end.lastIndexOf('.')
-  const [id, side] = [end.slice(0, dot), end.slice(dot + 1)]
-  const kind = dot < 0 ? undefined : parts.get(id)?.kind
+  const [id, side] = [partOf(end), sideOf(end)]
+  const kind = parts.get(id)?.kind
   const sides = kind === 'tube' ? ['a', 'b'] : kind === 'supply' ? ['1', '2'] : []
   return kind !== undefined && sides.includes(side) ? { id, kind, side } : undefined
 }
 
 /** Reports an end that does not exist. */
 function badEnd(parts: Parts, end: string): Facts {
-  const part = parts.get(end.slice(0, Math.max(0, end.lastIndexOf('.'))))?.kind
+  const part = parts.get(partOf(end))?.kind
   const ends = [...parts].flatMap(([id, { kind }]) =>
     kind === 'tube' ? [`${id}.a`, `${id}.b`] : kind === 'supply' ? [`${id}.1`, `${id}.2`] : [],
   )
@@ -203,11 +203,7 @@ function checkJoints(reading: Reading, parts: Parts, circuit: Keyed, path: KeyPa
   if (back === undefined) return
   const offset = places.value([...path, 'midpoint_return'])
   const [first, last] = [string[0], string.at(-1)]
-  const outer = [
-    supply,
-    first && `${first.tube}.${first.reversed ? 'b' : 'a'}`,
-    last && `${last.tube}.${last.reversed ? 'a' : 'b'}`,
-  ]
+  const outer = [supply, first && enteringEnd(first), last && leavingEnd(last)]
   if (!check(back, offset)) return
   if (outer.includes(back) || endOf(parts, back)?.kind === 'supply') {
     report(offset, { code: 'no-joint', end: back })
@@ -245,10 +241,8 @@ function checkNames({ value, places, report }: Reading): void {
   }
 }
 
-const chartKey = new RegExp(`^(${fills.join('|')})-\\d+(\\.\\d+)?$`)
-
 function checkCharts({ value, places, report }: Reading): void {
   for (const { entry, path } of keyedOf(value.supplies, ['supplies']))
     for (const key of Object.keys(keyedAt(entry.chart_m)))
-      if (!chartKey.test(key)) report(places.key([...path, 'chart_m', key]), { code: 'bad-chart-key', key })
+      if (!chartKind(key)) report(places.key([...path, 'chart_m', key]), { code: 'bad-chart-key', key })
 }

@@ -170,10 +170,11 @@ export type FileValue = z.infer<typeof fileShape>
 export type TubeValue = z.infer<typeof tube>
 export type SupplyValue = z.infer<typeof supply>
 export type RouteValue = z.infer<typeof route>
-export type CircuitValue = FileValue['circuits'][number]
-export type WiringValue = Pick<CircuitValue, 'supply' | 'string' | 'midpoint_return' | 'measured'>
-export type PathValue = z.infer<typeof path>
-export type BarValue = z.infer<typeof metalShapes.path>
-export type PlateValue = z.infer<typeof metalShapes.plate>
-export type WallValue = z.infer<typeof metalShapes.wall>
+export type WiringValue = Pick<
+  FileValue['circuits'][number],
+  'supply' | 'string' | 'midpoint_return' | 'measured'
+>
+type BarValue = z.infer<typeof metalShapes.path>
+type PlateValue = z.infer<typeof metalShapes.plate>
+type WallValue = z.infer<typeof metalShapes.wall>
 export type MetalValue = BarValue | PlateValue | WallValue

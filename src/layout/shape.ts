@@ -43,7 +43,7 @@ export function shapedFile(reading: Reading): Shaped | undefined {
 }
 
 /** The shape keys that an entry of `metal` has; a proper one has one. */
-export const kindsOfMetal = (entry: unknown): MetalKind[] =>
+const kindsOfMetal = (entry: unknown): MetalKind[] =>
   isKeyed(entry) ? metalKinds.filter((kind) => Object.hasOwn(entry, kind)) : []
 
 function shapedMetal(reading: Reading, entry: unknown, path: KeyPath): MetalValue | undefined {
@@ -133,7 +133,7 @@ function choicesOf(issue: Issue): string[] {
 }
 
 /** The nearest key of a path in words, with the place in its list. */
-export function subject(path: KeyPath): string {
+function subject(path: KeyPath): string {
   const at = path.findLastIndex((key) => typeof key === 'string')
   const entries = path.slice(at + 1).map((key) => Number(key) + 1)
   const name = at < 0 ? 'the file' : String(path[at])

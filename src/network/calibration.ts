@@ -9,9 +9,8 @@ import type { Calibrations } from './lit.js'
 import { solveLit } from './lit.js'
 import type { CircuitString, Network } from './network.js'
 import type { CircuitSolution } from './solution.js'
+import { supplyEfficiency } from './supplies.js'
 
-/** W delivered for each W of mains input (ours) */
-export const supplyEfficiency = 0.85
 /** factors outside are not believed */
 const believable = [0.4, 2.5] as const
 
@@ -60,10 +59,6 @@ export function measuredCircuits(
     }
   })
 }
-
-/** The factors alone; undefined where nothing was measured or no believable factor explains it. */
-export const calibrations = (layout: Layout, wiring: Wiring, network: Network): Calibrations =>
-  measuredCircuits(layout, wiring, network).map((circuit) => circuit?.factor)
 
 /**
  * The same for a wiring under edit: its figures were measured on the wiring they stand with in the file (or in a

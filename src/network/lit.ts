@@ -1,7 +1,7 @@
 /** The lit state of a sign: which circuits burn, and their potentials and currents. */
 import type { Complex } from '../math/complex.js'
 import { magnitude, minus, plus } from '../math/complex.js'
-import { firstDark, leastShares, tooWeak } from './dark.js'
+import { firstDark, leastLit, leastShares, tooWeak } from './dark.js'
 import type { CircuitString, Network, StringTube } from './network.js'
 import type { Burning, Effort, OperatingPoint } from './operating-point.js'
 import { bandEffort, operatingPoint } from './operating-point.js'
@@ -24,9 +24,12 @@ export interface LitOptions {
 }
 
 /** the band of the column law, and the share of it that remains where a circuit was measured (±30 % → ±5 %) */
-const bandFactors = [0.7, 1.3] as const
-export const bandWidth = 0.3
-export const measuredShare = 1 / 6
+const bandWidth = 0.3
+const measuredShare = 1 / 6
+
+/** The band of the column law of a circuit, as a share: ±30 %, ±5 % with a factor that was measured. */
+export const lawBand = (calibration: number | undefined): number =>
+  calibration === undefined ? bandWidth : bandWidth * measuredShare
 
 /** Three lit states: the nominal law, and the weakest and strongest columns that its uncertainty allows. */
 export function solveBand(
@@ -34,14 +37,14 @@ export function solveBand(
   calibrations?: Calibrations,
 ): { nominal: LitState; others: readonly LitState[] } {
   const nominal = solveLit(network, { factor: 1, calibrations })
-  const others = bandFactors.map((factor) =>
+  const others = [1 - bandWidth, 1 + bandWidth].map((factor) =>
     solveLit(network, { factor, calibrations, start: nominal, effort: bandEffort }),
   )
   return { nominal, others }
 }
 
 /** The factor that one circuit's tubes really get. */
-export const circuitFactor = (factor: number, calibration: number | undefined): number =>
+const circuitFactor = (factor: number, calibration: number | undefined): number =>
   calibration === undefined ? factor : calibration * (1 + (factor - 1) * measuredShare)
 
 /** Solves the whole sign. Circuits that cannot burn are left out one after the other, and the others solved again. */
@@ -93,7 +96,7 @@ function refusal(
 ): { circuit: number; outcome: CircuitOutcome } | undefined {
   const lit = [...burning.lit.keys()].filter((c) => burning.lit[c])
   for (const c of lit) {
-    if (leastShares(network, point.current, c).every(({ share }) => share >= 0.1)) continue
+    if (leastShares(network, point.current, c).every(({ share }) => share >= leastLit)) continue
     return { circuit: c, outcome: outcome(network.circuits[c]!, darkOf(c), 'not-enough-current') }
   }
   let worst: { circuit: number; outcome: CircuitOutcome } | undefined

@@ -8,7 +8,9 @@
 import type { NodeCapacitance } from '../field/field.js'
 import type { TubeBody } from '../geometry/conductors.js'
 import type { FixedNodes } from '../geometry/nodes.js'
+import { enteringEnd, leavingEnd } from '../layout/ends.js'
 import type { CircuitWiring, Layout, Supply, Wiring } from '../layout/layout.js'
+import { supplyOf } from '../layout/parts.js'
 import { columnLaw } from './columns.js'
 
 export interface StringTube {
@@ -146,7 +148,7 @@ export function stringLadders(
       return passed
     })
     stretch(0, 0, 0)
-    const supply = layout.supplies.find(({ id }) => id === wired.supply)!
+    const supply = supplyOf(layout, wired.supply)
     const back = returnPlace(wired, along)
     return {
       supply,
@@ -167,9 +169,9 @@ export function stringLadders(
 
 /** Place of the lead at the tube end that goes back to the midpoint. */
 function returnPlace(wired: CircuitWiring, along: readonly StringTube[]): number | undefined {
-  for (const [k, { tube, reversed }] of wired.string.entries()) {
-    if (wired.midpointReturn === `${tube}.${reversed ? 'b' : 'a'}`) return along[k]!.from - 1
-    if (wired.midpointReturn === `${tube}.${reversed ? 'a' : 'b'}`) return along[k]!.to + 1
+  for (const [k, entry] of wired.string.entries()) {
+    if (wired.midpointReturn === enteringEnd(entry)) return along[k]!.from - 1
+    if (wired.midpointReturn === leavingEnd(entry)) return along[k]!.to + 1
   }
   return undefined
 }

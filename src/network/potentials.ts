@@ -3,6 +3,7 @@
 import type { FixedNodes } from '../geometry/nodes.js'
 import type { BodyRef } from '../geometry/runs.js'
 import type { Wiring } from '../layout/layout.js'
+import type { Complex } from '../math/complex.js'
 import type { PotentialField } from './solution.js'
 
 /**
@@ -37,7 +38,8 @@ export interface NodeMix {
   readonly high: number
   readonly t: number
 }
-const ground: NodeMix = { low: -1, high: -1, t: 0 }
+/** 0 V */
+export const ground: NodeMix = { low: -1, high: -1, t: 0 }
 const whole = (node: number): NodeMix => ({ low: node, high: node, t: 0 })
 
 /** Which nodes give the potential at path length `at` of a body. The ends of a tube are its electrodes. */
@@ -56,11 +58,17 @@ export function nodeMix({ nodes, electrodes, tubes }: Probe, body: BodyRef, at: 
   return { low: first + k, high: first + k + 1, t: scaled - k }
 }
 
-/** Real and imaginary part of the potential at a mix of nodes. */
-export function readRe(field: PotentialField, { low, high, t }: NodeMix): number {
+/** The potential at a mix of nodes, V rms. */
+export const potentialAt = (field: PotentialField, place: NodeMix): Complex => ({
+  re: readRe(field, place),
+  im: readIm(field, place),
+})
+
+// one by one where there are many places: nothing is allocated
+function readRe(field: PotentialField, { low, high, t }: NodeMix): number {
   return low < 0 ? 0 : field.re[low]! * (1 - t) + field.re[high]! * t
 }
-export function readIm(field: PotentialField, { low, high, t }: NodeMix): number {
+function readIm(field: PotentialField, { low, high, t }: NodeMix): number {
   return low < 0 ? 0 : field.im[low]! * (1 - t) + field.im[high]! * t
 }
 

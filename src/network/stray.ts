@@ -23,8 +23,8 @@ export interface FloatingMetal {
   readonly id: string
   /** potential it floats to, root of the sum of squares over the supplies */
   readonly voltage: number
-  /** current to ground through a person touching it */
-  readonly touch: number
+  /** current to ground through a person touching it; absent where no solution was found */
+  readonly touch?: number
 }
 
 export interface StrayShares {
@@ -90,26 +90,25 @@ function floatingMetal(network: Network, state: LitState): readonly FloatingMeta
   const conductance = conductances(network, state)
   return network.floating.map(({ id, node }) => {
     const voltage = Math.hypot(...state.fields.map(({ re, im }) => Math.hypot(re[node]!, im[node]!)))
-    const touch = Math.hypot(
-      ...state.fields.map((field) => touchCurrent(network, state, field, node, conductance)),
-    )
-    return { id, voltage, touch }
+    const currents = state.fields.map((field) => touchCurrent(network, state, field, node, conductance))
+    const found = currents.filter((current) => current !== undefined)
+    return { id, voltage, ...(found.length === currents.length && { touch: Math.hypot(...found) }) }
   })
 }
 
-/** The same sources and resistances with this node at 0 V. */
+/** The same sources and resistances with this node at 0 V; undefined where that has no solution. */
 function touchCurrent(
   network: Network,
   state: LitState,
   field: PotentialField,
   node: number,
   conductance: Float64Array,
-): number {
+): number | undefined {
   const c = network.circuits.findIndex(({ supply }) => supply.id === field.supply)
   const needed = state.circuits[c]!.neededVoltage ?? 0
   const problem = phasorProblem(network, c, node)
   startFrom(problem, field, needed)
-  if (solvePhasors(problem, conductance, 1e-9) === undefined) return Number.NaN
+  if (solvePhasors(problem, conductance, 1e-9) === undefined) return undefined
   return sourceVolts(problem, needed) * nodeCurrent(problem, node)
 }
 

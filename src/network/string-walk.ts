@@ -5,7 +5,7 @@
 import type { BodyRef } from '../geometry/runs.js'
 import type { Wiring } from '../layout/layout.js'
 import { type Complex, minus, plus } from '../math/complex.js'
-import { nodeMix, type Probe, readIm, readRe } from './potentials.js'
+import { nodeMix, type Probe, potentialAt } from './potentials.js'
 import type { PotentialField } from './solution.js'
 
 export interface BodyPlace {
@@ -76,7 +76,7 @@ export function differenceSteps(
   const circuit = sign.wiring.circuits.findIndex((c) => c.supply === field.supply)
   const parts = stringParts(sign, circuit)
   const [stationA, stationB] = [stationOf(parts, a), stationOf(parts, b)]
-  const [atA, atB] = [potentialAt(sign, field, a), potentialAt(sign, field, b)]
+  const [atA, atB] = [atPlace(sign, field, a), atPlace(sign, field, b)]
   const bFirst =
     stationB !== undefined && (stationA === undefined || inOrder(stationB, stationA) < 0) ? 'b' : 'a'
   const [first, second] = bFirst === 'b' ? [stationB, stationA] : [stationA, stationB]
@@ -152,12 +152,10 @@ const potentialOn = (
   field: PotentialField,
   parts: readonly StringPart[],
   { part, along }: Station,
-): Complex => potentialAt(sign, field, onBody(parts[part]!, along))
+): Complex => atPlace(sign, field, onBody(parts[part]!, along))
 
-function potentialAt({ probe }: WalkedSign, field: PotentialField, { body, at }: BodyPlace): Complex {
-  const mix = nodeMix(probe, body, at)
-  return { re: readRe(field, mix), im: readIm(field, mix) }
-}
+const atPlace = ({ probe }: WalkedSign, field: PotentialField, { body, at }: BodyPlace): Complex =>
+  potentialAt(field, nodeMix(probe, body, at))
 
 function step(
   sign: WalkedSign,
@@ -167,12 +165,12 @@ function step(
   ends: number,
 ): WalkStep {
   const [one, two] = [onBody(part, begins), onBody(part, ends)]
-  const reached = potentialAt(sign, field, two)
+  const reached = atPlace(sign, field, two)
   return {
     body: part.body,
     from: one.at,
     to: two.at,
-    drop: minus(potentialAt(sign, field, one), reached),
+    drop: minus(atPlace(sign, field, one), reached),
     electrodes: electrodeDrops(sign, field, part, begins, ends),
     reached,
   }
@@ -196,7 +194,7 @@ function electrodeDrops(
   }
   for (const along of [begins, ends]) {
     if (along > 0 && along < part.length) continue
-    const away = minus(potentialAt(sign, field, onBody(part, along)), column(along))
+    const away = minus(atPlace(sign, field, onBody(part, along)), column(along))
     sum = along <= 0 ? plus(sum, away) : minus(sum, away)
   }
   return sum

@@ -6,13 +6,15 @@
  */
 import type { Supply } from '../layout/layout.js'
 
+/** W delivered for each W of mains input (ours) */
+export const supplyEfficiency = 0.85
+
 /** V rms: the nameplate's, or peak/√2 where that is greater (IEC 61347-2-10:2000). */
 export const noLoadVoltage = ({ noLoadVoltage, noLoadPeak }: Supply): number =>
   Math.max(noLoadVoltage, (noLoadPeak ?? 0) / Math.SQRT2)
 
 /** Ω at the supply's own frequency */
-export const shortCircuitReactance = (supply: Supply): number =>
-  noLoadVoltage(supply) / supply.shortCircuitCurrent
+const shortCircuitReactance = (supply: Supply): number => noLoadVoltage(supply) / supply.shortCircuitCurrent
 
 /** `volts` are the source voltages; a short or an inductance alone where they are 0. Susceptances are −1/X, S. */
 export type Attachment =

@@ -1,8 +1,9 @@
-/** `check --json`: the findings in the fixed form of interface.md §4. kV, mA, mm, degrees. Absent is absent, never 0. */
+/** `check --json`: the findings in a form that stays. kV and mA rms, mm, degrees. Absent is absent, never 0. */
 import type { Inspection } from '../inspection.js'
 import type { Layout } from '../layout/layout.js'
 import { type Complex, degrees, magnitude } from '../math/complex.js'
 import type { MeasuredCircuit, MeasuredFigure } from '../network/calibration.js'
+import { lawBand } from '../network/lit.js'
 import type {
   CircuitFinding,
   EndState,
@@ -12,7 +13,6 @@ import type {
   TubeFinding,
 } from '../rules/findings.js'
 import { cautionText, generalCautions } from '../view/caution-text.js'
-import { bandOf } from '../view/measured-text.js'
 
 const rounded = (value: number, decimals: number): number => Number(value.toFixed(decimals))
 const kv = (volts: number): number => rounded(volts / 1000, 4)
@@ -24,9 +24,14 @@ export function checkJson(file: string, layout: Layout, inspection: Inspection):
     result: 1,
     file,
     title: layout.title,
+    air: inspection.context.air === 'best' ? 'clean' : 'cautious',
     circuits: inspection.circuits.map(circuitJson),
     pairs: inspection.pairs.map(pairJson),
-    floating: inspection.floating.map((f) => ({ id: f.id, kv: kv(f.voltage), touch_ma: ma(f.touch) })),
+    floating: inspection.floating.map((f) => ({
+      id: f.id,
+      kv: kv(f.voltage),
+      ...(f.touch !== undefined && { touch_ma: ma(f.touch) }),
+    })),
     assumed: layout.assumed.map((a) => `${a.about}: ${a.text}`),
     cautions: [...inspection.cautions.map((c) => cautionText(c, layout.units)), ...generalCautions],
   }
@@ -71,7 +76,7 @@ const measuredJson = (m: MeasuredCircuit): object => ({
     ma: Object.fromEntries(m.currents.map((current) => [current.end, figureJson(current, ma)])),
   }),
   ...(m.factor !== undefined && { law_factor: rounded(m.factor, 4) }),
-  band: rounded(bandOf(m), 4),
+  band: rounded(lawBand(m.factor), 4),
 })
 const figureJson = ({ measured, computed }: MeasuredFigure, figure: (value: number) => number): object => ({
   measured: figure(measured),

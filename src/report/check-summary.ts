@@ -1,7 +1,7 @@
 /** One line for each of several layouts that were checked. */
 import type { Inspection } from '../inspection.js'
 import { percent } from '../view/words.js'
-import { table } from './table.js'
+import { pageColumns, table } from './table.js'
 
 /** A file by the name it was given, and what was found; no inspection where it could not be used. */
 export interface CheckedFile {
@@ -10,8 +10,6 @@ export interface CheckedFile {
   readonly inspection?: Inspection
 }
 
-const columns = 100
-
 /** At most 100 columns; the file's name loses its middle where it is too long. */
 export function checkSummary(files: readonly CheckedFile[]): string {
   const [first = [], ...rest] = files.map(({ file, toFix, inspection }) =>
@@ -19,7 +17,7 @@ export function checkSummary(files: readonly CheckedFile[]): string {
       ? [verdictOf(toFix, inspection), file, pairsText(inspection), suppliesText(inspection)]
       : ['unusable', file, '', ''],
   )
-  return `SUMMARY\n${table([first, ...rest], columns, [1, 3]).join('\n')}\n`
+  return `SUMMARY\n${table([first, ...rest], pageColumns, [1, 3]).join('\n')}\n`
 }
 
 function verdictOf(toFix: boolean, { pairs, circuits }: Inspection): string {

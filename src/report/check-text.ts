@@ -1,14 +1,17 @@
 /** `check`: the findings as text, to read or to paste into a job file. At most 100 columns. */
 import type { Inspection } from '../inspection.js'
 import type { Layout, Supply } from '../layout/layout.js'
+import { supplyOf } from '../layout/parts.js'
 import { magnitude } from '../math/complex.js'
-import { supplyOf } from '../rules/circuits.js'
-import type { CircuitFinding, Condition, Loading, PairFinding, Verdict } from '../rules/findings.js'
+import { noLoadVoltage } from '../network/supplies.js'
+import type { CircuitFinding, Condition, PairFinding, Verdict } from '../rules/findings.js'
 import type { LeadSaving } from '../rules/lead-savings.js'
-import { cautionText, generalCautions, standingCaution } from '../view/caution-text.js'
+import { cautionText, generalCautions, standingWarning } from '../view/caution-text.js'
 import { leadLines, residualLines } from '../view/lead-text.js'
+import { loadingRow } from '../view/loading-text.js'
 import { measuredText } from '../view/measured-text.js'
 import {
+  airText,
   groundingText,
   hertz,
   kv,
@@ -20,14 +23,14 @@ import {
   metres,
   needOf,
   openTubeGoverns,
-  percent,
+  placeText,
   severityFigure,
-  spotText,
+  touchText,
   verdictText,
   watts,
 } from '../view/words.js'
 import { wrap } from '../view/wrap.js'
-import { folded, table } from './table.js'
+import { pageColumns as columns, folded, table } from './table.js'
 
 export interface CheckOptions {
   /** list every pair, not only those to fix or watch and the first few within */
@@ -37,7 +40,6 @@ export interface CheckOptions {
   readonly savings?: readonly LeadSaving[]
 }
 
-const columns = 100
 /** pairs within the rules that are still listed, so that a clean sign shows its nearest */
 const listedWithin = 5
 
@@ -47,14 +49,15 @@ export function checkText(
   inspection: Inspection,
   options: CheckOptions,
 ): string {
+  const rules = inspection.context.ruleSets.map(({ id }) => id).join(', ') || 'none'
   const lines = [
     `${layout.title || 'Untitled sign'} (${file})`,
-    `Condition ${options.condition}. Rules: ${layout.rules.join(', ') || 'none'}.`,
+    `Condition ${options.condition}. Rules: ${rules}. Air: ${airText[inspection.context.air]}.`,
     'kV and mA are rms unless marked peak. Clean, dry, new glass.',
-    ...wrap(standingCaution, columns),
+    ...wrap(standingWarning(), columns),
     '',
     ...inspection.circuits.flatMap((circuit, i) => circuitLines(layout, inspection, circuit, i)),
-    ...pairLines(layout, inspection.pairs, options),
+    ...pairLines(layout, inspection, options),
     '',
     'LEADS',
     ...inspection.circuits.flatMap((c, i) =>
@@ -90,14 +93,14 @@ const bullet = (text: string): string[] =>
 
 function circuitLines(layout: Layout, inspection: Inspection, c: CircuitFinding, index: number): string[] {
   const circuit = inspection.wiring.circuits[index]!
-  const supply = supplyOf(layout, circuit)
+  const supply = supplyOf(layout, circuit.supply)
   const string = circuit.string.map((e) => `${e.reversed ? '-' : ''}${e.tube}`).join(' ')
   return [
     `SUPPLY ${supply.id}  ${supplyText(supply)}`,
     ...wrap(`string  ${string}   (- = entered at end b)`, columns - 2).map((l) => `  ${l}`),
     ...stateLines(c),
     ...(c.measured ? wrap(measuredText(c.measured), columns - 2).map((l) => `  ${l}`) : []),
-    ...c.loadings.map((l) => `  ${loadingText(l).padEnd(66)} ${mark(l.verdict)}`),
+    ...c.loadings.map((l) => `  ${loadingRow(l, layout.units).padEnd(66)} ${mark(l.verdict)}`),
     '',
     ...table(
       [
@@ -149,44 +152,25 @@ function circuitLines(layout: Layout, inspection: Inspection, c: CircuitFinding,
   ]
 }
 
-export const supplyText = (s: Supply): string =>
-  `${s.type}, ${kv(s.noLoadVoltage)} no-load, ${ma(s.shortCircuitCurrent)} short-circuit, ${hertz(s.frequency)}, ${groundingText[s.grounding]}`
+const supplyText = (s: Supply): string =>
+  `${s.type}, ${kv(noLoadVoltage(s))} no-load, ${ma(s.shortCircuitCurrent)} short-circuit, ${hertz(s.frequency)}, ${groundingText[s.grounding]}`
 
 function stateLines(c: CircuitFinding): string[] {
   if (!c.solved) return ['  lit solution not computed']
   if (!c.lit) return [`  NOT LIT  dark: ${c.dark.join(', ') || 'the whole string'}`]
-  const dimmest = c.tubes
-    .filter((t) => t.least)
-    .sort((a, b) => (a.least?.current ?? 0) - (b.least?.current ?? 0))[0]
   return [
     `  lit  ${c.terminals.map((t) => `${t.end} ${kv(magnitude(t.voltage))} ${ma(magnitude(t.current))}`).join('   ')}`,
     `  glass ${metres(c.tubeLength)}, ${c.electrodePairs} electrode pairs, ${watts(c.power ?? 0)} in the glass`,
     `  stray ${ma(c.stray ?? 0)}, residual to ground ${ma(c.residual ?? 0)}` +
-      (dimmest?.least ? `, dimmest ${dimmest.id} with ${ma(dimmest.least.current)}` : ''),
+      (c.dimmest ? `, dimmest ${c.dimmest.tube} with ${ma(c.dimmest.current)}` : ''),
   ]
-}
-
-export function loadingText({ by, value, limit, share }: Loading): string {
-  const of = `${percent(share).padStart(5)} of`
-  switch (by) {
-    case 'voltage':
-      return `needs ${kv(value)}: ${of} the no-load ${kv(limit)}`
-    case 'chart':
-      return `footage ${metres(value)} with electrode pairs: ${of} the chart's ${metres(limit)}`
-    case 'mains':
-      return `mains input about ${watts(value)}: ${of} the rated ${watts(limit)}`
-    case 'residual':
-      return `residual ${ma(value)}: ${of} the trip value ${ma(limit)}`
-    case 'lead':
-      return `longest output lead ${Math.round(value * 1000)} mm: ${of} the allowed ${Math.round(limit * 1000)} mm`
-  }
 }
 
 const mark = (verdict: Verdict): string => (verdict === 'within' ? '' : verdict.toUpperCase())
 
-function pairLines(layout: Layout, pairs: readonly PairFinding[], options: CheckOptions): string[] {
+function pairLines(layout: Layout, { pairs, context }: Inspection, options: CheckOptions): string[] {
   const count = (verdict: Verdict) => pairs.filter((p) => p.verdict === verdict).length
-  const within = verdictText('within', layout.rules)
+  const within = verdictText('within', context.ruleSets)
   const head = `PAIRS  ${count('fix')} to fix, ${count('watch')} to watch, ${count('within')} ${within}`
   if (pairs.length === 0) return [head]
   const urgent = count('fix') + count('watch')
@@ -222,8 +206,8 @@ function pairCells(layout: Layout, p: PairFinding, i: number, by: string): strin
   return [
     String(i + 1),
     `${p.verdict}${p.unsure ? '?' : ''}`,
-    spotText(p.a, layout.units),
-    spotText(p.b, layout.units),
+    placeText(p.a, layout.units, 'short'),
+    placeText(p.b, layout.units, 'short'),
     lengthFigure(p.gap, layout.units),
     d.lit === undefined ? '' : kvFigure(d.lit),
     d.litLow === undefined || d.litHigh === undefined
@@ -246,7 +230,7 @@ const floatingLines = ({ floating }: Inspection): string[] =>
     : [
         'UNGROUNDED METAL',
         ...floating.map(
-          (f) => `  ${f.id}  floats to ${kv(f.voltage)}; ${ma(f.touch)} through a person touching it`,
+          (f) => `  ${f.id}  floats to ${kv(f.voltage)}; ${touchText(f.touch)} through a person touching it`,
         ),
         '',
       ]

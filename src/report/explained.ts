@@ -1,16 +1,14 @@
 /** `check --why` and `check --symptom`: an explanation as text, at most 100 columns. */
 import type { Layout } from '../layout/layout.js'
-import { standingCaution } from '../view/caution-text.js'
+import { standingWarning } from '../view/caution-text.js'
 import { type Explanation, explanationRows } from '../view/explanation.js'
 import { wrap } from '../view/wrap.js'
-import { folded } from './table.js'
-
-const columns = 100
+import { pageColumns as columns, folded } from './table.js'
 
 export function explainedText(file: string, layout: Layout, explanation: Explanation): string {
   const lines = [
     `${layout.title || 'Untitled sign'} (${file})`,
-    ...wrap(standingCaution, columns),
+    ...wrap(standingWarning(), columns),
     '',
     ...explanationRows(explanation, columns).map(({ text }) => text),
   ]

@@ -1,7 +1,9 @@
-/** Text in columns, for `check` and the job sheet. Widths are those of a terminal. */
-import stringWidth from 'string-width'
+/** Text in columns, for `check`. Widths are those of a terminal. */
+import { textWidth } from '../view/text-width.js'
 import { wrap } from '../view/wrap.js'
 
+/** of every text that is not for the full screen */
+export const pageColumns = 100
 /** least width a cell is cut down to */
 const narrowest = 6
 
@@ -14,7 +16,7 @@ export function table(
   width: number,
   names: readonly number[] = [0],
 ): string[] {
-  const widths = rows[0]!.map((_, c) => Math.max(...rows.map((r) => stringWidth(r[c] ?? ''))))
+  const widths = rows[0]!.map((_, c) => Math.max(...rows.map((r) => textWidth(r[c] ?? ''))))
   const figures = rows[0]!.map(
     (_, c) => c > 0 && rows.slice(1).every((r) => /^[-+>\d.–/ m%]*$|^nameplate$/.test(r[c] ?? '')),
   )
@@ -28,7 +30,7 @@ export function table(
     row
       .map((cell, c) => {
         const text = withoutMiddle(cell, widths[c]!)
-        const room = ' '.repeat(widths[c]! - stringWidth(text))
+        const room = ' '.repeat(widths[c]! - textWidth(text))
         return gap + (figures[c] ? room + text : text + room)
       })
       .join('')
@@ -40,11 +42,11 @@ const gap = '  '
 
 /** A name of at most `width` columns: `window…left.b` keeps what tells it from its neighbours at both ends. */
 export function withoutMiddle(text: string, width: number): string {
-  if (stringWidth(text) <= width) return text
+  if (textWidth(text) <= width) return text
   const glyphs = [...text]
   let [head, tail] = [Math.ceil(glyphs.length / 2), Math.floor(glyphs.length / 2)]
   const cut = () => `${glyphs.slice(0, head).join('')}…${glyphs.slice(glyphs.length - tail).join('')}`
-  while (head + tail > 0 && stringWidth(cut()) > width) {
+  while (head + tail > 0 && textWidth(cut()) > width) {
     if (head > tail) head--
     else tail--
   }
@@ -53,7 +55,7 @@ export function withoutMiddle(text: string, width: number): string {
 
 /** A line set in several where it is too long; the later ones stand deeper. */
 export function folded(line: string, width: number): string[] {
-  if (stringWidth(line) <= width) return [line]
+  if (textWidth(line) <= width) return [line]
   const indent = /^ */.exec(line)?.[0] ?? ''
   const [first = '', ...rest] = wrap(line.slice(indent.length), width - indent.length)
   const deeper = wrap(rest.join(' '), width - indent.length - 2)

@@ -2,6 +2,7 @@
 import type { LeadBody } from '../geometry/conductors.js'
 import type { CloseRun } from '../geometry/runs.js'
 import type { Layout, Supply } from '../layout/layout.js'
+import { lawBand } from '../network/lit.js'
 import type { CircuitLead } from '../wiring/leads.js'
 import { shownAs } from './circuits.js'
 import { sameDistance } from './distance-table.js'
@@ -14,6 +15,7 @@ import type {
   Loading,
   PairFinding,
 } from './findings.js'
+import { spacer } from './lead-savings.js'
 import type { MissingRules } from './rule-set.js'
 
 export interface CautionContext {
@@ -33,8 +35,6 @@ export interface CautionContext {
   readonly strained: readonly string[]
 }
 
-/** m of spacer that lifts an output lead off the metal (common practice, no published source) */
-const spacer = 0.025
 /** share of the short-circuit current under which the dimmest place is worth a word (ours) */
 const dim = 0.85
 /** V: above it two smaller supplies are the better choice (ours; the trade says 6 kV rather than 12) */
@@ -76,7 +76,12 @@ function darkCircuits({ circuits, mayGoDark }: CautionContext): Caution[] {
         ]
       : [],
   )
-  return [...dark, ...mayGoDark.map((supply): Caution => ({ level: 'watch', code: 'may-go-dark', supply }))]
+  const unsure = circuits.flatMap(({ supply, measured }): Caution[] =>
+    mayGoDark.includes(supply)
+      ? [{ level: 'watch', code: 'may-go-dark', supply, band: lawBand(measured?.factor) }]
+      : [],
+  )
+  return [...dark, ...unsure]
 }
 
 /** One entry for all pairs: the worst, and how many more. */
@@ -89,7 +94,7 @@ function worstPair({ pairs }: CautionContext): Caution[] {
 }
 
 const floatingMetal = ({ floating }: CautionContext): Caution[] =>
-  floating.map(({ id, voltage, touch }) => ({ level: 'danger', code: 'floating-metal', id, voltage, touch }))
+  floating.map((metal) => ({ level: 'danger', code: 'floating-metal', ...metal }))
 
 /** Loadings and circuit rules; of two on one quantity the worse, the rule's where they are equal. */
 function circuitCautions({ supply, lit, loadings, rules }: CircuitFinding): Caution[] {
@@ -181,13 +186,14 @@ function supplyCautions({ supplies, circuits, layout }: CautionContext): Caution
     const found: Caution[] = []
     if (noLoadVoltage > highVoltage) found.push({ level: 'note', code: 'lower-voltage', supply: id })
     const circuit = circuits[i]
-    const dimmest = circuit && dimmestTube(circuit)
-    if (type === 'electronic' && circuit && dimmest && dimmest.least < dim * shortCircuitCurrent)
+    const dimmest = circuit?.dimmest
+    if (type === 'electronic' && circuit && dimmest && dimmest.current < dim * shortCircuitCurrent)
       found.push({
         level: 'watch',
         code: 'stray',
         supply: id,
-        ...dimmest,
+        tube: dimmest.tube,
+        least: dimmest.current,
         given: shortCircuitCurrent,
         tubeLength: circuit.tubeLength,
         onMetal: layout.face.metal !== 'none',
@@ -196,14 +202,4 @@ function supplyCautions({ supplies, circuits, layout }: CautionContext): Caution
       found.push({ level: 'note', code: 'frequency', supply: id, frequency })
     return found
   })
-}
-
-/** The tube with the least current of the string, A. */
-function dimmestTube({ tubes }: CircuitFinding): { tube: string; least: number } | undefined {
-  return tubes
-    .flatMap(({ id, least }) => (least ? [{ tube: id, least: least.current }] : []))
-    .reduce<{ tube: string; least: number } | undefined>(
-      (dimmest, tube) => (dimmest && dimmest.least <= tube.least ? dimmest : tube),
-      undefined,
-    )
 }

@@ -3,7 +3,7 @@ import type { LeadBody } from '../geometry/conductors.js'
 import type { Supply, Tube } from '../layout/layout.js'
 import { magnitude } from '../math/complex.js'
 import type { CircuitOutcome } from '../network/solution.js'
-import { noLoadVoltage } from '../network/supplies.js'
+import { noLoadVoltage, supplyEfficiency } from '../network/supplies.js'
 import type { CircuitRuleFinding } from './findings.js'
 import { suppliesFit, terminalVoltage } from './pair-rules.js'
 import type { CircuitRule, Quantity, RequiredRule, Rule, RuleSet } from './rule-set.js'
@@ -18,9 +18,6 @@ export interface CircuitFacts {
   /** share of the maker's chart, where there is one */
   readonly chartShare?: number
 }
-
-/** efficiency assumed between the mains and the glass (ours) */
-export const efficiency = 0.85
 
 /** The verdict of every rule that applies to the circuit, in the order of the sets. */
 export const circuitRuleFindings = (sets: readonly RuleSet[], facts: CircuitFacts): CircuitRuleFinding[] =>
@@ -116,7 +113,7 @@ function quantityOf(quantity: Quantity, facts: CircuitFacts): number | undefined
     case 'rated-va':
       return supply.ratedPower
     case 'mains-va':
-      return lit && lit.power / efficiency
+      return lit && lit.power / supplyEfficiency
     case 'load':
       return outcome?.neededVoltage === undefined ? undefined : outcome.neededVoltage / noLoadVoltage(supply)
     case 'chart-share':

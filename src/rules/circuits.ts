@@ -1,14 +1,16 @@
 /** How loaded each supply is and what each tube and lead of its circuit takes. V, A, W rms; m. */
 import type { FixedBody, LeadBody } from '../geometry/conductors.js'
-import type { CircuitWiring, Layout, Supply, Tube, Wiring } from '../layout/layout.js'
+import type { ChartEntry, CircuitWiring, Layout, Supply, Tube, Wiring } from '../layout/layout.js'
+import { supplyOf } from '../layout/parts.js'
 import { type Complex, magnitude, minus } from '../math/complex.js'
 import type { MeasuredCircuit } from '../network/calibration.js'
-import { nodeMix, type Probe, readIm, readRe } from '../network/potentials.js'
-import type { CircuitOutcome, CircuitSolution, ColumnCurrents, PotentialField } from '../network/solution.js'
+import { leastOf, leastOfString } from '../network/least-current.js'
+import { type NodeMix, nodeMix, type Probe, potentialAt } from '../network/potentials.js'
+import type { CircuitOutcome, CircuitSolution, PotentialField } from '../network/solution.js'
 import type { StrayShare, StrayShares } from '../network/stray.js'
-import { noLoadVoltage } from '../network/supplies.js'
+import { noLoadVoltage, supplyEfficiency } from '../network/supplies.js'
 import type { CircuitLead } from '../wiring/leads.js'
-import { type CircuitFacts, circuitRuleFindings, efficiency } from './circuit-rules.js'
+import { type CircuitFacts, circuitRuleFindings } from './circuit-rules.js'
 import type {
   CircuitFinding,
   CircuitRuleFinding,
@@ -37,13 +39,13 @@ export interface CircuitContext {
 }
 
 /** m of chart that an electrode pair counts as (common practice, no published source) */
-export const electrodePair = 0.3
+const electrodePair = 0.3
 
 export const circuitFindings = (context: CircuitContext): CircuitFinding[] =>
   context.wiring.circuits.map((circuit, index) => circuitFinding(context, circuit, index))
 
 function circuitFinding(context: CircuitContext, circuit: CircuitWiring, index: number): CircuitFinding {
-  const supply = supplyOf(context.layout, circuit)
+  const supply = supplyOf(context.layout, circuit.supply)
   const outcome = context.outcomes?.[index]
   const tubes = circuit.string.map(({ tube }) => context.layout.tubes.findIndex((t) => t.id === tube))
   const field = context.fields?.find((f) => f.supply === supply.id)
@@ -52,6 +54,8 @@ function circuitFinding(context: CircuitContext, circuit: CircuitWiring, index: 
   const loadings = loadingsOf(facts).map((loading) => ruledLoading(loading, rules))
   const lit = outcome?.lit === true
   const measured = context.measured?.[index]
+  const tubesFound = tubes.map((t) => tubeFinding(context, t, outcome?.lit ? outcome : undefined, field))
+  const dimmest = dimmestOf(tubesFound)
   return {
     supply: supply.id,
     solved: outcome !== undefined,
@@ -80,7 +84,8 @@ function circuitFinding(context: CircuitContext, circuit: CircuitWiring, index: 
       : [],
     loadings,
     rules,
-    tubes: tubes.map((t) => tubeFinding(context, t, outcome?.lit ? outcome : undefined, field)),
+    tubes: tubesFound,
+    ...(dimmest && { dimmest }),
     leads: leadFindings(context, index, outcome?.lit ? outcome : undefined, field),
     verdict: worst([
       ...(outcome && !outcome.lit ? (['fix'] as const) : []),
@@ -93,21 +98,20 @@ function circuitFinding(context: CircuitContext, circuit: CircuitWiring, index: 
 const worst = (verdicts: readonly Verdict[]): Verdict =>
   verdicts.includes('fix') ? 'fix' : verdicts.includes('watch') ? 'watch' : 'within'
 
-export function supplyOf(layout: Layout, circuit: CircuitWiring): Supply {
-  const supply = layout.supplies.find((s) => s.id === circuit.supply)
-  if (!supply) throw new Error(`the layout names no supply ${circuit.supply}`)
-  return supply
-}
+const dimmestOf = (tubes: readonly TubeFinding[]): CircuitFinding['dimmest'] =>
+  tubes
+    .flatMap(({ id, least }) => (least ? [{ tube: id, ...least }] : []))
+    .reduce<CircuitFinding['dimmest']>(
+      (dimmest, one) => (dimmest && dimmest.current <= one.current ? dimmest : one),
+      undefined,
+    )
 
 /** larger terminal current minus the least current of the string, as phasors */
 function strayOf(outcome: CircuitOutcome & { readonly lit: true }): number {
   const [one, two] = outcome.terminalCurrent
   const larger = magnitude(one) >= magnitude(two) ? one : { re: -two.re, im: -two.im }
-  let least: Complex = larger
-  for (const column of outcome.columns.values())
-    for (let k = 0; k < column.re.length; k++)
-      if (Math.hypot(column.re[k]!, column.im[k]!) < magnitude(least))
-        least = { re: column.re[k]!, im: column.im[k]! }
+  const dimmest = leastOfString(outcome)
+  const least = dimmest.current < magnitude(larger) ? dimmest.phasor : larger
   // a tube entered at b counts its current from a to b: against the direction of the string
   const along = larger.re * least.re + larger.im * least.im >= 0 ? least : { re: -least.re, im: -least.im }
   return magnitude(minus(larger, along))
@@ -160,7 +164,8 @@ function loadingsOf({
   }
   // never over the maker's chart; how much of it is common practice comes with that rule set
   if (chart) add('chart', chart.metres, chart.metres / chart.share, 1, 1)
-  if (outcome?.lit && supply.ratedPower) add('mains', outcome.power / efficiency, supply.ratedPower, 0.9, 1)
+  if (outcome?.lit && supply.ratedPower)
+    add('mains', outcome.power / supplyEfficiency, supply.ratedPower, 0.9, 1)
   if (outcome?.lit && supply.groundFaultTrip)
     add('residual', magnitude(outcome.residual), supply.groundFaultTrip, 0.8, 1)
   if (supply.maxLead) {
@@ -196,15 +201,21 @@ interface Footage {
   readonly share: number
 }
 
+/** diameters that differ by no more are the same glass, m: charts and layouts round to 0.1 mm */
+const sameGlass = 5e-5
+
+const isOf = (entry: ChartEntry, { fill, diameter }: Pick<Tube, 'fill' | 'diameter'>): boolean =>
+  entry.fill === fill && Math.abs(entry.diameter - diameter) <= sameGlass * (1 + 1e-9)
+
 /** Footage against the maker's chart: a pair counts as 0.3 m, each kind of tube as its share of its own chart. */
 function footage(supply: Supply, tubes: readonly Tube[], lengths: readonly number[]): Footage | undefined {
   let metres = 0
   let share = 0
   for (const [i, tube] of tubes.entries()) {
-    const limit = supply.chart.get(`${tube.fill}-${Math.round(tube.diameter * 1000)}`)
-    if (limit === undefined) return undefined
+    const own = supply.chart.find((entry) => isOf(entry, tube))
+    if (own === undefined) return undefined
     metres += lengths[i]! + electrodePair
-    share += (lengths[i]! + electrodePair) / limit
+    share += (lengths[i]! + electrodePair) / own.length
   }
   return share > 0 ? { metres, share } : undefined
 }
@@ -217,28 +228,27 @@ function tubeFinding(
 ): TubeFinding {
   const column = outcome?.columns.get(tube)
   const length = bodies[tube]!.line.length
-  const at = (f: PotentialField, s: number): Complex => {
-    const mix = nodeMix(probe, { kind: 'fixed', index: tube }, s)
-    return { re: readRe(f, mix), im: readIm(f, mix) }
-  }
-  const own = nameplate[0]
+  const at = (f: PotentialField, s: number): Complex =>
+    potentialAt(f, nodeMix(probe, { kind: 'fixed', index: tube }, s))
   const base = {
     id: layout.tubes[tube]!.id,
     length,
-    nameplateA: own ? signedNameplate(nameplate, probe, tube, 0) : 0,
-    nameplateB: own ? signedNameplate(nameplate, probe, tube, length) : 0,
+    nameplateA: signedNameplate(nameplate, probe, tube, 0),
+    nameplateB: signedNameplate(nameplate, probe, tube, length),
   }
   if (!outcome || !column || !field) return base
   const a: EndState = { voltage: at(field, 0), current: column.atA }
   const b: EndState = { voltage: at(field, length), current: column.atB }
   const share = stray?.tubes[tube]
+  // in the middle of the stretch that it flows in
+  const dimmest = leastOf(column)
   return {
     ...base,
     a,
     b,
     drop: magnitude(minus(a.voltage, b.voltage)),
     stray: magnitude(minus(a.current, b.current)),
-    least: leastCurrent(column, length),
+    least: { current: dimmest.current, at: ((dimmest.stretch + 0.5) / column.re.length) * length },
     ...(share && strayWords(share, outcome.residual)),
   }
 }
@@ -253,21 +263,11 @@ const strayWords = (
 }
 
 const signedNameplate = (fields: readonly PotentialField[], probe: Probe, tube: number, at: number): number =>
-  fields.reduce((sum, f) => sum + readRe(f, nodeMix(probe, { kind: 'fixed', index: tube }, at)), 0)
+  summed(fields, nodeMix(probe, { kind: 'fixed', index: tube }, at))
 
-/** the dimmest place: magnitude and path length (middle of the stretch of column) */
-function leastCurrent({ re, im }: ColumnCurrents, length: number): { current: number; at: number } {
-  let current = Infinity
-  let k = 0
-  for (let i = 0; i < re.length; i++) {
-    const here = Math.hypot(re[i]!, im[i]!)
-    if (here < current) {
-      current = here
-      k = i
-    }
-  }
-  return { current, at: ((k + 0.5) / re.length) * length }
-}
+/** snapshots of all supplies on top of each other, V */
+const summed = (fields: readonly PotentialField[], mix: NodeMix): number =>
+  fields.reduce((sum, field) => sum + potentialAt(field, mix).re, 0)
 
 function leadFindings(
   context: CircuitContext,
@@ -287,8 +287,8 @@ function leadFindings(
         role: place.role,
         length: lead.line.length,
         assumed: lead.assumed,
-        nameplate: nameplate.reduce((sum, f) => sum + readRe(f, mix), 0),
-        ...(outcome && field && { voltage: Math.hypot(readRe(field, mix), readIm(field, mix)) }),
+        nameplate: summed(nameplate, mix),
+        ...(outcome && field && { voltage: magnitude(potentialAt(field, mix)) }),
         ...(outcome && share && { stray: share.total, ...strayWords(share, outcome.residual) }),
       },
     ]

@@ -1,8 +1,11 @@
 /** The answers about a sign: pairs, circuits, floating metal, cautions. V rms unless said; m, A, W. */
+
+import type { Outcome } from '../gaps/gap-stress.js'
 import type { BodyRef } from '../geometry/runs.js'
 import type { Point } from '../layout/layout.js'
 import type { Complex } from '../math/complex.js'
 import type { MeasuredCircuit } from '../network/calibration.js'
+import type { FloatingMetal } from '../network/stray.js'
 import type { Mark, MissingRules, Quantity } from './rule-set.js'
 
 export type Condition = 'lit' | 'nameplate' | 'broken'
@@ -49,10 +52,14 @@ export interface Differences {
   readonly openTubes: readonly string[]
 }
 
+/** the face counts as metal; the earlier word first */
+export type PairPart = Exclude<PartKind, 'face'>
+export type PairKind = `${PairPart}-${PairPart}`
+
 export interface PairFinding {
   /** stable while the two spots stay the same stretch: survives edits that do not touch it */
   readonly key: string
-  readonly kind: string
+  readonly kind: PairKind
   readonly a: Spot
   readonly b: Spot
   readonly gap: number
@@ -61,9 +68,9 @@ export interface PairFinding {
   readonly air: {
     readonly peak: number
     readonly startsAt: number
-    readonly outcome: string
+    readonly outcome: Outcome
     /** the same with a tube open; it counts for the verdict where a supply has no open-circuit protection */
-    readonly open?: { readonly peak: number; readonly outcome: string; readonly counted: boolean }
+    readonly open?: { readonly peak: number; readonly outcome: Outcome; readonly counted: boolean }
   }
   readonly rules: readonly RuleFinding[]
   /** what physics and the rules that go by the lit sign were judged on: nameplate where the circuit is not lit */
@@ -176,16 +183,13 @@ export interface CircuitFinding {
   readonly rules: readonly CircuitRuleFinding[]
   /** in string order */
   readonly tubes: readonly TubeFinding[]
+  /** the least current of the string, A, and where on its tube, m; absent where it is not lit */
+  readonly dimmest?: { readonly tube: string; readonly current: number; readonly at: number }
   readonly leads: readonly LeadFinding[]
   readonly verdict: Verdict
 }
 
-export interface FloatingFinding {
-  readonly id: string
-  readonly voltage: number
-  /** current through a person touching it, A */
-  readonly touch: number
-}
+export type FloatingFinding = FloatingMetal
 
 export type CautionLevel = 'danger' | 'fix' | 'watch' | 'note'
 
@@ -203,12 +207,13 @@ export type CautionFacts =
       /** the first to go dark first */
       readonly dark: readonly string[]
     }
-  | { readonly code: 'may-go-dark'; readonly supply: string }
+  /** glass that takes more by this share of the law, the upper end of its band, is not lit */
+  | { readonly code: 'may-go-dark'; readonly supply: string; readonly band: number }
   /** the worst pair, and how many more are to fix and to watch */
   | { readonly code: 'pairs'; readonly pair: PairFinding; readonly fix: number; readonly watch: number }
   /** with a tube open a discharge can start: at the worst of `places`; its supplies have open-circuit protection */
   | { readonly code: 'open-tube'; readonly pair: PairFinding; readonly places: number }
-  | { readonly code: 'floating-metal'; readonly id: string; readonly voltage: number; readonly touch: number }
+  | ({ readonly code: 'floating-metal' } & FloatingFinding)
   | { readonly code: 'loading'; readonly supply: string; readonly loading: Loading }
   | { readonly code: 'rule'; readonly supply: string; readonly finding: CircuitRuleFinding }
   | {

@@ -3,6 +3,7 @@ import type { LeadBody } from '../geometry/conductors.js'
 import { laidStraight, lifted, liftFor, straightLength } from '../geometry/relaid.js'
 import type { Layout } from '../layout/layout.js'
 import { magnitude } from '../math/complex.js'
+import { leastOfString } from '../network/least-current.js'
 import type { CircuitOutcome } from '../network/solution.js'
 import type { StrayShares } from '../network/stray.js'
 import type { CircuitLead } from '../wiring/leads.js'
@@ -85,14 +86,7 @@ function saving(now: SolvedLeads, then: SolvedLeads, circuit: number, lead: numb
   if (!is?.lit || !would?.lit || !takes || !left) return undefined
   return {
     stray: takes.total - left.total,
-    least: leastOf(would) - leastOf(is),
+    least: leastOfString(would).current - leastOfString(is).current,
     residual: magnitude(is.residual) - magnitude(would.residual),
   }
-}
-
-function leastOf(outcome: CircuitOutcome & { readonly lit: true }): number {
-  let least = Infinity
-  for (const { re, im } of outcome.columns.values())
-    for (let k = 0; k < re.length; k++) least = Math.min(least, Math.hypot(re[k]!, im[k]!))
-  return least
 }

@@ -39,6 +39,15 @@ export interface RuleVoltages {
   readonly all?: 'broken'
 }
 
+/** Of the rules of a pair that are not met the one that asks for the widest gap. */
+export const widestUnmet = ({ rules }: { readonly rules: readonly RuleFinding[] }): RuleFinding | undefined =>
+  rules
+    .filter((rule) => !rule.ok)
+    .reduce<RuleFinding | undefined>(
+      (widest, rule) => (widest && widest.needs >= rule.needs ? widest : rule),
+      undefined,
+    )
+
 const matches = ({ sides: [one, two] }: PairRule, a: number, b: number): boolean =>
   ((a & one) !== 0 && (b & two) !== 0) || ((a & two) !== 0 && (b & one) !== 0)
 

@@ -1,12 +1,13 @@
 /** Verdicts on every place where two conductors pass each other. V rms unless said; m. */
 
+import type { StartMode } from '../gaps/air.js'
 import { type Gap, type GapStart, gapStart, stressFrom } from '../gaps/gap-stress.js'
 import type { BodyRef, CloseRun } from '../geometry/runs.js'
 import type { Layout, Point } from '../layout/layout.js'
 import { type Broken, brokenDifference, isProtected } from '../network/broken.js'
 import { type NodeMix, nodeMix, type Probe, rmsDifference } from '../network/potentials.js'
 import type { PotentialField } from '../network/solution.js'
-import type { Condition, PairFinding, PartKind, RuleFinding, Spot, Verdict } from './findings.js'
+import type { Condition, PairFinding, PairKind, PairPart, RuleFinding, Spot, Verdict } from './findings.js'
 import {
   type ChosenRule,
   chosenRules,
@@ -20,8 +21,6 @@ import { otherPlaces } from './places.js'
 import type { RuleSet } from './rule-set.js'
 import { differences, type LitFields, litUpper, type Voltages, voltagesAt } from './voltages.js'
 
-export type { LitFields } from './voltages.js'
-
 export interface PairContext extends Parts {
   readonly layout: Layout
   readonly ruleSets: readonly RuleSet[]
@@ -29,6 +28,8 @@ export interface PairContext extends Parts {
   readonly nameplate: readonly PotentialField[]
   readonly broken: Broken
   readonly lit?: LitFields
+  /** which reading of the evidence starts of discharges go by */
+  readonly air: StartMode
   /** what verdicts go by; differences of all are told */
   readonly condition: Condition
   readonly unlit: ReadonlySet<number>
@@ -146,13 +147,13 @@ function findingAt(
   const { nameplate, broken } = voltages
   const judgedOn = basisOf(context.condition, voltages)
   const start = startOf(context, run, i)
-  const relights = context.supplies.some((s) => s.type === 'core-and-coil')
+  const relights = circuitsOf(context, run).some((c) => context.supplies[c]?.type === 'core-and-coil')
   const opened = stressFrom(start, broken.peak)
   // with open-circuit protection an open tube is a note, unless it is what is asked for
   const openCounted = judgedOn === 'broken' || !isProtected(context.broken, ...places)
   const judged = (place: PlaceVoltage) => {
     const rules = ruleFindings(chosen, context, run, i, ruleVoltages(judgedOn, place, voltages))
-    // on core-and-coil every half-cycle relights: the no-load peak counts as well
+    // on core-and-coil every half-cycle relights: the no-load peak of its parts counts as well
     const peak = judgedOn === 'lit' && relights ? Math.max(place.peak, nameplate.peak) : place.peak
     const stress = stressFrom(start, peak)
     return { rules, stress, verdict: judge(rules, stress.margin, openCounted ? opened.margin : 0) }
@@ -201,7 +202,7 @@ const starts = new WeakMap<Float64Array, Map<string, GapStart>>()
 function startOf(context: PairContext, run: CloseRun, i: number): GapStart {
   const known = starts.get(run.gap) ?? new Map<string, GapStart>()
   starts.set(run.gap, known)
-  const name = `${i} ${highestFrequency(context)} ${context.layout.altitude}`
+  const name = `${i} ${highestFrequency(context)} ${context.layout.altitude} ${context.air}`
   const [a, b] = [
     { body: run.a, at: run.atA[i]! },
     { body: run.b, at: run.atB[i]! },
@@ -213,7 +214,7 @@ function startOf(context: PairContext, run: CloseRun, i: number): GapStart {
 
 const highestFrequency = ({ supplies }: PairContext): number => Math.max(...supplies.map((s) => s.frequency))
 
-/** The surfaces and the air between two places, as verdicts take them: the sign's highest frequency, cautious. */
+/** The surfaces and the air between two places, as verdicts take them: the sign's highest frequency. */
 export const gapBetween = (
   context: PairContext,
   gap: number,
@@ -225,7 +226,7 @@ export const gapBetween = (
   b: surface(context, b.body, b.at),
   frequency: highestFrequency(context),
   altitude: context.layout.altitude,
-  mode: 'cautious',
+  mode: context.air,
 })
 
 /** the criterion of physics with a tube open, as verdicts name it */
@@ -261,12 +262,15 @@ function judge(
 export const verdictOf = (severity: number): Verdict =>
   severity > 1 ? 'fix' : severity > 0.8 ? 'watch' : 'within'
 
-function pairKind(context: PairContext, { a, b }: CloseRun): string {
-  const order: PartKind[] = ['tube', 'lead', 'metal', 'face']
-  const kinds = [partKind(context, a), partKind(context, b)].sort(
-    (x, y) => order.indexOf(x) - order.indexOf(y),
-  )
-  return kinds.map((k) => (k === 'face' ? 'metal' : k)).join('-')
+const pairOrder: Record<PairPart, number> = { tube: 0, lead: 1, metal: 2 }
+
+function pairKind(context: PairContext, { a, b }: CloseRun): PairKind {
+  const word = (ref: BodyRef): PairPart => {
+    const kind = partKind(context, ref)
+    return kind === 'face' ? 'metal' : kind
+  }
+  const [one, two] = [word(a), word(b)]
+  return pairOrder[one] <= pairOrder[two] ? `${one}-${two}` : `${two}-${one}`
 }
 
 function spot(context: PairContext, ref: BodyRef, at: number, points: Float64Array, i: number): Spot {

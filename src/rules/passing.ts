@@ -1,7 +1,8 @@
 /** Two bodies at the place where they pass each other, in the words of rules: part bits, supplies, metal. */
-import type { Surface } from '../gaps/gap-stress.js'
+import type { Surface } from '../gaps/facing-line.js'
 import type { Body, FixedBody, LeadBody, SheetBody } from '../geometry/conductors.js'
 import type { BodyRef, CloseRun } from '../geometry/runs.js'
+import { partOf } from '../layout/ends.js'
 import type { Face, Supply } from '../layout/layout.js'
 import type { PartKind } from './findings.js'
 import { partBits } from './rule-set.js'
@@ -37,7 +38,7 @@ export function partKind(parts: Parts, ref: BodyRef): PartKind {
 export const partName = (parts: Parts, ref: BodyRef): string =>
   (ref.kind === 'sheet' ? parts.sheets[ref.index] : bodyOf(parts, ref))?.name ?? 'face'
 
-export function circuitOf(parts: Parts, body: BodyRef): number {
+function circuitOf(parts: Parts, body: BodyRef): number {
   if (body.kind === 'lead') return parts.circuitOfLead[body.index] ?? -1
   if (body.kind === 'fixed') return parts.circuitOfTube[body.index] ?? -1
   return -1
@@ -82,9 +83,16 @@ export function bitsAt({ first, between, last, length }: BodyBits, at: number): 
 }
 
 /** Does the lead's end `K.a` sit on an electrode without a boot? Its last bit is then bare as well. */
-function onBareElectrode({ bodies }: Parts, end: string): boolean {
-  const tube = end.slice(0, end.lastIndexOf('.'))
-  return bodies.some((body) => body.kind === 'tube' && body.name === tube && !body.boots)
+const onBareElectrode = ({ bodies }: Parts, end: string): boolean => bootless(bodies).has(partOf(end))
+
+/** tubes without boots, listed once for the glass of a sign */
+const bare = new WeakMap<readonly FixedBody[], ReadonlySet<string>>()
+function bootless(bodies: readonly FixedBody[]): ReadonlySet<string> {
+  const known =
+    bare.get(bodies) ??
+    new Set(bodies.flatMap((body) => (body.kind === 'tube' && !body.boots ? [body.name] : [])))
+  bare.set(bodies, known)
+  return known
 }
 
 /** What the air meets at a place; plates, walls and the face are planes. */

@@ -26,7 +26,7 @@ export type RuleFacts =
 export type RuleProblem = RuleFacts & { readonly place: Place }
 
 /** A problem in one sentence: what is wrong, what was expected. */
-export function ruleProblemSentence(problem: RuleFacts): string {
+function ruleProblemSentence(problem: RuleFacts): string {
   switch (problem.code) {
     case 'several-limits':
       return `the rule has ${problem.given.join(' and ')}, expected one of them`

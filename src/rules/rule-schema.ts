@@ -18,8 +18,8 @@ const choices = <const T extends readonly string[]>(words: T) =>
 const rows = z.array(z.tuple([number, number], { error: 'row' }), { error: 'rows' }).min(1)
 const range = z.strictObject({ above: number.optional(), up_to: number.optional() }, { error: 'range' })
 
-export const partWords: readonly PartWord[] = wordsOf(partBits)
-export const quantityWords: readonly Quantity[] = wordsOf(quantities)
+const partWords: readonly PartWord[] = wordsOf(partBits)
+const quantityWords: readonly Quantity[] = wordsOf(quantities)
 const parts = z.array(choice(partWords), { error: 'parts' }).min(1)
 
 const when = z.strictObject(

@@ -1,6 +1,6 @@
 /** The voltages between two places of the sign, by condition. V rms and V peak. */
 import { type Broken, brokenDifference, brokenPotential, openTubes } from '../network/broken.js'
-import { type NodeMix, peakDifference, rmsDifference } from '../network/potentials.js'
+import { ground, type NodeMix, peakDifference, rmsDifference } from '../network/potentials.js'
 import type { PotentialField } from '../network/solution.js'
 import type { Differences } from './findings.js'
 import type { PlaceVoltage } from './pair-rules.js'
@@ -24,8 +24,6 @@ const lower = (lit: LitFields, measure: Measure, a: NodeMix, b: NodeMix): number
 
 /** rms difference at the upper end of the lit band, V */
 export const litUpper = (lit: LitFields, a: NodeMix, b: NodeMix): number => upper(lit, rmsDifference, a, b)
-
-const ground: NodeMix = { low: -1, high: -1, t: 0 }
 
 /** Differences and potentials of one field set, or of one end of the lit band. */
 function placeVoltage(

@@ -1,10 +1,12 @@
 /** What the cursor is on and how it moves: over the worst list, and freely over the map. */
-import type { Body } from '../geometry/conductors.js'
 import { pointAt } from '../geometry/polyline.js'
 import type { BodyRef } from '../geometry/runs.js'
 import type { PairFinding } from '../rules/findings.js'
 import { probeFinding } from '../rules/pairs.js'
+import { bodyOf, partName } from '../rules/passing.js'
+import { mapScene, sceneBounds } from '../view/map-scene.js'
 import {
+  type Bounds,
   cellAt,
   fitWindow,
   type MapWindow,
@@ -14,10 +16,10 @@ import {
   turnedOver,
   zoomed,
 } from '../view/map-window.js'
-import { bodiesNear, type Near } from '../view/sight.js'
-import { frame } from './frame.js'
+import { bodiesNear, type Near, passesCell } from '../view/sight.js'
+import { frameOf } from './frame.js'
 import type { Action } from './keys.js'
-import { type Foot, listedPairs, type Next, type State, selectedPair } from './state.js'
+import { type Foot, listedPairs, type Next, type State, say, selectedPair } from './state.js'
 
 /** cells round the cursor in which it still catches a conductor */
 const reachInCells = 1.6
@@ -31,30 +33,20 @@ export function mapWindow(state: State): MapWindow {
 }
 
 function wholeWindow(state: State): MapWindow {
-  const { map } = frame(state.columns, state.rows, state.present.sign.wiring.circuits.length)
+  const { map } = frameOf(state)
   return fitWindow(signBounds(state), map.width, map.height)
 }
 
-/** The rectangle round all glass, leads, metal and the supply. */
-function signBounds({ inspection }: State) {
-  const { bodies, leads } = inspection.context
-  let [left, top, right, bottom] = [Infinity, Infinity, -Infinity, -Infinity]
-  for (const { line } of [...bodies, ...leads])
-    for (let i = 0; i < line.points.length; i += 3) {
-      left = Math.min(left, line.points[i]!)
-      right = Math.max(right, line.points[i]!)
-      top = Math.min(top, line.points[i + 1]!)
-      bottom = Math.max(bottom, line.points[i + 1]!)
-    }
-  return { left, top, right, bottom }
-}
+/** of each inspection, by its leads: asked for several times at every key */
+const bounds = new WeakMap<object, Bounds>()
 
-export const bodyOf = ({ inspection }: Pick<State, 'inspection'>, ref: BodyRef): Body | undefined =>
-  ref.kind === 'fixed'
-    ? inspection.context.bodies[ref.index]
-    : ref.kind === 'lead'
-      ? inspection.context.leads[ref.index]
-      : undefined
+/** The rectangle round all that the map draws: glass, leads, metal, face and terminals. */
+function signBounds({ inspection: { context } }: State): Bounds {
+  const known = bounds.get(context.leads)
+  const found = known ?? sceneBounds(mapScene(context.layout, [...context.bodies, ...context.leads]))
+  if (!known) bounds.set(context.leads, found)
+  return found
+}
 
 /** The two places of the pair the cursor is on. */
 export function footsOfPair(state: State): { a: Foot; b: Foot } | undefined {
@@ -68,13 +60,23 @@ export function footsOfPair(state: State): { a: Foot; b: Foot } | undefined {
   )
 }
 
-/** Bodies under a free cursor, the one it has picked first. */
+/**
+ * Bodies under a free cursor, the one it has picked first. Those that pass through the cursor's own cell come before
+ * others near it: what the map shows there is what is read out.
+ */
 export function underCursor(state: State): readonly Near[] {
   const { cursor, inspection } = state
   if (cursor.on !== 'map') return []
   const { bodies, leads } = inspection.context
-  const reach = reachInCells * mapWindow(state).step * 2
-  const found = bodiesNear(bodies, leads, cursor.x, cursor.y, reach)
+  const window = mapWindow(state)
+  const cell = cellAt(window, cursor.x, cursor.y)
+  const near = bodiesNear(bodies, leads, cursor.x, cursor.y, reachInCells * window.step * 2)
+  const shown = near.filter(({ body }) => passesCell(bodyOf(inspection.context, body), window, cell))
+  const towards = window.mirrored ? -1 : 1
+  const found = [
+    ...shown.sort((a, b) => (b.z - a.z) * towards),
+    ...near.filter((one) => !shown.includes(one)),
+  ]
   const first = found.length > 0 ? cursor.pick % found.length : 0
   return [...found.slice(first), ...found.slice(0, first)]
 }
@@ -106,11 +108,12 @@ export function findingInView(state: State): PairFinding | undefined {
 }
 
 function findingBetween(state: State, a: Foot, b: Foot): PairFinding | undefined {
-  const [one, two] = [bodyOf(state, a.body), bodyOf(state, b.body)]
+  const { context } = state.inspection
+  const [one, two] = [bodyOf(context, a.body), bodyOf(context, b.body)]
   if (!one || !two) return undefined
   const [p, q] = [pointAt(one.line, a.at), pointAt(two.line, b.at)]
   const apart = Math.hypot(p[0] - q[0], p[1] - q[1], p[2] - q[2])
-  return probeFinding(state.inspection.context, {
+  return probeFinding(context, {
     a: a.body,
     b: b.body,
     atA: Float64Array.of(a.at),
@@ -223,32 +226,22 @@ function zoomedBy(state: State, factor: number): State {
 /** Marks the place under the cursor, or takes the mark away when it is there already. */
 export function marked(state: State): Next {
   const foot = footUnderCursor(state)
-  const say = (text: string): NonNullable<State['message']> => ({ text, level: 'plain' })
   if (
     state.mark &&
     (!foot || (sameBody(foot.body, state.mark.body) && Math.abs(foot.at - state.mark.at) < 1e-6))
   ) {
     const { mark: _, ...rest } = state
-    return { state: { ...rest, message: say('Mark taken away.') }, effects: [] }
+    return say(rest, 'Mark taken away.')
   }
-  if (!foot)
-    return {
-      state: { ...state, message: say('Nothing to mark here: move the cursor onto glass, a lead or metal.') },
-      effects: [],
-    }
-  const body = bodyOf(state, foot.body)
+  if (!foot) return say(state, 'Nothing to mark here: move the cursor onto glass, a lead or metal.')
+  const name = partName(state.inspection.context, foot.body)
   const place = placeOfCursor(state)
   const cursor: State['cursor'] =
     state.cursor.on === 'map' || !place ? state.cursor : { on: 'map', x: place.x, y: place.y, pick: 0 }
-  return {
-    state: {
-      ...state,
-      cursor,
-      mark: { body: foot.body, at: foot.at },
-      message: say(`Marked ${body?.name ?? 'face'}. Move the cursor to probe from here; m or Esc ends it.`),
-    },
-    effects: [],
-  }
+  return say(
+    { ...state, cursor, mark: { body: foot.body, at: foot.at } },
+    `Marked ${name}. Move the cursor to probe from here; m or Esc ends it.`,
+  )
 }
 
 const sameBody = (a: BodyRef, b: BodyRef): boolean =>

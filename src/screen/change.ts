@@ -1,5 +1,6 @@
 /** What an edit did to the worst pair and to the load, in one line. */
 import type { Inspection } from '../inspection.js'
+import { toFix } from '../rules/to-fix.js'
 import { kvFigure, percent, severityFigure } from '../view/words.js'
 import type { Message } from './state.js'
 
@@ -17,9 +18,6 @@ export function editChange(said: string, before: Inspection, after: Inspection):
   // the figures come first: the words are what a narrow screen may cut
   return { text: [...parts, said].join(' · '), level: level(before, after) }
 }
-
-const toFix = ({ pairs, circuits }: Inspection): number =>
-  pairs.filter((p) => p.verdict === 'fix').length + circuits.filter((c) => c.verdict === 'fix').length
 
 function loadChange(
   was: Inspection['circuits'][number] | undefined,

@@ -1,10 +1,12 @@
 /** Edits between circuits: a tube to another supply, and the way back to a supply's midpoint. */
+
+import { leavingEnd, partOf } from '../layout/ends.js'
 import type { Grounding } from '../layout/layout.js'
 import { clearMidpointReturn, jointAt, moveToCircuit, setMidpointReturn } from '../wiring/circuit-edits.js'
-import { leavingEnd, placeOf } from '../wiring/edits.js'
+import { placeOf } from '../wiring/edits.js'
 import { footUnderCursor } from './aim.js'
-import { endNear, figureTyped, say, tubeUnderCursor, withWiring } from './editing.js'
-import type { Next, State } from './state.js'
+import { endNear, figureTyped, tubeUnderCursor, withWiring } from './editing.js'
+import { type Next, type State, say } from './state.js'
 
 /** Circuits that a tube can go to: all but its own. */
 export const otherCircuits = ({ present }: State, tube: string): number[] => {
@@ -50,7 +52,7 @@ function nearestPlace(state: State, tube: string, circuit: number): { behind?: s
 
 /** Where the electrode of a tube end (`K.a`) is, m. */
 function endPoint({ prepared }: State, end: string): readonly [number, number, number] | undefined {
-  const line = prepared.tubes.find(({ name }) => name === end.slice(0, -2))?.line
+  const line = prepared.tubes.find(({ name }) => name === partOf(end))?.line
   if (!line) return undefined
   const at = end.endsWith('.a') ? 0 : line.points.length - 3
   return [line.points[at]!, line.points[at + 1]!, line.points[at + 2]!]
@@ -62,7 +64,7 @@ export function midpointReturnHere(state: State): Next {
   const end = endAtCursor(state)
   if (end === undefined)
     return say(state, 'A midpoint return hangs on a joint: move the cursor onto glass or a jumper.', 'bad')
-  const index = placeOf(wiring, end.slice(0, end.lastIndexOf('.')))?.circuit ?? 0
+  const index = placeOf(wiring, partOf(end))?.circuit ?? 0
   const circuit = wiring.circuits[index]!
   const back = circuit.midpointReturn
   const joint = jointAt(circuit, end)

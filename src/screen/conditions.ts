@@ -2,8 +2,7 @@
 import { inspection } from '../inspection.js'
 import { type Break, breaksOf } from '../network/broken.js'
 import type { Condition } from '../rules/findings.js'
-import { say } from './editing.js'
-import { type Next, type State, selectedPair } from './state.js'
+import { type Next, type State, say, selectedPair } from './state.js'
 
 const following: Record<Condition, Condition> = { lit: 'nameplate', nameplate: 'broken', broken: 'lit' }
 

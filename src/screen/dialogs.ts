@@ -12,8 +12,6 @@ import {
   heightTyped,
   linkName,
   onTube,
-  say,
-  stay,
   variantChosen,
   variantKept,
 } from './editing.js'
@@ -27,6 +25,8 @@ import {
   type PromptKind,
   type State,
   type SupplyFigure,
+  say,
+  stay,
 } from './state.js'
 import {
   currentUnits,

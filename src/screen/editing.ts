@@ -1,36 +1,32 @@
 /** Edits asked for by a key, a typed value or a choice: each makes a new sign, says what it did and asks for a solution. */
 import { inspection, preparedAgain } from '../inspection.js'
+import { enteringEnd, leavingEnd } from '../layout/ends.js'
 import type { Fill, Layout, Wiring } from '../layout/layout.js'
 import { kv as kvText, length as lengthText, ma } from '../view/words.js'
+import type { Edit, Sign } from '../wiring/edit.js'
 import {
-  type Edit,
-  enteringEnd,
   feedFromOtherEnd,
   joinEnds,
-  leavingEnd,
   moveFeed,
   placeOf,
-  type Sign,
-  type SupplyFigures,
   sameWiring,
   shiftTube,
   swapTerminals,
   turnTube,
   wiringChange,
+  withVariant,
+} from '../wiring/edits.js'
+import {
+  type SupplyFigures,
   withSupply,
   withSupplyAt,
   withTubeFill,
   withTubeHeight,
-  withVariant,
-} from '../wiring/edits.js'
+} from '../wiring/figure-edits.js'
 import { footsOfPair, footUnderCursor, placeOfCursor } from './aim.js'
 import type { Action } from './keys.js'
 import { refusalText } from './refusal-text.js'
-import { type Foot, type Next, type State, type Step, selectedPair, unsaved } from './state.js'
-
-export const stay = (state: State): Next => ({ state, effects: [] })
-export const say = (state: State, text: string, level: 'good' | 'plain' | 'bad' = 'plain'): Next =>
-  stay({ ...state, message: { text, level } })
+import { type Foot, type Next, type State, type Step, say, selectedPair, unsaved } from './state.js'
 
 /** Shows a sign: the wiring is in force at once, its figures follow when the solution is there. */
 function shown(
@@ -82,7 +78,7 @@ export const withWiring = (state: State, edit: Edit<Wiring>, said: string): Next
     ? commit(state, { ...state.present.sign, wiring: edit.value }, withChange(state, edit.value, said))
     : say(state, refusalText(edit.why), 'bad')
 
-export const withLayout = (state: State, edit: Edit<Layout>, said: string): Next =>
+const withLayout = (state: State, edit: Edit<Layout>, said: string): Next =>
   edit.ok
     ? commit(state, { ...state.present.sign, layout: edit.value }, said)
     : say(state, refusalText(edit.why), 'bad')

@@ -1,4 +1,5 @@
 /** Where each pane lies on the screen. Cells; every row is accounted for, at any size from 40×10 up. */
+import type { State } from './state.js'
 
 export interface Box {
   readonly x: number
@@ -34,6 +35,10 @@ export const sheetBox = (columns: number, rows: number): Box => {
   const { title, message } = frame(columns, rows)
   return { x: 0, y: title.height, width: columns, height: message.y - title.height }
 }
+
+/** The frame of what is on the screen. */
+export const frameOf = ({ columns, rows, present }: Pick<State, 'columns' | 'rows' | 'present'>): Frame =>
+  frame(columns, rows, present.sign.wiring.circuits.length)
 
 /** rows of the supply loading for one circuit at its fullest */
 const loadingRows = 6

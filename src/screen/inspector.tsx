@@ -3,8 +3,10 @@ import { Box, Text, Transform } from 'ink'
 import SelectInput from 'ink-select-input'
 import TextInput from 'ink-text-input'
 import { type ReactNode, useSyncExternalStore } from 'react'
+import { standingWarning } from '../view/caution-text.js'
+import { textWidth } from '../view/text-width.js'
 import type { Theme } from '../view/theme.js'
-import { frame, type Box as Place, sheetBox, smallest, tooSmall } from './frame.js'
+import { frameOf, type Box as Place, sheetBox, smallest, tooSmall } from './frame.js'
 import { fitted, type Line, line, lineText } from './lines.js'
 import { bannerLines, footerLine, legendLine, messageLine } from './panes/edges.js'
 import { loadingLines } from './panes/loading.js'
@@ -15,7 +17,6 @@ import { asciiOnly } from './panes/words.js'
 import { worstLines } from './panes/worst.js'
 import type { Event } from './reduce.js'
 import { type State, sheetOf } from './state.js'
-import { textWidth } from './text-width.js'
 
 /** The state outside React: handlers never read a captured one. */
 export interface Store {
@@ -28,7 +29,7 @@ export function Inspector({ store, theme }: { readonly store: Store; readonly th
   const state = useSyncExternalStore(store.subscribe, store.state)
   const { columns, rows } = state
   if (tooSmall(state)) return <TooSmall state={state} />
-  const boxes = frame(columns, rows, state.present.sign.wiring.circuits.length)
+  const boxes = frameOf(state)
   const draw = (place: Place, lines: readonly Line[]) => (
     <Rows place={place} lines={state.ascii ? lines.map(asciiLine) : lines} theme={theme} />
   )
@@ -56,8 +57,8 @@ interface PanesProps {
 
 /** Map, worst list and loading – beside each other or stacked – then legend and readout. */
 function Panes({ state, store, theme, draw }: PanesProps) {
-  const { columns, rows } = state
-  const boxes = frame(columns, rows, state.present.sign.wiring.circuits.length)
+  const { columns } = state
+  const boxes = frameOf(state)
   const worst = draw(boxes.worst, worstLines(state, boxes.worst.width, boxes.worst.height))
   const loading = draw(boxes.loading, loadingLines(state, boxes.loading.width, boxes.loading.height))
   const center = (
@@ -103,7 +104,7 @@ function TooSmall({ state }: { readonly state: State }) {
               .trim()
           : `tubewright needs ${smallest.columns}x${smallest.rows} cells; this window has ${columns}x${rows}. Make it larger, or q to leave.`}
       </Text>
-      <Text wrap="wrap">HIGH VOLTAGE KILLS. Lock out first.</Text>
+      <Text wrap="wrap">{standingWarning(0)}</Text>
     </Box>
   )
 }

@@ -40,12 +40,25 @@ function breakShown(state: Pick<State, 'inspection' | 'open'>): readonly Potenti
   return fields
 }
 
-/** Radians: the instant counts from the peak of terminal 1 of the first supply. */
-export function phaseShown(state: Shown): number {
-  const field = fieldsShown(state)[0]
-  const terminal = state.inspection.probe.nodes.count
-  const zero = field && field.frequency > 0 ? Math.atan2(field.im[terminal] ?? 0, field.re[terminal] ?? 0) : 0
-  return (state.instant * Math.PI) / 6 - zero
+/** The fields on the screen and the phase at which they are read: taken once for all cells of a map. */
+export interface InstantShown {
+  readonly fields: readonly PotentialField[]
+  /** radians: the instant counts from the peak of terminal 1 of the first supply that has a field */
+  readonly phase: number
+}
+
+export function instantShown(state: Shown): InstantShown {
+  const fields = fieldsShown(state)
+  const zero = fields[0] ? phaseOfTerminal(state.inspection, fields[0]) : 0
+  return { fields, phase: (state.instant * Math.PI) / 6 - zero }
+}
+
+/** the first lead of a circuit hangs on terminal 1 of its supply */
+function phaseOfTerminal({ wiring, places, probe }: Inspection, field: PotentialField): number {
+  if (field.frequency === 0) return 0
+  const circuit = wiring.circuits.findIndex(({ supply }) => supply === field.supply)
+  const node = probe.nodes.count + places.findIndex((place) => place.circuit === circuit)
+  return Math.atan2(field.im[node] ?? 0, field.re[node] ?? 0)
 }
 
 /** the highest potential of the sign at any instant, V peak: what the scale must hold */
@@ -60,5 +73,6 @@ export function peakPotential(state: Shown): number {
   return peak * Math.SQRT2
 }
 
-export const instantAt = (state: Shown, mix: NodeMix): number =>
-  instantPotential(fieldsShown(state), mix, phaseShown(state))
+/** V at the instant shown */
+export const instantAt = ({ fields, phase }: InstantShown, mix: NodeMix): number =>
+  instantPotential(fields, mix, phase)

@@ -221,7 +221,7 @@ export const groupTitles: Record<KeyGroup, string> = {
 }
 
 /** One group of the table as rows of plain text: what the README prints. */
-export const keyRows = (group: KeyGroup): string[] =>
+const keyRows = (group: KeyGroup): string[] =>
   keyTable
     .filter((entry) => entry.group === group)
     .map(({ keys, does }) => `  ${keys.map(keyText).join(' ').padEnd(14)}${does}`)

@@ -1,6 +1,6 @@
 /** Rows of the screen as spans of text with a meaning each; colours come last. */
+import { cut, padEnd, textWidth } from '../view/text-width.js'
 import { type Meaning, marks, sgr, type Theme } from '../view/theme.js'
-import { cut, padEnd, textWidth } from './text-width.js'
 
 export interface Span {
   readonly text: string

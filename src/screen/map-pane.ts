@@ -3,16 +3,17 @@ import { pointAt } from '../geometry/polyline.js'
 import type { BodyRef } from '../geometry/runs.js'
 import type { Inspection } from '../inspection.js'
 import { nodeMix } from '../network/potentials.js'
-import { type MapGrid, mapGrid } from '../view/map.js'
+import { bodyOf } from '../rules/passing.js'
+import { type MapGrid, mapGrid, type PickedPlace } from '../view/map.js'
 import { type Overlays, type Place, withOverlays } from '../view/map-overlay.js'
 import { type MapRaster, mapRaster } from '../view/map-raster.js'
 import { mapScene } from '../view/map-scene.js'
-import { cellAt, type MapWindow } from '../view/map-window.js'
+import { cellAt, inside, type MapWindow } from '../view/map-window.js'
 import { potentialScale } from '../view/scale.js'
 import { meanings, sgr, type Theme } from '../view/theme.js'
-import { bodyOf, footsOfPair, mapWindow, placeOfCursor } from './aim.js'
+import { footsOfPair, footUnderCursor, mapWindow, placeOfCursor } from './aim.js'
 import type { Box } from './frame.js'
-import { instantAt, peakPotential } from './instant.js'
+import { instantAt, instantShown, peakPotential } from './instant.js'
 import type { Foot, State } from './state.js'
 import type { Grid } from './terminal/cells.js'
 
@@ -48,7 +49,7 @@ export function mapPane(theme: Theme): MapPane {
   return {
     grid(state, box) {
       const window = mapWindow(state)
-      const shown = withOverlays(coloured(state, rasterOf(state, window)), window, overlays(state, window))
+      const shown = withOverlays(mapShown(state, rasterOf(state, window)), window, overlays(state, window))
       return {
         ...box,
         glyphs: shown.glyphs,
@@ -66,24 +67,38 @@ const sameWindow = (a: MapWindow, b: MapWindow): boolean =>
   a.step === b.step &&
   a.mirrored === b.mirrored
 
-function coloured(state: State, raster: MapRaster): MapGrid {
-  const { inspection, view, cursor } = state
+/** The conductors at the instant shown, in the cursor's cell the one that is read out. */
+export function mapShown(state: State, raster: MapRaster): MapGrid {
+  const { inspection, view } = state
   const { bodies } = inspection.context
+  const shown = instantShown(state)
+  const picked = pickedPlace(state, raster.window)
   const refOf = (body: number): BodyRef =>
     body < bodies.length ? { kind: 'fixed', index: body } : { kind: 'lead', index: body - bodies.length }
   const potentialOf = (body: number, at: number): number | undefined => {
     const part = bodies[body]
     if (part?.kind === 'bar' && part.grounded) return undefined
     if (state.condition === 'lit' && inspection.unlitBodies.has(body)) return undefined
-    return instantAt(state, nodeMix(inspection.probe, refOf(body), at))
+    return instantAt(shown, nodeMix(inspection.probe, refOf(body), at))
   }
   return mapGrid(raster, potentialOf, {
     scale: potentialScale(peakPotential(state)),
     charset: state.ascii ? 'ascii' : 'box',
     glyphs: view.glyphs,
     labels: view.names,
-    cycle: cursor.on === 'map' ? cursor.pick : 0,
+    ...(picked && { picked }),
   })
+}
+
+/** What the readout tells of, in the cell of the cursor. */
+function pickedPlace(state: State, window: MapWindow): PickedPlace | undefined {
+  const [place, foot] = [placeOfCursor(state), footUnderCursor(state)]
+  const cell = place && cellAt(window, place.x, place.y)
+  if (!cell || !foot || !inside(window, cell)) return undefined
+  const { bodies } = state.inspection.context
+  if (foot.body.kind !== 'fixed' && foot.body.kind !== 'lead') return undefined
+  const body = foot.body.index + (foot.body.kind === 'lead' ? bodies.length : 0)
+  return { cell: cell.row * window.columns + cell.column, body, at: foot.at }
 }
 
 /** The pair with the line between its places, or mark and cursor. */
@@ -103,7 +118,7 @@ function overlays(state: State, window: MapWindow): Overlays {
 }
 
 function placeOf(state: State, foot: Foot): Place | undefined {
-  const body = bodyOf(state, foot.body)
+  const body = bodyOf(state.inspection.context, foot.body)
   if (!body) return undefined
   const [x, y] = pointAt(body.line, foot.at)
   return { x, y }

@@ -5,11 +5,11 @@ import { aimByKey, inView, marked } from './aim.js'
 import { editChange } from './change.js'
 import { breakStepped, otherCondition } from './conditions.js'
 import { closed, dialogByKey, picked, submitted } from './dialogs.js'
-import { asFiled, editByKey, redo, say, stay, undo } from './editing.js'
+import { asFiled, editByKey, redo, undo } from './editing.js'
 import { tooSmall } from './frame.js'
 import { type Action, actionOf } from './keys.js'
 import { lastScroll } from './panes/sheets.js'
-import { type Next, type Opened, type SheetDialog, type State, unsaved } from './state.js'
+import { type Next, type Opened, type SheetDialog, type State, say, stay, unsaved } from './state.js'
 
 export type Event =
   | { readonly type: 'key'; readonly key: string }
@@ -23,8 +23,13 @@ export type Event =
   | { readonly type: 'typed'; readonly text: string }
   | { readonly type: 'submitted'; readonly text: string }
   | { readonly type: 'picked'; readonly value: string }
-  | { readonly type: 'saved'; readonly opened: Opened }
-  | { readonly type: 'not-saved'; readonly why: string; readonly changedOnDisk: boolean }
+  | { readonly type: 'saved'; readonly opened: Opened; readonly thenQuit: boolean }
+  | {
+      readonly type: 'not-saved'
+      readonly why: string
+      readonly changedOnDisk: boolean
+      readonly thenQuit: boolean
+    }
 
 export function reduce(state: State, event: Event): Next {
   switch (event.type) {
@@ -45,12 +50,18 @@ export function reduce(state: State, event: Event): Next {
     case 'picked':
       return state.dialog?.kind === 'pick' ? picked(state, state.dialog.pick, event.value) : stay(state)
     case 'saved':
-      return say({ ...state, opened: event.opened }, `Saved ${event.opened.name}.`, 'good')
+      return saved(state, event.opened, event.thenQuit)
     case 'not-saved':
       return event.changedOnDisk
-        ? stay({ ...state, dialog: { kind: 'overwrite' } })
+        ? stay({ ...state, dialog: { kind: 'overwrite', thenQuit: event.thenQuit } })
         : say(state, event.why, 'bad')
   }
+}
+
+/** An edit that came in while the file was written keeps the program open. */
+function saved(state: State, opened: Opened, thenQuit: boolean): Next {
+  const next = say({ ...state, opened }, `Saved ${opened.name}.`, 'good')
+  return thenQuit && !unsaved(next.state) ? { ...next, effects: [{ do: 'quit' }] } : next
 }
 
 /** of a typed text, characters: more than any name or figure takes, little enough to draw */
@@ -158,7 +169,7 @@ function fileByKey(state: State, action: Action): Next {
       return asFiled(state)
     case 'save':
       return unsaved(state)
-        ? { state, effects: [{ do: 'save', force: false }] }
+        ? { state, effects: [{ do: 'save', force: false, thenQuit: false }] }
         : say(state, 'Nothing to save: the file holds this wiring.')
     case 'quit':
       return unsaved(state)
@@ -181,11 +192,13 @@ function dialogKey(state: State, name: string): Next {
       return scrolled(state, dialog, name)
     case 'quit':
       if (name === 's')
-        return { state: closed(state), effects: [{ do: 'save', force: false }, { do: 'quit' }] }
+        return { state: closed(state), effects: [{ do: 'save', force: false, thenQuit: true }] }
       if (name === 'd') return { state, effects: [{ do: 'quit' }] }
       return stay(state)
     case 'overwrite':
-      return name === 'o' ? { state: closed(state), effects: [{ do: 'save', force: true }] } : stay(state)
+      return name === 'o'
+        ? { state: closed(state), effects: [{ do: 'save', force: true, thenQuit: dialog.thenQuit }] }
+        : stay(state)
     default:
       return stay(state)
   }

@@ -28,6 +28,8 @@ export function refusalText(why: Refusal): string {
       return `${why.end} is joined to the supply: a midpoint return needs a joint between two tubes.`
     case 'no-midpoint':
       return `${why.supply} has no grounded midpoint to go back to.`
+    case 'midpoint-used':
+      return `${why.end} goes back to the midpoint of ${why.supply} in the variant "${why.variant}": take that away there first.`
     case 'only-tube':
       return `${why.supply} has one tube only: its feed has nowhere else to go. Swap the terminals (x) instead.`
   }

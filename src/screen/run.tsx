@@ -1,21 +1,18 @@
 /** The inspector on a real terminal: store, worker, keys and screen put together. */
 import { render } from 'ink'
 import { type LayoutFile, saveSign } from '../files.js'
-import type { Theme } from '../view/theme.js'
-import { frame, tooSmall } from './frame.js'
+import { frameOf, tooSmall } from './frame.js'
 import { Inspector, promptRows, type Store } from './inspector.js'
 import { mapPane } from './map-pane.js'
 import { type Event, reduce } from './reduce.js'
 import type { Solving } from './solving.js'
-import { initialState } from './start.js'
-import { type Effect, sheetOf, unsaved } from './state.js'
+import { initialState, type StartOptions } from './start.js'
+import { type Effect, sheetOf } from './state.js'
 import { frameSink } from './terminal/frame-sink.js'
 import { keyPump } from './terminal/key-pump.js'
 import { openScreen } from './terminal/open-screen.js'
 
-export interface RunOptions {
-  readonly theme: Theme
-  readonly ascii: boolean
+export interface RunOptions extends StartOptions {
   /** prints bytes and times of the run when it is over */
   readonly measure: boolean
 }
@@ -24,7 +21,6 @@ export function runInspector(file: LayoutFile, options: RunOptions, worker: Solv
   const out = process.stdout
   let state = initialState(file, options, out.columns || 80, out.rows || 24)
   let glass = 0
-  let quitAfterSave = false
   const listeners = new Set<() => void>()
 
   const screen = openScreen({ onResume: () => sink.repaint() })
@@ -53,12 +49,12 @@ export function runInspector(file: LayoutFile, options: RunOptions, worker: Solv
 
   /** The map lies over the frame, except where a dialog is open in front of it. */
   function showMap(): void {
-    const { columns, rows, dialog } = state
+    const { dialog } = state
     if (tooSmall(state) || sheetOf(dialog)) {
       sink.setOverlay('map', undefined)
       return
     }
-    const box = frame(columns, rows, state.present.sign.wiring.circuits.length).map
+    const box = frameOf(state).map
     const grid = map.grid(state, box)
     const height =
       dialog?.kind === 'prompt'
@@ -78,24 +74,26 @@ export function runInspector(file: LayoutFile, options: RunOptions, worker: Solv
         worker.request({ revision: state.revision, glass, leads: true, ...state.present.sign })
         return
       case 'save':
-        save(effect.force)
+        save(effect.force, effect.thenQuit)
         return
       case 'quit':
-        // after a save that failed the work stays on the screen
-        if (!quitAfterSave || !unsaved(state) || state.dialog?.kind === 'quit') end()
+        end()
         return
       case 'suspend':
         screen.suspend()
     }
   }
 
-  function save(force: boolean): void {
+  function save(force: boolean, thenQuit: boolean): void {
     const { path, name, source, sign } = state.opened
     const saved = saveSign(path, source, sign, state.present.sign, force)
-    quitAfterSave = !saved.ok
-    if (saved.ok)
-      dispatch({ type: 'saved', opened: { path, name, source: saved.source, sign: state.present.sign } })
-    else dispatch({ type: 'not-saved', why: saved.why, changedOnDisk: saved.changedOnDisk })
+    if (saved.ok) {
+      const opened = { path, name, source: saved.source, sign: state.present.sign }
+      dispatch({ type: 'saved', opened, thenQuit })
+    } else {
+      const { why, changedOnDisk } = saved
+      dispatch({ type: 'not-saved', why, changedOnDisk, thenQuit })
+    }
   }
 
   function end(): void {

@@ -6,7 +6,8 @@ import type { Condition, PairFinding } from '../rules/findings.js'
 import type { LeadSaving } from '../rules/lead-savings.js'
 import type { MapWindow } from '../view/map-window.js'
 import type { Symptom } from '../view/symptoms.js'
-import { type Sign, sameWiring } from '../wiring/edits.js'
+import type { Sign } from '../wiring/edit.js'
+import { sameWiring } from '../wiring/edits.js'
 
 /** The file as it was read. */
 export interface Opened {
@@ -76,7 +77,8 @@ export type Dialog =
   | { readonly kind: 'why'; readonly scroll: number }
   | { readonly kind: 'symptom'; readonly symptom: Symptom; readonly scroll: number }
   | { readonly kind: 'quit' }
-  | { readonly kind: 'overwrite' }
+  /** `thenQuit`: the save was asked for on the way out */
+  | { readonly kind: 'overwrite'; readonly thenQuit: boolean }
 
 /** A long text that takes the place of the panes and can be scrolled. */
 export type SheetDialog = Extract<Dialog, { readonly scroll: number }>
@@ -132,7 +134,8 @@ export type Effect =
   | { readonly do: 'solve' }
   /** solve again, with what laying the output leads otherwise would give back */
   | { readonly do: 'lay-leads' }
-  | { readonly do: 'save'; readonly force: boolean }
+  /** `thenQuit`: where it is saved, the program ends */
+  | { readonly do: 'save'; readonly force: boolean; readonly thenQuit: boolean }
   | { readonly do: 'quit' }
   | { readonly do: 'suspend' }
 
@@ -140,6 +143,10 @@ export interface Next {
   readonly state: State
   readonly effects: readonly Effect[]
 }
+
+export const stay = (state: State): Next => ({ state, effects: [] })
+export const say = (state: State, text: string, level: Message['level'] = 'plain'): Next =>
+  stay({ ...state, message: { text, level } })
 
 /** the sign on screen says something else than the file */
 export const unsaved = ({ present, opened }: Pick<State, 'present' | 'opened'>): boolean =>

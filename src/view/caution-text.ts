@@ -1,7 +1,9 @@
-/** Cautions in English: the same on the screen, in `check` and on the job sheet. */
+/** Cautions in English: the same on the screen and in `check`. */
 import type { Units } from '../layout/layout.js'
-import type { Caution, CircuitRuleFinding, Loading, PairFinding } from '../rules/findings.js'
+import type { Caution, CircuitRuleFinding, PairFinding } from '../rules/findings.js'
+import { widestUnmet } from '../rules/pair-rules.js'
 import type { MissingRules, Quantity } from '../rules/rule-set.js'
+import { loadingClause } from './loading-text.js'
 import {
   hertz,
   kv,
@@ -15,13 +17,21 @@ import {
   openTubeGoverns,
   outcomeText,
   percent,
-  spotText,
-  watts,
+  placeText,
+  touchText,
 } from './words.js'
 
-/** Cautions that hold for every sign and are always in view. */
-export const standingCaution =
-  'HIGH VOLTAGE KILLS AND STARTS FIRES. Off, locked out and discharged before touching; licensed person and local code decide.'
+/** What holds for every sign and is always in view, the shorter forms for narrow screens. */
+const standing = [
+  'HIGH VOLTAGE KILLS AND STARTS FIRES. Off, locked out and discharged before touching; licensed person and local code decide.',
+  'HIGH VOLTAGE KILLS AND STARTS FIRES. Off, locked out, discharged before touching. Code and licence decide.',
+  'HIGH VOLTAGE KILLS. Lock out and discharge first. Local code decides.',
+  'HIGH VOLTAGE KILLS. Lock out first.',
+] as const
+
+/** the longest form that fits into `width` cells; the shortest where none does */
+export const standingWarning = (width = Infinity): string =>
+  standing.find((text) => text.length <= width) ?? standing[3]
 
 export const generalCautions: readonly string[] = [
   'The voltages here kill. Switch off, lock out and discharge before touching glass, leads or metal; one slip is enough.',
@@ -43,15 +53,15 @@ export function cautionText(caution: Caution, units: Units): string {
     case 'dark':
       return darkText(caution)
     case 'may-go-dark':
-      return `${caution.supply} lights the string by the default gradient law, but not if the glass takes 30 % more: the sign may go dark.`
+      return `${caution.supply} lights the string by the gradient law, but not if the glass takes ${percent(caution.band)} more: the sign may go dark.`
     case 'pairs':
       return pairsText(caution.pair, caution.fix, caution.watch, units)
     case 'open-tube':
       return openTubeText(caution, units)
     case 'floating-metal':
-      return `Metal "${caution.id}" is not grounded: it floats to ${kv(caution.voltage)} rms, and ${ma(caution.touch)} would flow through a person touching it. Bond it to ground.`
+      return `Metal "${caution.id}" is not grounded: it floats to ${kv(caution.voltage)} rms, and ${touchText(caution.touch)} would flow through a person touching it. Bond it to ground.`
     case 'loading':
-      return `${caution.supply} ${loadingText(caution.loading, units)}.`
+      return `${caution.supply} ${loadingClause(caution.loading, units)}.`
     case 'rule':
       return ruleText(caution.supply, caution.finding, units)
     case 'conduit':
@@ -107,38 +117,22 @@ function pairsText(pair: PairFinding, fix: number, watch: number, units: Units):
     need === undefined ? `against ${pair.governs}` : `needs ${length(need, units)} by ${governing(pair)}`
   const more = [...(fix > 0 ? [`${fix} more to fix`] : []), ...(watch > 0 ? [`${watch} to watch`] : [])]
   return (
-    `${spotText(pair.a, units)} to ${spotText(pair.b, units)}: gap ${gap} at ${difference}, ${asked}` +
+    `${placeText(pair.a, units, 'short')} to ${placeText(pair.b, units, 'short')}: gap ${gap} at ${difference}, ${asked}` +
     `${more.length > 0 ? `; ${more.join(', ')}` : ''}.`
   )
 }
 
 function openTubeText({ pair, places }: Of<'open-tube'>, units: Units): string {
-  const where = `${spotText(pair.a, units)} and ${spotText(pair.b, units)}`
-  const outcome = outcomeText[pair.air.open?.outcome ?? ''] ?? ''
+  const where = `${placeText(pair.a, units, 'short')} and ${placeText(pair.b, units, 'short')}`
+  const outcome = outcomeText[pair.air.open?.outcome ?? 'nothing']
   const more = places > 1 ? ` (and in ${places - 1} more places)` : ''
   return `With ${openText(pair)}, ${kv(pair.difference.broken)} rms stand between ${where}${more}: ${outcome}. Open-circuit protection must switch the supply off: test it.`
 }
 
 /** the rule that asks for the widest gap */
-const governing = ({ rules, governs }: PairFinding): string => {
-  const broken = rules.filter((r) => !r.ok)
-  const widest = broken.reduce((w, r) => (r.needs > w.needs ? r : w), broken[0]!)
-  return widest ? `${widest.set}: ${widest.clause}` : governs
-}
-
-function loadingText({ by, value, limit, share }: Loading, units: Units): string {
-  switch (by) {
-    case 'voltage':
-      return `runs at ${percent(share)} of its no-load voltage (${kv(value)} of ${kv(limit)} rms)`
-    case 'chart':
-      return `carries ${percent(share)} of the maker's chart (${metres(value)} of ${metres(limit)} with electrode pairs)`
-    case 'mains':
-      return `draws ${percent(share)} of its rated input (about ${watts(value)} of ${watts(limit)})`
-    case 'residual':
-      return `returns ${ma(value)} through ground: ${percent(share)} of the ${ma(limit)} that trips it`
-    case 'lead':
-      return `has an output lead of ${length(value, units)}; its leads allow ${length(limit, units)}`
-  }
+const governing = (pair: PairFinding): string => {
+  const widest = widestUnmet(pair)
+  return widest ? `${widest.set}: ${widest.clause}` : pair.governs
 }
 
 /** What a quantity of rules is called, and how its figures are written. */

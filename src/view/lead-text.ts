@@ -1,8 +1,8 @@
 /** Leads in words: what they eat, what another way of laying them gives back, what makes the residual. */
 import type { Layout, Units } from '../layout/layout.js'
+import { supplyOf } from '../layout/parts.js'
 import { magnitude } from '../math/complex.js'
 import { noLoadVoltage } from '../network/supplies.js'
-import { supplyOf } from '../rules/circuits.js'
 import type { CircuitFinding, LeadFinding } from '../rules/findings.js'
 import type { LeadSaving, Saving } from '../rules/lead-savings.js'
 import { terminalVoltage } from '../rules/pair-rules.js'
@@ -43,12 +43,12 @@ function leadLine(units: Units, circuit: CircuitFinding, lead: LeadFinding): str
 
 /** How a lead's rating is to be chosen. No table of insulation classes is shipped, as none could be sourced. */
 function insulationLine(layout: Layout, { supply }: CircuitFinding): string {
-  const own = supplyOf(layout, { supply, string: [] })
+  const own = supplyOf(layout, supply)
   const most = (own.grounding === 'none' ? noLoadVoltage(own) : terminalVoltage(own)) * Math.SQRT2
   return `With a tube open any lead of ${supply} may stand at ${kv(most)} peak to ground: the rating of its insulation must exceed that.`
 }
 
-export function savingLines(units: Units, { between, cut, lift }: LeadSaving): string[] {
+function savingLines(units: Units, { between, cut, lift }: LeadSaving): string[] {
   const name = between.join('–')
   return [
     ...(cut

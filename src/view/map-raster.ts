@@ -7,7 +7,7 @@ import { pointAt } from '../geometry/polyline.js'
 import { type StrokeKind, strokeKinds } from './map-glyphs.js'
 import { type LabelPlace, labelPlaces } from './map-labels.js'
 import type { MapScene } from './map-scene.js'
-import { cellChains, direction, nowhere, type Visit, withDiagonals } from './map-trace.js'
+import { cellChains, direction, drawnChains, nowhere, type Visit } from './map-trace.js'
 import { cellAt, inside, type MapWindow } from './map-window.js'
 
 /** What is special about a pass of a conductor through a cell, as bits. */
@@ -100,10 +100,9 @@ function strokeKind(body: Body, { terminals }: MapScene): StrokeKind {
 }
 
 function bodyPasses(body: Body, index: number, window: MapWindow): Pass[] {
-  return cellChains(body.line, window).flatMap((chain) => {
-    const drawn = body.kind === 'tube' ? withDiagonals(chain) : chain
-    return drawn.flatMap((visit, k) => (inside(window, visit) ? [passOf(body, index, window, drawn, k)] : []))
-  })
+  return drawnChains(body, window).flatMap((chain) =>
+    chain.flatMap((visit, k) => (inside(window, visit) ? [passOf(body, index, window, chain, k)] : [])),
+  )
 }
 
 function passOf(body: Body, index: number, { columns }: MapWindow, chain: readonly Visit[], k: number): Pass {

@@ -2,7 +2,7 @@
  * A centre-line as the chain of cells it passes through, in the order of its path: each cell with its path length
  * and with the directions to the cells before and behind, from which a stroke gets its character.
  */
-import type { Polyline } from '../geometry/conductors.js'
+import type { Body, Polyline } from '../geometry/conductors.js'
 import { columnAt, type MapWindow, rowAt } from './map-window.js'
 
 /** One pass of a line through one cell. */
@@ -41,6 +41,10 @@ export function cellChains(line: Polyline, window: MapWindow): Visit[][] {
   close()
   return chains.map((visits) => withoutBumps(visits, bumpLength * window.step * window.aspect))
 }
+
+/** The chains of a body as the map draws them: glass with its stairs made diagonal. */
+export const drawnChains = (body: Body, window: MapWindow): Visit[][] =>
+  cellChains(body.line, window).map((chain) => (body.kind === 'tube' ? withDiagonals(chain) : chain))
 
 /** A straight piece in cells, with its path lengths. */
 interface Piece {

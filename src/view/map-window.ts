@@ -31,7 +31,7 @@ export interface Cell {
 }
 
 /** a terminal's cell is about twice as tall as wide */
-export const cellAspect = 2
+const cellAspect = 2
 /** free cells round the fitted sign; a little more than one, so that an edge does not fall on a side of the next cell */
 const margin = 1.01
 /** m a column: from a speck of dust to a whole street, so that no zoom runs into rounding */

@@ -6,11 +6,16 @@
  *   const shown = withOverlays(grid, overlays)                   cursor, pair, probe
  */
 import { type Charset, endGlyphs, outlineGlyphs, strokeGlyph, strokeKinds } from './map-glyphs.js'
-import { type MapRaster, mapRaster, passFlags } from './map-raster.js'
-import type { MapScene } from './map-scene.js'
-import type { MapWindow } from './map-window.js'
+import { type MapRaster, passFlags } from './map-raster.js'
 import { aboutZero, type PotentialScale, potentialStep, stepGlyph, unknownGlyph } from './scale.js'
 import { type ColourLevel, type Meaning, marks, meaningIndex } from './theme.js'
+
+/** A conductor picked in a cell (row · columns + column), and where along its path, m. */
+export interface PickedPlace {
+  readonly cell: number
+  readonly body: number
+  readonly at: number
+}
 
 export interface MapOptions {
   readonly scale: PotentialScale
@@ -18,8 +23,8 @@ export interface MapOptions {
   /** what a character of glass says: the direction of the stroke, or the step of potential */
   readonly glyphs: 'stroke' | 'level'
   readonly labels: boolean
-  /** where conductors share a cell: 0 shows the one furthest from 0 V, n the n-th after it, round and round */
-  readonly cycle: number
+  /** the place under the cursor: in that cell its conductor is shown, in others that are shared the one furthest from 0 V */
+  readonly picked?: PickedPlace
 }
 
 /** A picture ready to be drawn. All arrays hold one entry a cell, row after row. */
@@ -75,16 +80,6 @@ export function mapGrid(raster: MapRaster, potentialOf: PotentialOf, options: Ma
   return { columns, rows, ...draft }
 }
 
-/** Both steps at once, for a single picture. */
-export function mapFrame(
-  scene: MapScene,
-  potentialOf: PotentialOf,
-  window: MapWindow,
-  options: MapOptions,
-): MapGrid {
-  return mapGrid(mapRaster(scene, window), potentialOf, options)
-}
-
 function drawOutlines(draft: Draft, { outline, window }: MapRaster, charset: Charset): void {
   const face = meaningIndex('face')
   for (let cell = 0; cell < outline.length; cell++) {
@@ -117,7 +112,9 @@ function drawConductors(
     const end = first[cell + 1]!
     if (start === end) continue
     const shared = sharing[cell]! > 1
-    const pass = end === start + 1 ? start : chosenPass(raster, start, end, potentialOf, options)
+    const picked = options.picked?.cell === cell ? pickedPass(raster, start, end, options.picked) : undefined
+    const pass =
+      picked ?? (end === start + 1 ? start : furthestPass(raster, start, end, potentialOf, options))
     const v = potentialOf(body[pass]!, at[pass]!)
     const step = v === undefined ? undefined : potentialStep(scale, v)
     const grounded = kind[body[pass]!] === barKind && v === undefined
@@ -130,27 +127,46 @@ function drawConductors(
   }
 }
 
+/** The pass of the picked conductor nearest to the picked place; none where it does not pass through the cell. */
+function pickedPass(
+  { body, at }: MapRaster,
+  start: number,
+  end: number,
+  picked: PickedPlace,
+): number | undefined {
+  let found: number | undefined
+  for (let pass = start; pass < end; pass++) {
+    const nearer = found === undefined || Math.abs(at[pass]! - picked.at) < Math.abs(at[found]! - picked.at)
+    if (body[pass] === picked.body && nearer) found = pass
+  }
+  return found
+}
+
 /**
- * The pass that is furthest from 0 of those that share a cell, or the n-th after it. Counted in steps of the scale:
+ * The pass that is furthest from 0 of those that share a cell. Counted in steps of the scale:
  * between conductors of one step the nearer to the viewer is shown, so that leads behind a letter do not cut it for
  * a difference that no colour shows, and pictures stay still under small changes.
  */
-function chosenPass(
+function furthestPass(
   { body, at, flags }: MapRaster,
   start: number,
   end: number,
   potentialOf: PotentialOf,
-  { scale, cycle }: MapOptions,
+  { scale }: MapOptions,
 ): number {
-  const ranked: { readonly pass: number; readonly rank: number }[] = []
+  let found = start
+  let most = -Infinity
   for (let pass = start; pass < end; pass++) {
     if (flags[pass]! & passFlags.joined) continue
     const v = potentialOf(body[pass]!, at[pass]!)
-    ranked.push({ pass, rank: v === undefined ? -1 : Math.abs(potentialStep(scale, v) - aboutZero) })
+    const rank = v === undefined ? -1 : Math.abs(potentialStep(scale, v) - aboutZero)
+    // passes come nearest first: a later one of the same rank does not count
+    if (rank > most) {
+      most = rank
+      found = pass
+    }
   }
-  // the sort is stable, and passes come nearest first
-  ranked.sort((p, q) => q.rank - p.rank)
-  return ranked[cycle % ranked.length]?.pass ?? start
+  return found
 }
 
 /** The character of a pass: brackets at electrodes, else the step of potential or the stroke. */

@@ -1,14 +1,10 @@
-/** What was measured beside what is computed, in words: the same on the screen, in `check` and on the job sheet. */
+/** What was measured beside what is computed, in words: the same on the screen and in `check`. */
 import type { MeasuredCircuit, MeasuredFigure } from '../network/calibration.js'
-import { bandWidth, measuredShare } from '../network/lit.js'
+import { lawBand } from '../network/lit.js'
 import { ma, watts } from './words.js'
 
-/** The band of the column law of a circuit, as a share. */
-export const bandOf = ({ factor }: Pick<MeasuredCircuit, 'factor'>): number =>
-  factor === undefined ? bandWidth : bandWidth * measuredShare
-
 /** The figures, one a line, then what follows for the law. */
-export const measuredLines = (circuit: MeasuredCircuit): string[] => [
+const measuredLines = (circuit: MeasuredCircuit): string[] => [
   ...(circuit.primaryPower ? [`measured ${beside(circuit.primaryPower, watts, 'at the plug')}`] : []),
   ...circuit.currents.map((figure) => `measured ${beside(figure, ma, `at ${figure.end}`)}`),
   lawText(circuit),
@@ -25,7 +21,7 @@ export function measuredBriefly(circuit: MeasuredCircuit): string[] {
   const { primaryPower, currents, factor } = circuit
   const brief = ({ measured, computed }: MeasuredFigure, figure: (value: number) => string): string =>
     `${figure(measured)} (${computed === undefined ? 'computed: not lit' : `computed ${figure(computed)}`})`
-  const law = `law ${factor === undefined ? 'as it is' : `x${factor.toFixed(2)}`} ±${Math.round(bandOf(circuit) * 100)} %`
+  const law = `law ${factor === undefined ? 'as it is' : `x${factor.toFixed(2)}`} ±${Math.round(lawBand(circuit.factor) * 100)} %`
   const rows = [
     ...(primaryPower ? [`plug ${brief(primaryPower, watts)}`] : []),
     ...currents.map((current) => `${current.end} ${brief(current, ma)}`),
@@ -42,7 +38,7 @@ const beside = (
   `${figure(measured)} ${where}, ${computed === undefined ? 'not lit by the default law' : `computed ${figure(computed)}`}`
 
 function lawText(circuit: MeasuredCircuit): string {
-  const band = `band ±${Math.round(bandOf(circuit) * 100)} %`
+  const band = `band ±${Math.round(lawBand(circuit.factor) * 100)} %`
   if (circuit.factor !== undefined) return `the law is scaled by ${circuit.factor.toFixed(2)}, ${band}`
   return circuit.from === 'nothing'
     ? `an electronic supply sets its own mA, so the law stays, ${band}`

@@ -2,6 +2,8 @@
 import type { Body, FixedBody, LeadBody } from '../geometry/conductors.js'
 import { pointAt } from '../geometry/polyline.js'
 import type { BodyRef } from '../geometry/runs.js'
+import { drawnChains } from './map-trace.js'
+import type { Cell, MapWindow } from './map-window.js'
 
 export interface Near {
   readonly body: BodyRef
@@ -36,6 +38,13 @@ export function bodiesNear(
   const ring = (n: Near) => Math.floor((2 * n.distance) / reach)
   return found.sort((a, b) => ring(a) - ring(b) || b.z - a.z || a.distance - b.distance)
 }
+
+/** Whether the map draws the body in a cell of its window. */
+export const passesCell = (body: Body | undefined, window: MapWindow, { column, row }: Cell): boolean =>
+  body !== undefined &&
+  drawnChains(body, window).some((chain) =>
+    chain.some((visit) => visit.column === column && visit.row === row),
+  )
 
 /** Path length of the place on the body nearest to (x, y) in the drawing. */
 function nearestAlong({ line: { points, at } }: Body, x: number, y: number): number {

@@ -1,11 +1,24 @@
 /** The figures of a sign that symptoms point at, each as a line of text. */
 import { columnLaw } from '../network/columns.js'
+import { lawBand } from '../network/lit.js'
 import type { CircuitFinding, PairFinding } from '../rules/findings.js'
 import type { LeadSaving } from '../rules/lead-savings.js'
 import { cautionText } from './caution-text.js'
 import { givenBy, leadLines, residualLines } from './lead-text.js'
-import { placeName, type WhySign } from './why-walk.js'
-import { hertz, kv, length, ma, metres, outcomeText, percent, severityFigure } from './words.js'
+import { loadingBriefly } from './loading-text.js'
+import type { WhySign } from './why-walk.js'
+import {
+  hertz,
+  kv,
+  length,
+  ma,
+  metres,
+  outcomeText,
+  percent,
+  placeText,
+  severityFigure,
+  touchText,
+} from './words.js'
 
 /** so many of a list are told */
 const told = 5
@@ -29,8 +42,8 @@ export function airLines(sign: WhySign): string[] {
   ]
 }
 
-const between = (sign: WhySign, pair: PairFinding): string =>
-  `${placeName(pair.a, sign)} to ${placeName(pair.b, sign)}, gap ${length(pair.gap, sign.layout.units)}`
+const between = ({ layout: { units } }: WhySign, { a, b, gap }: PairFinding): string =>
+  `${placeText(a, units, 'long')} to ${placeText(b, units, 'long')}, gap ${length(gap, units)}`
 
 /** Glass with the greatest difference to a neighbour for its gap. */
 export function neighbourLines(sign: WhySign): string[] {
@@ -105,15 +118,8 @@ export function strayLines(sign: WhySign): string[] {
 
 /** Voltage, chart, mains, trip and lead of each supply against their limits. */
 export function loadLines({ inspection }: WhySign): string[] {
-  const ways = {
-    voltage: 'needs',
-    chart: 'footage',
-    mains: 'mains input',
-    residual: 'residual',
-    lead: 'lead',
-  }
   return inspection.circuits.flatMap((c) => {
-    const shares = c.loadings.map((l) => `${ways[l.by]} ${percent(l.share)} of its limit`)
+    const shares = c.loadings.map(loadingBriefly)
     return [`${c.supply}: ${shares.join(', ') || 'no figure of its load is known'}.`]
   })
 }
@@ -128,7 +134,7 @@ export function darkLines({ layout, inspection }: WhySign): string[] {
     if (said.length > 0) return said
     if (!c.lit) return [`${c.supply}: the lit solution is not there yet.`]
     return [
-      `${c.supply} lights the whole string: ${kv(c.neededVoltage ?? 0)} of ${kv(c.noLoadVoltage)} rms, also with glass that takes 30 % more.`,
+      `${c.supply} lights the whole string: ${kv(c.neededVoltage ?? 0)} of ${kv(c.noLoadVoltage)} rms, also with glass that takes ${percent(lawBand(c.measured?.factor))} more.`,
     ]
   })
 }
@@ -137,7 +143,7 @@ export function floatingLines({ inspection: { floating, solved } }: WhySign): st
   if (floating.length > 0)
     return floating.map(
       (f) =>
-        `${f.id} floats to ${kv(f.voltage)} rms; ${ma(f.touch)} would flow through a person touching it.`,
+        `${f.id} floats to ${kv(f.voltage)} rms; ${touchText(f.touch)} would flow through a person touching it.`,
     )
   return [solved ? 'All metal of this sign is grounded, or there is none.' : 'Not solved yet.']
 }

@@ -190,12 +190,6 @@ function colourCode({ c256, c24, c16 }: Ink, level: ColourLevel): string {
   return `38;2;${red};${green};${blue}`
 }
 
-/** Text in the look of a meaning, reset behind it; plain where that look is the terminal's own. */
-export function styled(theme: Theme, meaning: Meaning, text: string, extra = 0): string {
-  const codes = sgr(theme, meaning, extra)
-  return codes === '' ? text : `\u001b[${codes}m${text}\u001b[0m`
-}
-
 /** The meaning of a step of potential; of no step: unknown. */
 export const stepMeaning = (step: number | undefined): Meaning =>
   step === undefined ? 'unknown' : (meanings[step] ?? meanings[aboutZero])

@@ -3,14 +3,29 @@ import { airDensity, effectivePressureBar, frequencyFactor } from '../gaps/air.j
 import { streamerStart, uniformBreakdown } from '../gaps/discharge.js'
 import { airShare, facingLine, type Surface } from '../gaps/facing-line.js'
 import { type Gap, type GapStart, gapStart } from '../gaps/gap-stress.js'
-import type { PairFinding, RuleFinding } from '../rules/findings.js'
+import { brokenPotential, openTubes } from '../network/broken.js'
+import { nodeMix } from '../network/potentials.js'
+import type { PairFinding, RuleFinding, Spot } from '../rules/findings.js'
 import { gapBetween } from '../rules/pairs.js'
 import type { ExplanationPart } from './explanation.js'
 import { markText } from './rule-text.js'
 import type { WhySign } from './why-walk.js'
-import { hertz, kv2, length, openText, outcomeText, percent, severityFigure, verdictText } from './words.js'
+import {
+  airText,
+  hertz,
+  kv2,
+  length,
+  openText,
+  outcomeText,
+  percent,
+  placeText,
+  severityFigure,
+  verdictText,
+} from './words.js'
 
 const mm = (metres: number): string => `${(metres * 1000).toFixed(2)} mm`
+
+const ground = { low: -1, high: -1, t: 0 }
 
 interface Air {
   readonly gap: Gap
@@ -25,8 +40,8 @@ function airOf({ inspection }: WhySign, pair: PairFinding): Air {
   return { gap, start, peak: pair.air.peak / start.share }
 }
 
-/** What a tube that is open does to this pair. */
-export function openPart(pair: PairFinding): ExplanationPart {
+/** What a tube that is open does to this pair: each side, the difference, and what the air does then. */
+export function openPart(sign: WhySign, pair: PairFinding): ExplanationPart {
   const { difference, air, judgedOn } = pair
   const { open } = air
   const counts =
@@ -38,14 +53,29 @@ export function openPart(pair: PairFinding): ExplanationPart {
   return {
     title: 'With a tube open',
     lines: [
-      `With ${openText(pair) || 'any tube open'} no current flows, nothing drops, and each side stands at its terminal's no-load voltage: ${kv2(difference.broken)} rms between the two, at the worst.`,
+      'With a tube open no current flows and nothing drops: each side of the break stands at the no-load voltage of its terminal.',
+      ...[pair.a, pair.b].flatMap((spot) => openSideLine(sign, spot)),
+      difference.broken > 0
+        ? `Between the two, at the worst: ${kv2(difference.broken)} rms, with ${openText(pair)}.`
+        : 'No tube open puts a voltage between the two.',
       ...(open
         ? [
-            `That is ${kv2(open.peak)} peak across the air of ${kv2(air.startsAt)}: ${outcomeText[open.outcome] ?? open.outcome}. ${counts}`,
+            `That is ${kv2(open.peak)} peak across the air of ${kv2(air.startsAt)}: ${outcomeText[open.outcome]}. ${counts}`,
           ]
         : []),
     ],
   }
+}
+
+/** The most that a place stands at to ground, and with which tube open. */
+function openSideLine({ layout, inspection }: WhySign, spot: Spot): string[] {
+  const { broken } = inspection.context
+  const mix = nodeMix(inspection.probe, spot.body, spot.at)
+  const volts = brokenPotential(broken, mix)
+  if (spot.kind === 'metal' || spot.kind === 'face') return []
+  const open = openTubes(broken, mix, ground)
+  const which = open.length > 0 ? `, with ${open.join(' and ')} open` : ''
+  return [`${placeText(spot, layout.units, 'long')}: up to ${kv2(volts)} rms to ground${which}.`]
 }
 
 /** How the peak divides between glass and air. */
@@ -108,8 +138,8 @@ export function startPart(sign: WhySign, pair: PairFinding): ExplanationPart {
       ...(gap.altitude > 0
         ? [`At ${gap.altitude} m the air has ${percent(density)} of its density; counted in.`]
         : []),
-      `Times ${factor.toFixed(2)} at ${hertz(gap.frequency)} (the cautious reading): a discharge starts at ${kv2(air.startsAt)} peak across the air.`,
-      `${kv2(air.peak)} of ${kv2(air.startsAt)} is ${severityFigure(air.peak / air.startsAt)} x: ${outcomeText[air.outcome] ?? air.outcome}.`,
+      `Times ${factor.toFixed(2)} at ${hertz(gap.frequency)} (the ${airText[gap.mode]}): a discharge starts at ${kv2(air.startsAt)} peak across the air.`,
+      `${kv2(air.peak)} of ${kv2(air.startsAt)} is ${severityFigure(air.peak / air.startsAt)} x: ${outcomeText[air.outcome]}.`,
     ],
   }
 }
@@ -134,12 +164,12 @@ function ruleLine({ layout: { units } }: WhySign, { gap }: PairFinding, rule: Ru
   return `${rule.set}, ${rule.clause} (${markText[rule.mark]}), ${basis}: needs ${length(rule.needs, units)}, has ${length(gap, units)}${times}: ${met}.${advice.replace('..', '.')}`
 }
 
-export function verdictPart({ layout }: WhySign, pair: PairFinding): ExplanationPart {
+export function verdictPart({ inspection }: WhySign, pair: PairFinding): ExplanationPart {
   const { verdict, severity, governs, unsure } = pair
   return {
     title: 'Verdict',
     lines: [
-      `${verdict === 'within' ? verdictText(verdict, layout.rules) : verdict.toUpperCase()}, ${severityFigure(severity)} x its limit; what governs: ${governs}.`,
+      `${verdict === 'within' ? verdictText(verdict, inspection.context.ruleSets) : verdict.toUpperCase()}, ${severityFigure(severity)} x its limit; what governs: ${governs}.`,
       ...(unsure ? ['At the lower end of the band the verdict would be another: it is not sure.'] : []),
     ],
   }

@@ -5,7 +5,7 @@ import { type Complex, degrees, magnitude } from '../math/complex.js'
 import type { DifferenceSteps, Leg, WalkStep } from '../network/string-walk.js'
 import type { PairFinding, Spot } from '../rules/findings.js'
 import type { ExplanationPart } from './explanation.js'
-import { kv2, length, ma } from './words.js'
+import { kv2, length, ma, placeText } from './words.js'
 
 /** what shows in figures with a hundredth of a kilovolt, V */
 export const visible = 5
@@ -15,13 +15,6 @@ export interface WhySign {
   readonly layout: Layout
   readonly inspection: Inspection
 }
-
-export const placeName = (spot: Spot, { layout }: WhySign): string =>
-  spot.kind === 'face'
-    ? 'the face'
-    : spot.kind === 'metal'
-      ? `metal ${spot.part}`
-      : `${spot.kind === 'lead' ? 'lead ' : ''}${spot.part} at ${length(spot.at, layout.units)}`
 
 /** `1.85 kV (-2°)`: against terminal 1 where it is a phasor, signed on paper */
 function phasorText(value: Complex, terminal: Complex, onLit: boolean): string {
@@ -60,19 +53,19 @@ export function fieldParts(
     ? `${end} stands at ${kv2(magnitude(terminal))} to ground; angles are against it, 180° is the opposite polarity.`
     : `${end} stands at ${phasorText(terminal, terminal, false)} to ground.`
   const there = (spot: Spot, value: Complex) =>
-    `So ${placeName(spot, sign)} stands at ${phasorText(value, terminal, onLit)}.`
+    `So ${placeText(spot, sign.layout.units, 'long')} stands at ${phasorText(value, terminal, onLit)}.`
   return [
     {
-      title: `From ${end} to ${placeName(one, sign)}`,
+      title: `From ${end} to ${placeText(one, sign.layout.units, 'long')}`,
       lines: [start, ...legLines(sign, toFirst, terminal, steps, onLit), there(one, toFirst.end)],
     },
     onward
       ? {
-          title: `On to ${placeName(two, sign)}`,
+          title: `On to ${placeText(two, sign.layout.units, 'long')}`,
           lines: [...onwardLines(sign, onward, terminal, steps, onLit), there(two, onward.end)],
         }
       : {
-          title: `The other place, ${placeName(two, sign)}`,
+          title: `The other place, ${placeText(two, sign.layout.units, 'long')}`,
           lines: [otherLine(sign, two, values[1]!, terminal, supply, onLit)],
         },
   ]
@@ -145,7 +138,7 @@ function otherLine(
   supply: string,
   onLit: boolean,
 ): string {
-  const name = placeName(spot, sign)
+  const name = placeText(spot, sign.layout.units, 'long')
   if (spot.kind === 'tube' || spot.kind === 'lead')
     return onLit
       ? `It is on another string; through the air ${supply} puts it at ${phasorText(value, terminal, true)}.`

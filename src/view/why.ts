@@ -3,14 +3,15 @@
  * verdict. The same text on the screen and from `check --why`.
  */
 import { magnitude } from '../math/complex.js'
+import { lawBand } from '../network/lit.js'
 import { nodeMix, rmsDifference } from '../network/potentials.js'
 import type { PotentialField } from '../network/solution.js'
 import { type DifferenceSteps, differenceSteps } from '../network/string-walk.js'
 import type { PairFinding } from '../rules/findings.js'
 import type { Explanation, ExplanationPart } from './explanation.js'
 import { airPart, openPart, rulesPart, startPart, verdictPart } from './why-gap.js'
-import { fieldParts, placeName, visible, type WhySign } from './why-walk.js'
-import { kv2, length, ma, percent } from './words.js'
+import { fieldParts, visible, type WhySign } from './why-walk.js'
+import { kv2, length, ma, percent, placeText } from './words.js'
 
 export interface Derivation extends Explanation {
   /** the phasors that the lines show, one for each supply */
@@ -24,13 +25,13 @@ export function why(sign: WhySign, pair: PairFinding): Derivation {
   const fields = opened ? [] : stepsOf(sign, onLit ? (inspection.lit ?? []) : inspection.nameplate, pair)
   const walked = fields.flatMap((steps) => fieldParts(sign, pair, steps, onLit))
   const voltage = onLit
-    ? [...walked, differencePart(pair, fields), strayPart(sign, pair)]
+    ? [...walked, differencePart(sign, pair, fields), strayPart(sign, pair)]
     : [paperPart(sign, pair), ...walked, nameplatePart(pair, fields)]
   return {
-    head: `Why ${placeName(pair.a, sign)} to ${placeName(pair.b, sign)}: gap ${length(pair.gap, layout.units)}`,
+    head: `Why ${placeText(pair.a, layout.units, 'long')} to ${placeText(pair.b, layout.units, 'long')}: gap ${length(pair.gap, layout.units)}`,
     parts: [
       ...(opened ? [] : voltage),
-      ...(pair.difference.broken > 0 ? [openPart(pair)] : []),
+      openPart(sign, pair),
       airPart(sign, pair),
       startPart(sign, pair),
       rulesPart(sign, pair),
@@ -57,7 +58,11 @@ function stepsOf(
 }
 
 /** The sum of the steps, and why their kV do not add up as plain numbers where they do not. */
-function differencePart(pair: PairFinding, fields: readonly DifferenceSteps[]): ExplanationPart {
+function differencePart(
+  sign: WhySign,
+  pair: PairFinding,
+  fields: readonly DifferenceSteps[],
+): ExplanationPart {
   const lit = pair.difference.lit ?? 0
   return {
     title: 'Difference',
@@ -65,7 +70,7 @@ function differencePart(pair: PairFinding, fields: readonly DifferenceSteps[]): 
       ...fields.flatMap((steps) => sumLines(steps)),
       ...togetherLines(fields, lit),
       `Difference of the two places: ${kv2(lit)} rms.`,
-      ...bandLines(pair),
+      ...bandLines(sign, pair),
     ],
   }
 }
@@ -99,10 +104,19 @@ function sumLines({ onward, toFirst, difference, atA, atB }: DifferenceSteps): s
   ]
 }
 
-function bandLines({ difference: { lit, litLow, litHigh, litPeak } }: PairFinding): string[] {
+function bandLines(
+  { inspection }: WhySign,
+  { difference: { lit, litLow, litHigh, litPeak } }: PairFinding,
+): string[] {
   if (lit === undefined || litLow === undefined || litHigh === undefined || litPeak === undefined) return []
+  const bands = inspection.circuits.map((c) => ({
+    supply: c.supply,
+    band: percent(lawBand(c.measured?.factor)),
+  }))
+  const same = bands.every(({ band }) => band === bands[0]?.band)
+  const often = same ? bands[0]?.band : bands.map(({ supply, band }) => `${band} (${supply})`).join(', ')
   return [
-    `How sure: the glass may take 30 % less or more than the default law says (5 % where the circuit was measured): ${kv2(litLow)} to ${kv2(litHigh)} rms. Verdicts go by the upper end.`,
+    `How sure: the glass may take ${often} less or more than the law says: ${kv2(litLow)} to ${kv2(litHigh)} rms. Verdicts go by the upper end.`,
     `At its worst instant the upper end is ${kv2(litPeak)} peak (1.414 x rms).`,
   ]
 }
@@ -135,7 +149,7 @@ function strayPart({ inspection }: WhySign, pair: PairFinding): ExplanationPart 
       `Stray current, and the tubes it leaves with other currents, change that by ${change >= 0 ? '+' : ''}${kv2(change)}: ${kv2(lit)}.`,
       ...concerned.flatMap((c) => {
         const given = Math.max(...c.terminals.map((t) => magnitude(t.current)))
-        const least = Math.min(...c.tubes.map((t) => t.least?.current ?? given))
+        const least = c.dimmest?.current ?? given
         return [`Of ${ma(given)} from ${c.supply}, ${ma(least)} reach the dimmest place of its string.`]
       }),
     ],

@@ -1,18 +1,23 @@
-/** Words set in lines of at most `width` characters; a longer word is cut. */
+/** Words set in lines of at most `width` cells of a terminal; a longer word is cut. */
+import { cut, textWidth } from './text-width.js'
+
 export function wrap(text: string, width: number): string[] {
   const lines: string[] = []
   let line = ''
   for (const word of text.split(' ')) {
     const joined = line === '' ? word : `${line} ${word}`
-    if (joined.length <= width) {
+    if (textWidth(joined) <= width) {
       line = joined
       continue
     }
     if (line !== '') lines.push(line)
     line = word
-    while (line.length > width) {
-      lines.push(line.slice(0, width))
-      line = line.slice(width)
+    while (textWidth(line) > width) {
+      // a character wider than the room stands alone all the same
+      const part = cut(line, width, '') || ([...line][0] ?? '')
+      if (part === line) break
+      lines.push(part)
+      line = line.slice(part.length)
     }
   }
   return [...lines, line]

@@ -1,7 +1,8 @@
 /** Edits between circuits and of the way back to a supply's midpoint: pure functions, as in edits.ts. */
+import { enteringEnd, leavingEnd, partOf } from '../layout/ends.js'
 import type { CircuitWiring, EndName, Layout, Wiring } from '../layout/layout.js'
 import { done, type Edit, refused } from './edit.js'
-import { enteringEnd, leavingEnd, placeOf, restrung } from './edits.js'
+import { placeOf, restrung } from './edits.js'
 
 /** Where a tube goes: behind a tube of the circuit, or at the end of its string, entered at a or at b. */
 export interface NewPlace {
@@ -54,7 +55,7 @@ export function jointAt({ string }: CircuitWiring, end: EndName): number | undef
 
 /** Leads the joint at a tube end back to the midpoint of its supply. */
 export function setMidpointReturn(layout: Layout, wiring: Wiring, end: EndName): Edit<Wiring> {
-  const tube = end.slice(0, end.lastIndexOf('.'))
+  const tube = partOf(end)
   const index = placeOf(wiring, tube)?.circuit
   const circuit = index === undefined ? undefined : wiring.circuits[index]
   if (!circuit) return refused({ code: 'no-such-part', part: tube })

@@ -20,6 +20,13 @@ export type Refusal =
   /** not a joint between two tubes of one circuit */
   | { readonly code: 'no-joint'; readonly end: EndName }
   | { readonly code: 'no-midpoint'; readonly supply: string }
+  /** a joint goes back to the midpoint of this supply in a variant */
+  | {
+      readonly code: 'midpoint-used'
+      readonly supply: string
+      readonly end: EndName
+      readonly variant: string
+    }
 
 export type Edit<T> = { readonly ok: true; readonly value: T } | { readonly ok: false; readonly why: Refusal }
 

@@ -1,27 +1,14 @@
 /**
- * Edits of the wiring and of the few figures that may be changed by hand: pure functions from one Sign to the next.
- * An edit that cannot be made says why and changes nothing.
+ * Edits of the wiring: pure functions from one wiring to the next. An edit that cannot be made says why and changes
+ * nothing. Edits of figures are in figure-edits.ts, those between circuits in circuit-edits.ts.
  *
  * A circuit is a closed loop: supply – tube – jumper – tube – … – supply. Links are counted along it: link 0 is the
  * lead at terminal 1, link i the jumper in front of string[i], link n the lead at terminal 2.
  */
-import type {
-  CircuitWiring,
-  EndName,
-  Fill,
-  Layout,
-  PathPoint,
-  StringEntry,
-  Supply,
-  Variant,
-  Wiring,
-} from '../layout/layout.js'
+import { enteringEnd, leavingEnd, partOf } from '../layout/ends.js'
+import type { CircuitWiring, EndName, Layout, StringEntry, Variant, Wiring } from '../layout/layout.js'
 import { done, type Edit, refused } from './edit.js'
 
-export type { Edit, Refusal, Sign } from './edit.js'
-
-export const enteringEnd = ({ tube, reversed }: StringEntry): EndName => `${tube}.${reversed ? 'b' : 'a'}`
-export const leavingEnd = ({ tube, reversed }: StringEntry): EndName => `${tube}.${reversed ? 'a' : 'b'}`
 const turned = (entry: StringEntry): StringEntry => ({ tube: entry.tube, reversed: !entry.reversed })
 
 /** Circuit and place in the string of a tube. */
@@ -153,11 +140,12 @@ export function joinEnds(wiring: Wiring, first: EndName, second: EndName): Edit<
   if (circuit < 0) return refused({ code: 'no-such-part', part: first })
   if (holds(second) < 0) return refused({ code: 'no-such-part', part: second })
   if (holds(second) !== circuit) return refused({ code: 'other-circuit', ends: [first, second] })
-  const part = (end: EndName) => end.slice(0, end.lastIndexOf('.'))
   const { supply } = wiring.circuits[circuit]!
-  if (part(first) === part(second))
+  if (partOf(first) === partOf(second))
     return refused(
-      part(first) === supply ? { code: 'both-terminals', supply } : { code: 'same-tube', tube: part(first) },
+      partOf(first) === supply
+        ? { code: 'both-terminals', supply }
+        : { code: 'same-tube', tube: partOf(first) },
     )
 
   // hold the loop so that it leaves the first end, and start it right behind that end
@@ -166,7 +154,7 @@ export function joinEnds(wiring: Wiring, first: EndName, second: EndName): Edit<
   const start = running.findIndex((l) => l.leaves === first)
   const rest = [...running.slice(start + 1), ...running.slice(0, start)]
   const head = running[start]!
-  const at = rest.findIndex((l) => part(second) === l.id)
+  const at = rest.findIndex((l) => partOf(second) === l.id)
   const target = rest[at]!
   if (at === 0 && target.enters === second)
     return refused({ code: 'nothing-to-change', what: `${first} and ${second} are joined already` })
@@ -209,70 +197,6 @@ export const sameWiring = (one: Wiring, other: Wiring): boolean =>
       )
     )
   })
-
-/** The figures of a supply that can be typed in. SI. */
-export type SupplyFigures = Partial<
-  Pick<
-    Supply,
-    | 'noLoadVoltage'
-    | 'shortCircuitCurrent'
-    | 'frequency'
-    | 'ratedPower'
-    | 'groundFaultTrip'
-    | 'maxLead'
-    | 'grounding'
-    | 'type'
-  >
->
-
-const within = (value: number | undefined, low: number, high: number): boolean =>
-  value === undefined || (Number.isFinite(value) && value >= low && value <= high)
-
-/** Changes nameplate figures of a supply. */
-export function withSupply(layout: Layout, id: string, figures: SupplyFigures): Edit<Layout> {
-  if (!layout.supplies.some((s) => s.id === id)) return refused({ code: 'no-such-part', part: id })
-  const limits: [
-    keyof SupplyFigures & ('noLoadVoltage' | 'shortCircuitCurrent' | 'frequency'),
-    number,
-    number,
-    string,
-  ][] = [
-    ['noLoadVoltage', 100, 30_000, '0.1 to 30 kV'],
-    ['shortCircuitCurrent', 0.001, 1, '1 to 1000 mA'],
-    ['frequency', 10, 200_000, '10 to 200000 Hz'],
-  ]
-  for (const [key, low, high, allowed] of limits)
-    if (!within(figures[key], low, high)) return refused({ code: 'out-of-range', what: key, allowed })
-  return done({ ...layout, supplies: layout.supplies.map((s) => (s.id === id ? { ...s, ...figures } : s)) })
-}
-
-/** Puts the supply at another place; its two terminals keep their distance and height. */
-export function withSupplyAt(layout: Layout, id: string, x: number, y: number): Edit<Layout> {
-  const supply = layout.supplies.find((s) => s.id === id)
-  if (!supply) return refused({ code: 'no-such-part', part: id })
-  const [one, two] = supply.terminals
-  const [cx, cy] = [(one.x + two.x) / 2, (one.y + two.y) / 2]
-  const moved = (p: PathPoint): PathPoint => ({ ...p, x: p.x - cx + x, y: p.y - cy + y })
-  const terminals: [PathPoint, PathPoint] = [moved(one), moved(two)]
-  return done({ ...layout, supplies: layout.supplies.map((s) => (s.id === id ? { ...s, terminals } : s)) })
-}
-
-/** Lifts (or lowers) the centre-line of a tube to this height, m; places drawn with their own z stay. */
-export function withTubeHeight(layout: Layout, id: string, height: number): Edit<Layout> {
-  if (!layout.tubes.some((t) => t.id === id)) return refused({ code: 'no-such-part', part: id })
-  if (!within(height, -2, 2))
-    return refused({ code: 'out-of-range', what: 'height', allowed: '-2000 to 2000 mm' })
-  return done({ ...layout, tubes: layout.tubes.map((t) => (t.id === id ? { ...t, height } : t)) })
-}
-
-/** Refills a tube: another gas, another gradient. */
-export function withTubeFill(layout: Layout, id: string, fill: Fill): Edit<Layout> {
-  const tube = layout.tubes.find((t) => t.id === id)
-  if (!tube) return refused({ code: 'no-such-part', part: id })
-  if (tube.fill === fill)
-    return refused({ code: 'nothing-to-change', what: `${id} is filled with ${fill} already` })
-  return done({ ...layout, tubes: layout.tubes.map((t) => (t.id === id ? { ...t, fill } : t)) })
-}
 
 /** Keeps a wiring under a name; a variant of the same name is replaced. */
 export function withVariant(layout: Layout, name: string, wiring: Wiring): Layout {

@@ -1,5 +1,6 @@
 /** The leads a wiring needs, in the order in which networks and fields number them. */
-import type { EndName, StringEntry, Wiring } from '../layout/layout.js'
+import { enteringEnd, leavingEnd } from '../layout/ends.js'
+import type { EndName, Wiring } from '../layout/layout.js'
 
 export interface CircuitLead {
   /** index among the wiring's circuits */
@@ -10,9 +11,6 @@ export interface CircuitLead {
   /** the two ends it joins, in the direction from terminal 1 to terminal 2 */
   readonly between: readonly [EndName, EndName]
 }
-
-const entering = ({ tube, reversed }: StringEntry): EndName => `${tube}.${reversed ? 'b' : 'a'}`
-const leaving = ({ tube, reversed }: StringEntry): EndName => `${tube}.${reversed ? 'a' : 'b'}`
 
 /** Circuit after circuit, from terminal 1 to terminal 2: n + 1 leads for a string of n tubes. */
 export function circuitLeads(wiring: Wiring): readonly CircuitLead[] {
@@ -25,8 +23,8 @@ export function circuitLeads(wiring: Wiring): readonly CircuitLead[] {
         place,
         role: before === undefined || behind === undefined ? 'feed' : 'jumper',
         between: [
-          before === undefined ? `${supply}.1` : leaving(before),
-          behind === undefined ? `${supply}.2` : entering(behind),
+          before === undefined ? `${supply}.1` : leavingEnd(before),
+          behind === undefined ? `${supply}.2` : enteringEnd(behind),
         ],
       }
     }),

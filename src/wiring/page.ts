@@ -57,7 +57,7 @@ const asNode = (value: unknown): Node | undefined =>
   isScalar(value) || isMap(value) || isSeq(value) || isAlias(value) ? value : undefined
 
 /** start and end of a node's own text: without its anchor, and without comments and blank lines behind it */
-export function extent(node: Node): [number, number] {
+function extent(node: Node): [number, number] {
   const range = node.range
   if (!range) throw new Error('a node of a parsed document has a range')
   return [range[0], range[1]]

@@ -1,7 +1,7 @@
 /** Does a layout that was read hold the sign that was meant? */
 import type { Layout } from '../layout/layout.js'
 import { cleaned } from '../layout/printable.js'
-import type { Sign } from './edits.js'
+import type { Sign } from './edit.js'
 
 /** what a layout holds besides its wiring, its assumptions and the rules it is judged by */
 const parts = [

@@ -9,11 +9,12 @@ import type {
   Measured,
   PathPoint,
   StringEntry,
-  Supply,
   Variant,
   Wiring,
 } from '../layout/layout.js'
-import type { Sign } from './edits.js'
+import { supplyKeys } from '../layout/ranges.js'
+import { metresPerUnit } from '../layout/reading.js'
+import type { Sign } from './edit.js'
 import {
   append,
   type Entry,
@@ -135,7 +136,7 @@ function asWritten(entry: StringEntry, written: string | undefined): string {
 }
 
 function supplyPatches(page: Page, from: Layout, to: Layout): Patch[] {
-  const unit = from.units === 'in' ? 0.0254 : 0.001
+  const unit = metresPerUnit(from.units)
   const pointText = ({ x, y, z }: PathPoint) =>
     `[${[x, y, ...(z === undefined ? [] : [z])].map((metres) => numberText(metres / unit)).join(', ')}]`
   const placed = (i: number) => nodeAt(page, ['supplies', i, 'terminals']) !== undefined
@@ -147,19 +148,22 @@ function supplyPatches(page: Page, from: Layout, to: Layout): Patch[] {
     if (!old) return []
     const set = (key: string, changed: boolean, text: () => string) =>
       changed ? setKey(page, ['supplies', i], key, text(), 'id') : []
-    const number = (key: string, pick: (s: Supply) => number | undefined, per: number) => {
-      const value = pick(supply)
-      return value === undefined ? [] : set(key, value !== pick(old), () => numberText(value * per))
+    const figure = (name: keyof typeof supplyKeys) => {
+      const [key, inFile] = supplyKeys[name]
+      const value = supply[name]
+      if (value === undefined) return old[name] === undefined ? [] : removeKey(page, ['supplies', i], key)
+      return set(key, value !== old[name], () => numberText(value * inFile))
     }
     return [
       ...set('type', supply.type !== old.type, () => supply.type),
-      ...number('no_load_kv', (s) => s.noLoadVoltage, 1e-3),
-      ...number('short_circuit_ma', (s) => s.shortCircuitCurrent, 1e3),
-      ...number('frequency_hz', (s) => s.frequency, 1),
+      ...figure('noLoadVoltage'),
+      ...figure('noLoadPeak'),
+      ...figure('shortCircuitCurrent'),
+      ...figure('frequency'),
       ...set('grounding', supply.grounding !== old.grounding, () => supply.grounding),
-      ...number('rated_va', (s) => s.ratedPower, 1),
-      ...number('ground_fault_trip_ma', (s) => s.groundFaultTrip, 1e3),
-      ...number('max_lead_mm', (s) => s.maxLead, 1e3),
+      ...figure('ratedPower'),
+      ...figure('groundFaultTrip'),
+      ...figure('maxLead'),
       ...set(
         'terminals',
         moved(i) || (spread && !placed(i)),
@@ -170,7 +174,7 @@ function supplyPatches(page: Page, from: Layout, to: Layout): Patch[] {
 }
 
 function tubePatches(page: Page, from: Layout, to: Layout): Patch[] {
-  const unit = from.units === 'in' ? 0.0254 : 0.001
+  const unit = metresPerUnit(from.units)
   return to.tubes.flatMap((tube, i) => {
     const old = from.tubes[i]
     const set = (key: string, changed: boolean, text: string) =>

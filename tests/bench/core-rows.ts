@@ -6,7 +6,7 @@ import { nodeCapacitance } from '../../src/field/node-capacitance.js'
 import type { LeadBody } from '../../src/geometry/conductors.js'
 import { inspection, type Prepared, prepare, solver } from '../../src/inspection.js'
 import type { Wiring } from '../../src/layout/layout.js'
-import { calibrations } from '../../src/network/calibration.js'
+import { measuredCircuits } from '../../src/network/calibration.js'
 import { solveBand } from '../../src/network/lit.js'
 import { network } from '../../src/network/network.js'
 import { strayShares } from '../../src/network/stray.js'
@@ -98,7 +98,8 @@ function partSolver(prepared: Prepared): (wiring: Wiring) => PartTimes {
     const capacitance = nodeCapacitance(fixed, fields)
     const capacitances = performance.now()
     const net = network(layout, wiring, tubes, bars, nodes, capacitance)
-    const { nominal } = solveBand(net, calibrations(layout, wiring, net))
+    const factors = measuredCircuits(layout, wiring, net).map((circuit) => circuit?.factor)
+    const { nominal } = solveBand(net, factors)
     strayShares(net, nominal)
     return {
       fields: fielded - start,

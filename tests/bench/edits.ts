@@ -1,6 +1,7 @@
 /** Wirings to solve: edits round the sign, as somebody at the bench might try them one after the other. */
 import type { EndName, Layout, Wiring } from '../../src/layout/layout.js'
-import { type Edit, joinEnds, moveFeed, shiftTube, turnTube } from '../../src/wiring/edits.js'
+import type { Edit } from '../../src/wiring/edit.js'
+import { joinEnds, moveFeed, shiftTube, turnTube } from '../../src/wiring/edits.js'
 import { circuitLeads } from '../../src/wiring/leads.js'
 import { seeded } from './timing.js'
 

@@ -6,11 +6,12 @@ import { pointAt } from '../../src/geometry/polyline.js'
 import { inspection, prepare } from '../../src/inspection.js'
 import type { Point } from '../../src/layout/layout.js'
 import { factorDense, solveDense } from '../../src/math/complex-symmetric.js'
-import { factorCholesky, inverseFromCholesky } from '../../src/math/dense.js'
-import { calibrations } from '../../src/network/calibration.js'
+import { factorCholesky } from '../../src/math/dense.js'
+import { measuredCircuits } from '../../src/network/calibration.js'
 import { solveBand } from '../../src/network/lit.js'
 import { type Network, network } from '../../src/network/network.js'
 import type { LitState } from '../../src/network/solution.js'
+import { inverseFromCholesky } from '../math/inverse.js'
 import type { BenchSign } from './sign.js'
 import { ms, ratio, row, timeRow } from './table.js'
 import { median, type Timing, timed } from './timing.js'
@@ -23,7 +24,8 @@ export function ratioRows({ layout }: BenchSign): void {
   const fields = leads.map((lead) => leadField(fixed, lead))
   const bars = bodies.filter((body) => body.kind === 'bar')
   const net = network(layout, layout.wiring, tubes, bars, nodes, nodeCapacitance(fixed, fields))
-  bandAgainstDense(net, () => solveBand(net, calibrations(layout, layout.wiring, net)))
+  const factors = () => measuredCircuits(layout, layout.wiring, net).map((circuit) => circuit?.factor)
+  bandAgainstDense(net, () => solveBand(net, factors()))
 
   const leadCount = fields.reduce((sum, f) => sum + (f.kind === 'open' ? f.system.segments.count : 0), 0)
   const lines = [...bodies, ...leads].map(({ line }) => line)

@@ -49,17 +49,25 @@ describe('check', () => {
     expect(stdout).toMatch(/^PAIRS {2}\d/m)
   })
 
+  test('--air says which reading starts of discharges go by', () => {
+    expect(run('check', 'good.yaml').stdout).toContain('Air: cautious reading.')
+    expect(run('check', 'good.yaml', '--air', 'clean').stdout).toContain('Air: likeliest')
+    expect(run('check', 'good.yaml', '--air', 'clean', '--why', '1').stdout).toContain('(the likeliest')
+    expect(JSON.parse(run('check', 'good.yaml', '--air', 'clean', '--json').stdout)).toMatchObject({
+      air: 'clean',
+    })
+  })
+
   test('1 with a rule set that is missing', () => {
     expect(run('check', 'good.yaml', '--rules', 'common-practice,no-such-set').status).toBe(1)
   })
 
   test.each([
     [['check'], 'check needs a layout file'],
-    [
-      ['check', 'good.yaml', '--condition', 'wet'],
-      'there is no condition "wet"; expected lit, nameplate or broken',
-    ],
+    [['check', 'good.yaml', '--condition', 'wet'], '--condition wet: expected lit, nameplate, broken'],
     [['check', 'good.yaml', '--jsonn'], "Unknown option '--jsonn'"],
+    [['check', 'good.yaml', '--air', 'foul'], '--air foul: expected clean, cautious'],
+    [['good.yaml', '--air', 'foul'], '--air foul: expected clean, cautious'],
     [['check', 'good.yaml', '--condition'], "Option '--condition <value>' argument missing"],
     [['check', 'good.yaml', '--why', '0'], '--why "0" is not a number of the list of pairs, from 1 on'],
     [['check', 'good.yaml', '--why', '1.5'], '--why "1.5" is not a number of the list of pairs, from 1 on'],

@@ -75,6 +75,21 @@ test('a file that changed meanwhile is overwritten only when told to', async () 
   expect(readFileSync(path, 'utf8')).not.toContain('someone else')
 })
 
+test('and when that was on the way out, the program ends with the file saved', async () => {
+  const path = copied('fascia-border.yaml')
+  const terminal = underShell(scriptCommand(program, path), wide)
+  await settled(terminal)
+  await edit(terminal, 'x', 'swapped the two terminals')
+  writeFileSync(path, `${readFileSync(path, 'utf8')}# by someone else\n`)
+  terminal.send('q')
+  await terminal.sees('Not saved.')
+  terminal.send('s')
+  await terminal.sees('The file changed on disk')
+  terminal.send('o')
+  expect(await terminal.ending()).toEqual({ status: 0, settingsRestored: true })
+  expect(readFileSync(path, 'utf8')).not.toContain('someone else')
+})
+
 describe('the ways out leave the terminal as it was', () => {
   test.each([
     ['q', 'q', 0],

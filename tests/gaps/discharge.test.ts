@@ -7,11 +7,11 @@ import {
   streamerCriterion,
   streamerIntegral,
   streamerStart,
-  touchingStart,
   uniformBreakdown,
   worstWedge,
 } from '../../src/gaps/discharge.js'
 import { facingLine, fieldShape } from '../../src/gaps/facing-line.js'
+import { touchingStart } from './touching-start.js'
 
 const seaLevel = 1.01325
 const flat = (d: number) => facingLine(0, 0, d)

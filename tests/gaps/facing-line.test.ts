@@ -1,15 +1,19 @@
 import fc from 'fast-check'
 import { describe, expect, test } from 'vitest'
 import {
+  type AirShare,
   airShare,
   facingLine,
-  fieldAlong,
   fieldShape,
   lengthOfField,
   type Surface,
   utilisation,
   wallAsAir,
 } from '../../src/gaps/facing-line.js'
+
+/** field in the air (V/m) at distance s (m) from the more curved surface, for a difference in volts */
+const fieldAlong = ({ fieldPerVolt, line }: AirShare, difference: number, s: number): number =>
+  difference * fieldPerVolt * fieldShape(line, s)
 
 const length = fc.double({ min: 1e-4, max: 1, noNaN: true })
 

@@ -1,8 +1,12 @@
 import fc from 'fast-check'
 import { describe, expect, test } from 'vitest'
-import { touchingStart } from '../../src/gaps/discharge.js'
 import type { Surface } from '../../src/gaps/facing-line.js'
-import { type Gap, gapStart, gapStress } from '../../src/gaps/gap-stress.js'
+import { type Gap, type GapStress, gapStart, stressFrom } from '../../src/gaps/gap-stress.js'
+import { touchingStart } from './touching-start.js'
+
+/** what a peak difference (V) does in this gap */
+const gapStress = (place: Gap & { readonly peak: number }): GapStress =>
+  stressFrom(gapStart(place), place.peak)
 
 const glass: Surface = { kind: 'glass', outerRadius: 0.006, wall: 0.001, permittivity: 5 }
 const lead: Surface = { kind: 'insulated', outerRadius: 0.0035, wall: 0.0029, permittivity: 3 }

@@ -11,7 +11,7 @@ const supply: Layout['supplies'][number] = {
   frequency: 24000,
   grounding: 'midpoint',
   openCircuitProtection: true,
-  chart: new Map(),
+  chart: [],
   terminals: [
     { x: 0.4, y: 0.38, z: 0.03 },
     { x: 0.44, y: 0.38 },
@@ -106,6 +106,21 @@ describe('a drawn lead', () => {
     })
     expect(lead.equivalentRadius).toBeCloseTo(0.005 * 0.2 ** (1 / 2.3), 15)
     expect('boreRadius' in leadBody(sign([drawn]), ['S1.1', 'K.a'])).toBe(false)
+  })
+})
+
+describe('an output lead that changes terminals', () => {
+  it('stays where it lies, in its conduit, and only its end moves to the other terminal', () => {
+    const routed: Route = { ...drawn, conduit: 'metal', bore: 0.016 }
+    const before = leadBody(sign([routed]), ['S1.1', 'K.a'])
+    const after = leadBody(sign([routed]), ['S1.2', 'K.a'])
+    expect(after.conduit).toBe('metal')
+    expect(after.assumed).toBe(false)
+    expect(Array.from(after.line.points.slice(-9))).toEqual(Array.from(before.line.points.slice(-9)))
+    expect(Array.from(after.line.points.slice(0, 3))).toEqual([0.44, 0.38, 0.02])
+    // told from the tube it is the same way back
+    const back = leadBody(sign([routed]), ['K.a', 'S1.2'])
+    expect(back.line.length).toBeCloseTo(after.line.length, 12)
   })
 })
 

@@ -61,10 +61,10 @@ describe('the full example', () => {
         openCircuitProtection: true,
         groundFaultTrip: 0.015,
         maxLead: 0.9,
-        chart: new Map([
-          ['neon-12', 6.5],
-          ['neon-15', 8],
-        ]),
+        chart: [
+          { fill: 'neon', diameter: 0.012, length: 6.5 },
+          { fill: 'neon', diameter: 0.015, length: 8 },
+        ],
         terminals: [
           { x: 0.4, y: 0.38, z: 0.03 },
           { x: 0.44, y: 0.38, z: 0.03 },

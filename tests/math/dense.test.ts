@@ -1,11 +1,6 @@
 import { describe, expect, it } from 'vitest'
-import {
-  factorCholesky,
-  inverseFromCholesky,
-  rowGram,
-  rowProducts,
-  solveLowerRows,
-} from '../../src/math/dense.js'
+import { factorCholesky, rowGram, rowProducts, solveLowerRows } from '../../src/math/dense.js'
+import { inverseFromCholesky } from './inverse.js'
 
 /** A definite matrix of size n: Hilbert's, eased by a multiple of the unit matrix. */
 const definite = (n: number): Float64Array =>

@@ -1,7 +1,7 @@
 import { expect, test } from 'vitest'
 import type { Measured, Supply, Wiring } from '../../src/layout/layout.js'
 import { magnitude } from '../../src/math/complex.js'
-import { calibrations, measuredCircuits, measuredLaw } from '../../src/network/calibration.js'
+import { measuredCircuits, measuredLaw } from '../../src/network/calibration.js'
 import { solveBand, solveLit } from '../../src/network/lit.js'
 import { networkOf, sketch, supplyOf, wired } from './signs.js'
 
@@ -23,7 +23,7 @@ const trueState = (figures: Partial<Supply>, factor: number) => {
 const calibrated = (figures: Partial<Supply>, measured: Measured) => {
   const parts = signOf(figures, measured)
   const net = networkOf(parts)
-  return { net, found: calibrations(parts.layout, parts.wiring, net) }
+  return { net, found: measuredCircuits(parts.layout, parts.wiring, net).map((circuit) => circuit?.factor) }
 }
 
 test.each([

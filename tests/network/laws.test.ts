@@ -454,6 +454,16 @@ describe('stray shares', () => {
     expect(stray.leads[0]!.total).toBeCloseTo(magnitude(minus(terminalCurrent[0], columns.get(0)!.atA)), 10)
   })
 
+  test('where touching it has no solution, there is no current rather than one that is no number', () => {
+    // resistances that no network has: those of a state that lost its numbers
+    const lost = {
+      ...state,
+      fields: state.fields.map((field) => ({ ...field, re: field.re.map(() => Number.NaN) })),
+    }
+    for (const metal of strayShares(net, lost).floating) expect(metal).not.toHaveProperty('touch')
+    for (const metal of floating) expect(metal.touch).toBeGreaterThan(0)
+  })
+
   test('touching floating metal draws what a large capacitor to ground would', () => {
     expect(floating.map(({ id }) => id)).toEqual(['bar1', 'face'])
     // the same currents and resistances with 1 µF from the metal to ground
@@ -468,7 +478,7 @@ describe('stray shares', () => {
       const problem = phasorProblem(networkOf(parts, { count, matrix: held }), 0)
       solveDirectly(problem, conductance)
       const volts = litOf(state).neededVoltage * Math.hypot(problem.volts.re[node]!, problem.volts.im[node]!)
-      expect((volts * 2 * Math.PI * 24000 * 1e-6) / touch).toBeCloseTo(1, 4)
+      expect((volts * 2 * Math.PI * 24000 * 1e-6) / touch!).toBeCloseTo(1, 4)
       expect(voltage).toBeCloseTo(Math.hypot(state.fields[0]!.re[node]!, state.fields[0]!.im[node]!), 9)
     }
   })

@@ -63,7 +63,7 @@ describe.each(['channel-letters', 'conversion-gone-wrong'])('%s', (name) => {
     const { frequency } = nominal.fields[0]!
     // the columns give way a little when the sheet is held
     const { touch, voltage } = floating[0]!
-    expect(Math.abs(touch / (2 * Math.PI * frequency * own * voltage) - 1)).toBeLessThan(0.05)
+    expect(Math.abs(touch! / (2 * Math.PI * frequency * own * voltage) - 1)).toBeLessThan(0.05)
   })
   it('pairs with sheets are judged as pairs with metal', () => {
     const { pairs } = inspection(prepared, prepared.layout.wiring)

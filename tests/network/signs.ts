@@ -49,7 +49,7 @@ export const supplyOf = (id: string, figures: Partial<Supply> = {}): Supply => (
   frequency: 24000,
   grounding: 'midpoint',
   openCircuitProtection: false,
-  chart: new Map(),
+  chart: [],
   terminals: [
     { x: 0, y: 0 },
     { x: 0.1, y: 0 },

@@ -5,11 +5,21 @@
 import { describe, expect, test } from 'vitest'
 import type { Grounding } from '../../src/layout/layout.js'
 import type { Complex } from '../../src/math/complex.js'
-import { minus, over, times } from '../../src/math/complex.js'
+import { minus } from '../../src/math/complex.js'
 import { solveLit } from '../../src/network/lit.js'
 import type { Network } from '../../src/network/network.js'
 import type { ColumnCurrents } from '../../src/network/solution.js'
 import { capacitors, networkOf, sketch, supplyOf, wired } from './signs.js'
+
+const times = (a: Complex, b: Complex): Complex => ({
+  re: a.re * b.re - a.im * b.im,
+  im: a.re * b.im + a.im * b.re,
+})
+const over = (a: Complex, b: Complex): Complex => {
+  const { re, im } = times(a, { re: b.re, im: -b.im })
+  const size = b.re * b.re + b.im * b.im
+  return { re: re / size, im: im / size }
+}
 
 /**
  * `sections` pi sections from terminal to terminal, each R = ohms · |I|^(−exponent) a metre: the electrodes are the

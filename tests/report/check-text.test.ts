@@ -25,7 +25,7 @@ const tooLong = (text: string): string[] => text.split('\n').filter((line) => st
 // the figures are those of the column law: see check-json.test.ts
 test('two bars 3 mm apart', () => {
   expect(checked(twoBars({ gap: 3 })).text).toBe(`Two bars (sign.yaml)
-Condition lit. Rules: common-practice.
+Condition lit. Rules: common-practice. Air: cautious reading.
 kV and mA are rms unless marked peak. Clean, dry, new glass.
 HIGH VOLTAGE KILLS AND STARTS FIRES. Off, locked out and discharged before touching; licensed person
 and local code decide.
@@ -82,6 +82,21 @@ CAUTIONS
   - The figures are a model of clean, dry, new glass; they do not replace an inspection. A licensed
     person and the local code decide.
 `)
+})
+
+test('a rule set that could not be read is not one that pairs are within', () => {
+  const { text } = checked(twoBars().replace('[common-practice]', '[common-practice, no-such-set]'))
+  expect(text).toContain('within common-practice\n')
+  expect(text).not.toMatch(/(within|Rules:) .*no-such-set/)
+  // it is a caution instead
+  expect(text).toMatch(/Rule set missing.*no-such-set/)
+})
+
+test('the no-load voltage is the one that counts: by its peak where that is greater', () => {
+  // IEC 61347-2-10:2000: the greater of rms and peak/√2; 9.9/√2 = 7.0
+  const { text } = checked(twoBars().replace('no_load_kv: 6', 'no_load_kv: 6\n    no_load_peak_kv: 9.9'))
+  expect(text).toContain('core-and-coil, 7.0 kV no-load')
+  expect(text).not.toMatch(/6\.0 kV/)
 })
 
 test('no line is longer than 100 columns, with the names of the shipped signs', () => {

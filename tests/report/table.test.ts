@@ -44,6 +44,13 @@ test('a name without its middle keeps both ends', () => {
   expect(withoutMiddle('left-window-7', 8)).toBe('left…w-7')
 })
 
+test('a line of wide characters keeps to the width of the terminal', () => {
+  const wide = '  ネオン管の名前 がとても 長い場合でも 右の端を 越えてはならない'
+  for (const width of [12, 20, 31])
+    for (const line of folded(wide, width)) expect(stringWidth(line), line).toBeLessThanOrEqual(width)
+  expect(folded(wide, 20).join('').replaceAll(' ', '')).toBe(wide.replaceAll(' ', ''))
+})
+
 test('a long line goes on in deeper ones', () => {
   expect(folded('  lit  S1.1 and S1.2', 40)).toEqual(['  lit  S1.1 and S1.2'])
   expect(folded('  lit  S1.1 and S1.2 and S2.1', 16)).toEqual(['  lit  S1.1 and', '    S1.2 and', '    S2.1'])

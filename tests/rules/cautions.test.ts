@@ -57,6 +57,17 @@ describe('pairs', () => {
   })
 })
 
+test('what may go dark says by how much: the band of its own law', () => {
+  const prepared = prepare(twoTubes())
+  const { wiring } = prepared.layout
+  const solved = { ...solver(prepared)(wiring), mayGoDark: ['S1'] }
+  const band = (more: Partial<typeof solved>) =>
+    find(inspection(prepared, wiring, { ...solved, ...more }), 'may-go-dark')?.band
+  expect(band({})).toBe(0.3)
+  expect(band({ measured: [{ factor: 1.1, currents: [], from: 'watts' }] })).toBeCloseTo(0.05, 12)
+  expect(band({ measured: [{ currents: [], from: 'nothing' }] })).toBe(0.3)
+})
+
 test('a dark circuit names its supply, why, and the tubes in the order in which they go dark', () => {
   const found = litSign({ kv: 1 })
   const [circuit] = found.circuits

@@ -75,6 +75,21 @@ describe('loadings', () => {
   test('no chart for one kind of glass, no footage', () => {
     expect(loading(onPaper(twoTubes({ supply: 'chart_m: {neon-12: 9}' })), 'chart')).toBeUndefined()
   })
+  test.each([
+    [12.7, 'argon-mercury-12.7', true],
+    [12.7, 'argon-mercury-12.70', true],
+    [12.7, 'argon-mercury-12.66', true],
+    [12, 'argon-mercury-12', true],
+    [12.7, 'argon-mercury-13', false],
+    [12.7, 'argon-mercury-12.6', false],
+    [12.7, 'neon-12.7', false],
+  ])('glass of %f mm and a chart for %s', (diameter, key, found) => {
+    const layout = twoTubes({ supply: `chart_m: {${key}: 4}` })
+    const tubes = layout.tubes.map((tube) => ({ ...tube, diameter: diameter / 1000 }))
+    const share = loading(onPaper({ ...layout, tubes }), 'chart')?.share
+    if (found) expect(share).toBeCloseTo(2.6 / 4, 9)
+    else expect(share).toBeUndefined()
+  })
   test('mains input is the power in the glass over 0.85 (ours), against the rated VA', () => {
     const power = circuitOf(lit({})).power ?? 0
     const at = (share: number) => loading(lit({ supply: `rated_va: ${power / 0.85 / share}` }), 'mains')

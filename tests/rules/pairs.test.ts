@@ -2,8 +2,9 @@ import { describe, expect, test } from 'vitest'
 import { inspection, prepare } from '../../src/inspection.js'
 import type { PotentialField } from '../../src/network/solution.js'
 import { distanceAt } from '../../src/rules/distance-table.js'
-import { type LitFields, pairFindings, verdictOf, worstFirst } from '../../src/rules/pairs.js'
+import { pairFindings, verdictOf, worstFirst } from '../../src/rules/pairs.js'
 import { resolveRules, shippedSet } from '../../src/rules/resolve.js'
+import type { LitFields } from '../../src/rules/voltages.js'
 import { onPaper, pairOf, ruleOf, shopText, type TwoTubes, twoTubes } from './signs.js'
 
 const thumbOf = (sign: TwoTubes) => {
@@ -408,6 +409,16 @@ describe('which condition counts', () => {
     const [electronic, transformer] = [judged(dim), judged(dim, { supplies })]
     expect(transformer.air.peak / electronic.air.peak).toBeCloseTo(10, 6)
     expect(ruleOf(transformer, 'thumb')?.severity).toBe(ruleOf(electronic, 'thumb')?.severity)
+  })
+  test('a core-and-coil supply elsewhere in the sign relights nothing of an electronic circuit', () => {
+    const dim = { nominal: scaled(0.1), band: [] }
+    const [own] = context.supplies
+    if (!own) throw new Error('no supply')
+    const supplies = [own, { ...own, id: 'S2', type: 'core-and-coil' as const }]
+    expect(judged(dim, { supplies }).air).toEqual(judged(dim).air)
+    // and one that feeds one of the two parts does
+    const circuitOfTube = [0, 1]
+    expect(judged(dim, { supplies, circuitOfTube }).air.peak).toBeCloseTo(10 * judged(dim).air.peak, 6)
   })
   test('code sets go by nameplate whatever burns', () => {
     const sets = resolveRules(['iec-60664-1']).sets

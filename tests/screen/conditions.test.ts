@@ -2,7 +2,7 @@
 import { describe, expect, test } from 'vitest'
 import { nodeMix } from '../../src/network/potentials.js'
 import { openTube } from '../../src/screen/conditions.js'
-import { fieldsShown, instantAt, peakPotential } from '../../src/screen/instant.js'
+import { fieldsShown, instantAt, instantShown, peakPotential } from '../../src/screen/instant.js'
 import type { Line } from '../../src/screen/lines.js'
 import { loadingLines } from '../../src/screen/panes/loading.js'
 import { readoutLines } from '../../src/screen/panes/readout.js'
@@ -68,7 +68,10 @@ describe('condition broken', () => {
     const at = (tube: string, along: number) => {
       const index = state.prepared.tubes.findIndex(({ name }) => name === tube)
       const length = state.prepared.tubes[index]?.line.length ?? 0
-      return instantAt(state, nodeMix(state.inspection.probe, { kind: 'fixed', index }, along * length))
+      return instantAt(
+        instantShown(state),
+        nodeMix(state.inspection.probe, { kind: 'fixed', index }, along * length),
+      )
     }
     // wired border O P E N: the E is open
     for (const tube of ['border', 'O', 'P']) expect(at(tube, 0.5)).toBeCloseTo((Math.SQRT2 * noLoad) / 2, 6)

@@ -71,7 +71,7 @@ describe('the height of a tube', () => {
     expect(s.state().solving).toBe(true)
   })
 
-  test.each(['', 'tall', '5 kV', '9000'])(
+  test.each(['', 'tall', '5 kV', '90000'])(
     '"%s" keeps the prompt open, says why, and changes nothing',
     (text) => {
       const s = session('open-window')
@@ -231,7 +231,7 @@ describe('leaving', () => {
   test('s saves and quits', () => {
     const s = edited()
     s.keys('s')
-    expect(s.effects()).toEqual([{ do: 'save', force: false }, { do: 'quit' }])
+    expect(s.effects()).toEqual([{ do: 'save', force: false, thenQuit: true }])
   })
   test('d quits without saving', () => {
     const s = edited()
@@ -260,10 +260,11 @@ describe('saving', () => {
     const s = session('open-window')
     s.keys('f', 's')
     const { opened, present } = s.state()
-    s.send({ type: 'saved', opened: { ...opened, sign: present.sign } })
+    s.effects()
+    s.send({ type: 'saved', opened: { ...opened, sign: present.sign }, thenQuit: false })
     expect(s.state().message).toEqual({ text: 'Saved open-window.yaml.', level: 'good' })
     s.keys('q')
-    expect(s.effects()).toEqual([{ do: 'save', force: false }, { do: 'quit' }])
+    expect(s.effects()).toEqual([{ do: 'quit' }])
     // the wiring before the save is now an edit
     s.keys('u', 'q')
     expect(s.state().dialog).toEqual({ kind: 'quit' })
@@ -272,21 +273,44 @@ describe('saving', () => {
     const s = session('open-window')
     s.keys('f', 's')
     s.effects()
-    const refused = { type: 'not-saved', why: 'changed', changedOnDisk: true } as const
+    const refused = { type: 'not-saved', why: 'changed', changedOnDisk: true, thenQuit: false } as const
     s.send(refused)
     s.keys('q', 's', 'enter')
     expect(s.effects()).toEqual([])
     s.keys('o')
-    expect(s.effects()).toEqual([{ do: 'save', force: true }])
+    expect(s.effects()).toEqual([{ do: 'save', force: true, thenQuit: false }])
     s.send(refused)
     s.keys('escape')
     expect(s.effects()).toEqual([])
     expect(s.state().dialog).toBeUndefined()
   })
+  test('on the way out a file that changed is asked about, and when it is overwritten the program ends', () => {
+    const s = session('open-window')
+    s.keys('f', 'q', 's')
+    expect(s.effects()).toEqual([{ do: 'save', force: false, thenQuit: true }])
+    s.send({ type: 'not-saved', why: 'changed', changedOnDisk: true, thenQuit: true })
+    expect(s.effects()).toEqual([])
+    s.keys('o')
+    expect(s.effects()).toEqual([{ do: 'save', force: true, thenQuit: true }])
+    const { opened, present } = s.state()
+    s.send({ type: 'saved', opened: { ...opened, sign: present.sign }, thenQuit: true })
+    expect(s.effects()).toEqual([{ do: 'quit' }])
+  })
+  test('when it cannot be saved on the way out the work stays on the screen', () => {
+    const s = session('open-window')
+    s.keys('f', 'q', 's')
+    s.effects()
+    s.send({ type: 'not-saved', why: 'Not saved: the disk is full.', changedOnDisk: false, thenQuit: true })
+    expect(s.effects()).toEqual([])
+    expect(s.state().dialog).toBeUndefined()
+    // a later save is no way out any more
+    s.keys('s')
+    expect(s.effects()).toEqual([{ do: 'save', force: false, thenQuit: false }])
+  })
   test('why a file could not be written is said', () => {
     const s = session('open-window')
     s.keys('f', 's')
-    s.send({ type: 'not-saved', why: 'Not saved: the disk is full.', changedOnDisk: false })
+    s.send({ type: 'not-saved', why: 'Not saved: the disk is full.', changedOnDisk: false, thenQuit: false })
     expect(s.state().message).toEqual({ text: 'Not saved: the disk is full.', level: 'bad' })
   })
 })

@@ -3,14 +3,8 @@ import { describe, expect, test } from 'vitest'
 import type { Wiring } from '../../src/layout/layout.js'
 import { tubeUnderCursor } from '../../src/screen/editing.js'
 import { selectedPair, unsaved } from '../../src/screen/state.js'
-import {
-  type Edit,
-  feedFromOtherEnd,
-  joinEnds,
-  shiftTube,
-  swapTerminals,
-  turnTube,
-} from '../../src/wiring/edits.js'
+import type { Edit } from '../../src/wiring/edit.js'
+import { feedFromOtherEnd, joinEnds, shiftTube, swapTerminals, turnTube } from '../../src/wiring/edits.js'
 import { type Session, session, solution } from './session.js'
 
 const signs = ['open-window', 'script-word', 'feed-moved', 'conversion-gone-wrong']

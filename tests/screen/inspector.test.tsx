@@ -5,7 +5,7 @@ import { afterEach, expect, test, vi } from 'vitest'
 import { frame } from '../../src/screen/frame.js'
 import { Inspector, type Store } from '../../src/screen/inspector.js'
 import { standIn } from '../../src/screen/terminal/stand-in.js'
-import { textWidth } from '../../src/screen/text-width.js'
+import { textWidth } from '../../src/view/text-width.js'
 import { paneText } from './pane-lines.js'
 import { type Session, session } from './session.js'
 

@@ -273,7 +273,7 @@ const checks: Record<Action, (key: string) => void> = {
     expect(s.effects()).toEqual([])
     expect(s.state().message?.text).toBe('Nothing to save: the file holds this wiring.')
     s.keys('f', key)
-    expect(s.effects()).toEqual([{ do: 'save', force: false }])
+    expect(s.effects()).toEqual([{ do: 'save', force: false, thenQuit: false }])
   },
   cautions: opens('cautions'),
   help: opens('help'),

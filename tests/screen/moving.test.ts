@@ -3,8 +3,11 @@ import { expect, test } from 'vitest'
 import { pointAt } from '../../src/geometry/polyline.js'
 import { probeFinding } from '../../src/rules/pairs.js'
 import { findingInView, footUnderCursor, mapWindow, placeOfCursor } from '../../src/screen/aim.js'
+import { mapShown } from '../../src/screen/map-pane.js'
 import { listedPairs, selectedPair } from '../../src/screen/state.js'
-import { cellAt, columnAt, rowAt } from '../../src/view/map-window.js'
+import { mapRaster } from '../../src/view/map-raster.js'
+import { mapScene } from '../../src/view/map-scene.js'
+import { cellAt, columnAt, inside, placeAt, rowAt } from '../../src/view/map-window.js'
 import { type Session, session } from './session.js'
 
 const indexOf = (s: Session) => selectedPair(s.state())?.index
@@ -204,6 +207,48 @@ test('switching the condition keeps the pair under the cursor', () => {
   const { key } = selectedPair(s.state())?.pair ?? {}
   s.keys('c')
   expect(selectedPair(s.state())?.pair.key).toBe(key)
+})
+
+test('the whole sign in view is all that the map draws: face, sheets and terminals too', () => {
+  for (const name of ['open-window', 'channel-letters', 'core-and-coil-6kv', 'script-word']) {
+    const state = session(name).state()
+    const { layout, bodies, leads } = state.inspection.context
+    const window = mapWindow(state)
+    const { outlines, terminals } = mapScene(layout, [...bodies, ...leads])
+    const corners = outlines.flatMap(({ points }) =>
+      Array.from({ length: points.length / 3 }, (_, i) => ({ x: points[3 * i]!, y: points[3 * i + 1]! })),
+    )
+    expect(corners.length + terminals.length).toBeGreaterThan(1)
+    for (const { x, y } of [...corners, ...terminals])
+      expect(inside(window, cellAt(window, x, y)), `${name} ${x} ${y}`).toBe(true)
+  }
+})
+
+test('in the cell of the cursor the map draws the conductor that is read out', () => {
+  const s = session('open-window', { columns: 100, rows: 30 })
+  const window = mapWindow(s.state())
+  const { layout, bodies, leads } = s.state().inspection.context
+  const raster = mapRaster(mapScene(layout, [...bodies, ...leads]), window)
+  let shared = 0
+  for (let cell = 0; cell < raster.sharing.length; cell++) {
+    const passing = new Set(raster.body.slice(raster.first[cell], raster.first[cell + 1]))
+    if (passing.size < 2) continue
+    shared++
+    const at = { column: cell % window.columns, row: Math.floor(cell / window.columns) }
+    const drawn = new Set<number | undefined>()
+    for (let pick = 0; pick < passing.size; pick++) {
+      const state = { ...s.state(), cursor: { on: 'map', pick, ...placeAt(window, at) } } as const
+      const foot = footUnderCursor(state)
+      const index = foot && 'index' in foot.body ? foot.body.index : -1
+      const owner = mapShown(state, raster).owner[cell]
+      expect(owner, `cell ${cell}, pick ${pick}`).toBe(
+        index + (foot?.body.kind === 'lead' ? bodies.length : 0),
+      )
+      drawn.add(owner)
+    }
+    expect(drawn).toEqual(passing)
+  }
+  expect(shared).toBeGreaterThan(3)
 })
 
 test('o walks round the conductors that share a place', () => {

@@ -1,10 +1,14 @@
 /** What stands on the screen at every size: boxes that tile it, rows that fill them, and what must never be missing. */
 import { readdirSync } from 'node:fs'
 import { describe, expect, test } from 'vitest'
+import { toFix } from '../../src/rules/to-fix.js'
+import { findingInView } from '../../src/screen/aim.js'
 import { type Box, frame, sheetBox } from '../../src/screen/frame.js'
 import { fitted, lineWidth } from '../../src/screen/lines.js'
 import { asciiOnly } from '../../src/screen/panes/words.js'
 import type { State } from '../../src/screen/state.js'
+import { endGlyphs } from '../../src/view/map-glyphs.js'
+import { openTubeGoverns } from '../../src/view/words.js'
 import { allText, drawnPanes, paneText, textOf } from './pane-lines.js'
 import { session } from './session.js'
 
@@ -87,9 +91,14 @@ function states(name: string, size: readonly [number, number], ascii: boolean): 
   see('escape', '?')
   see('escape', 'w', 'pagedown')
   s.keys('escape')
-  s.send({ type: 'not-saved', why: 'Not saved: “quoted” – é 文字 → ≥ 3 Ω.', changedOnDisk: false })
+  s.send({
+    type: 'not-saved',
+    why: 'Not saved: “quoted” – é 文字 → ≥ 3 Ω.',
+    changedOnDisk: false,
+    thenQuit: false,
+  })
   seen.push(s.state())
-  s.send({ type: 'not-saved', why: '', changedOnDisk: true })
+  s.send({ type: 'not-saved', why: '', changedOnDisk: true, thenQuit: false })
   seen.push(s.state())
   s.keys('escape')
   seen.push({ ...s.state(), solving: true, dialog: { kind: 'quit' }, filter: 'border itself' })
@@ -170,7 +179,10 @@ describe('at 80x24', () => {
         ).toBeGreaterThanOrEqual(3)
         const [first = '', second = '', third = ''] = paneText(state, 'readout')
         expect(first).toMatch(/ to .* +gap \d+(\.\d+)? (mm|in) +((FIX|WATCH)\?? )?\d+(\.\d+)?/)
-        expect(second).toMatch(/^\d+\.\d+ kV rms \(.*\), peak \d+\.\d+ kV {2}now [+-]?\d+\.\d+ kV/)
+        const pair = findingInView(state)
+        // where a tube open decides, its kV and the tube are in view, and other figures give way
+        if (pair && openTubeGoverns(pair)) expect(second).toMatch(/broken \d+\.\d+ kV rms, \S.* open$/)
+        else expect(second).toMatch(/^\d+\.\d+ kV rms \(.*\), peak \d+\.\d+ kV {2}now [+-]?\d+\.\d+ kV/)
         expect(third).toMatch(/^(needs \d+(\.\d+)? (mm|in)|gap is enough): /)
         expect(frame(80, 24, state.present.sign.wiring.circuits.length).map.height).toBeGreaterThanOrEqual(10)
       }
@@ -234,6 +246,11 @@ describe('at 80x24', () => {
     expect(text).toMatch(/dark first: |the whole string stays dark/)
     expect(text).toContain('not lit: judged on nameplate')
     expect(paneText(s.state(), 'banners')[1]).toMatch(/^ FIX: S1 cannot light its whole string/)
+    // the dark circuit counts among what is to fix
+    const { pairs } = s.state().inspection
+    const count = pairs.filter((p) => p.verdict === 'fix').length + 1
+    expect(toFix(s.state().inspection)).toBe(count)
+    expect(paneText(s.state(), 'title')[0]).toContain(`${count} TO FIX`)
   })
 })
 
@@ -243,6 +260,23 @@ test('help names every key of the table', () => {
   const text = allText(s.state())
   for (const key of ['Tab', 'Shift-Tab', 'PgDn', 'Shift-Left H', '+ =', 'F ', 'Esc', 'Ctrl-C', 'Ctrl-Z'])
     expect(text).toContain(key)
+})
+
+test('help tells of the marks that the map draws', () => {
+  const s = session('open-window', { columns: 250, rows: 70 })
+  s.keys('?', 'pagedown', 'pagedown')
+  expect(allText(s.state())).toContain(`${endGlyphs.a} and ${endGlyphs.b} are the electrodes`)
+})
+
+test('a marked place is told while the cursor is on nothing', () => {
+  const s = session('open-window')
+  s.keys('m', ...Array<string>(20).fill('shift-left'), ...Array<string>(20).fill('shift-up'))
+  const { mark, inspection } = s.state()
+  if (mark?.body.kind !== 'fixed') throw new Error('no tube marked')
+  const name = inspection.context.bodies[mark.body.index]?.name
+  const [first, second] = paneText(s.state(), 'readout')
+  expect(first).toBe(`marked: ${name} at ${Math.round(mark.at * 1000)} mm`)
+  expect(second).toMatch(/^\d+\.\d+ kV rms, [+-]?\d+\.\d+ kV now.* to ground \(lit\)$/)
 })
 
 test('the cautions sheet begins with what the banner says', () => {

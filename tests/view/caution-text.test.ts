@@ -115,3 +115,18 @@ test('a missing set is named with its first fault and the number of the others',
     /^Rule set missing, so not judged by it: shop\.yaml:8:\d+: between, entry 1 is the text "tubee", did you mean "tube"\? \(and 1 more\); gone: there is no such rule set .*\.$/,
   )
 })
+
+test.each([
+  [0.3, '30 %'],
+  [0.05, '5 %'],
+])('what may go dark is told with its band of %f', (band, share) => {
+  expect(said({ level: 'watch', code: 'may-go-dark', supply: 'S1', band })).toBe(
+    `S1 lights the string by the gradient law, but not if the glass takes ${share} more: the sign may go dark.`,
+  )
+})
+
+test('floating metal with the current through a person, where that could be solved', () => {
+  const metal = { level: 'danger', code: 'floating-metal', id: 'frame', voltage: 1200 } as const
+  expect(said({ ...metal, touch: 0.0012 })).toContain('1.2 kV rms, and 1.2 mA would flow through a person')
+  expect(said(metal)).toContain('1.2 kV rms, and an unknown current would flow through a person')
+})

@@ -1,11 +1,7 @@
 import { expect, test } from 'vitest'
-import { mapFrame } from '../../src/view/map.js'
 import { withOverlays } from '../../src/view/map-overlay.js'
-import { nearestAt } from '../../src/view/map-pick.js'
-import { mapRaster } from '../../src/view/map-raster.js'
-import { gridText } from '../../src/view/map-runs.js'
 import { marks, meanings } from '../../src/view/theme.js'
-import { options, plainWindow, scene, tube } from './map-signs.js'
+import { gridText, mapFrame, options, plainWindow, scene, tube } from './map-signs.js'
 
 const posts = scene([
   tube('A', [
@@ -69,29 +65,4 @@ test('overlays leave the grid below as it was, and nothing happens outside the w
   })
   expect(grid).toEqual(before)
   expect(shown).toEqual(before)
-})
-
-test('the conductors near a cell are listed nearest first, each strand once', () => {
-  const raster = mapRaster(posts, window)
-  const near = nearestAt(raster, { column: 5, row: 3 }, 12)
-  expect(near.map(({ body, distance }) => [body, distance])).toEqual([
-    [0, 2],
-    [1, 11],
-  ])
-  // cell (3, 3) spans y = 60 … 80 mm; the tube starts at y = 30 mm
-  expect(near[0]!.at).toBeCloseTo(0.04, 6)
-  expect(nearestAt(raster, { column: 5, row: 3 }, 1)).toEqual([])
-})
-
-test('two strands of a doubled-back tube under the cursor are two places', () => {
-  const doubled = scene([
-    tube('E', [
-      [15, 30],
-      [195, 30],
-      [195, 35],
-      [15, 35],
-    ]),
-  ])
-  const near = nearestAt(mapRaster(doubled, plainWindow(21, 3)), { column: 4, row: 1 }, 0)
-  expect(near.map(({ at }) => Math.round(1000 * at))).toEqual([30, 335])
 })

@@ -1,11 +1,11 @@
 import fc from 'fast-check'
 import { expect, test } from 'vitest'
 import { pointAt } from '../../src/geometry/polyline.js'
-import { type MapGrid, mapFrame } from '../../src/view/map.js'
+import type { MapGrid } from '../../src/view/map.js'
 import { mapRaster } from '../../src/view/map-raster.js'
 import { sceneBounds } from '../../src/view/map-scene.js'
 import { cellAt, fitWindow, turnedOver } from '../../src/view/map-window.js'
-import { arc, bar, type Drawn, letterO, options, plainWindow, scene, tube } from './map-signs.js'
+import { arc, bar, type Drawn, letterO, mapFrame, options, plainWindow, scene, tube } from './map-signs.js'
 
 test('a circle spans twice as many columns as rows', () => {
   fc.assert(

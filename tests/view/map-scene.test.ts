@@ -1,9 +1,7 @@
 import { expect, test } from 'vitest'
-import { mapFrame } from '../../src/view/map.js'
-import { gridText } from '../../src/view/map-runs.js'
 import { mapScene, sceneBounds } from '../../src/view/map-scene.js'
 import { fitWindow } from '../../src/view/map-window.js'
-import { options, tube } from './map-signs.js'
+import { gridText, mapFrame, options, tube } from './map-signs.js'
 
 test('the face is a faint outline behind everything', () => {
   const outlined = mapScene(

@@ -1,7 +1,8 @@
 /** Small invented signs for the tests of the map. Millimetres in, metres out. */
 import type { Body } from '../../src/geometry/conductors.js'
 import { polyline } from '../../src/geometry/polyline.js'
-import type { MapOptions } from '../../src/view/map.js'
+import { type MapGrid, type MapOptions, mapGrid, type PotentialOf } from '../../src/view/map.js'
+import { mapRaster } from '../../src/view/map-raster.js'
 import type { MapScene, SceneTerminal } from '../../src/view/map-scene.js'
 import type { MapWindow } from '../../src/view/map-window.js'
 import { potentialScale } from '../../src/view/scale.js'
@@ -85,7 +86,6 @@ export const options = (rest: Partial<MapOptions> = {}): MapOptions => ({
   charset: 'box',
   glyphs: 'stroke',
   labels: false,
-  cycle: 0,
   ...rest,
 })
 
@@ -111,3 +111,15 @@ export const letterO = scene(
   ],
   { terminals: terminals([175, 230], [225, 230]) },
 )
+
+/** The characters alone, one string a row. */
+export const gridText = ({ columns, rows, glyphs }: MapGrid): string[] =>
+  Array.from({ length: rows }, (_, row) => glyphs.slice(row * columns, (row + 1) * columns).join(''))
+
+/** Both steps of a map at once. */
+export const mapFrame = (
+  drawn: MapScene,
+  potentialOf: PotentialOf,
+  window: MapWindow,
+  asked: MapOptions,
+): MapGrid => mapGrid(mapRaster(drawn, window), potentialOf, asked)

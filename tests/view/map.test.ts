@@ -1,10 +1,21 @@
 import { expect, test } from 'vitest'
-import { defaultGlyphs, type MapGrid, mapFrame, mapGrid } from '../../src/view/map.js'
+import { defaultGlyphs, type MapGrid, mapGrid } from '../../src/view/map.js'
 import { mapRaster } from '../../src/view/map-raster.js'
-import { gridText } from '../../src/view/map-runs.js'
 import { columnAt, rowAt } from '../../src/view/map-window.js'
 import { marks, meaningIndex, meanings } from '../../src/view/theme.js'
-import { arc, bar, lead, letterO, options, plainWindow, scene, terminals, tube } from './map-signs.js'
+import {
+  arc,
+  bar,
+  gridText,
+  lead,
+  letterO,
+  mapFrame,
+  options,
+  plainWindow,
+  scene,
+  terminals,
+  tube,
+} from './map-signs.js'
 
 const text = (grid: MapGrid) => gridText(grid).map((row) => row.trimEnd())
 const column = letterO.bodies[0]!.line.length
@@ -139,23 +150,26 @@ const crossing = scene([
   ),
 ])
 const meeting = 2 * 20 + 9
-const shownAtMeeting = (va: number, vb: number, cycle = 0, mirrored = false) => {
+const shownAtMeeting = (va: number, vb: number, pick?: number, mirrored = false) => {
   const window = { ...plainWindow(20, 5), mirrored }
-  const grid = mapFrame(crossing, (body) => (body === 0 ? va : vb), window, options({ cycle }))
   const cell = mirrored ? 2 * 20 + 10 : meeting
+  const picked = pick === undefined ? {} : { picked: { cell, body: pick, at: 0 } }
+  const grid = mapFrame(crossing, (body) => (body === 0 ? va : vb), window, options(picked))
   return { body: grid.owner[cell], marks: grid.marks[cell], meaning: meanings[grid.meanings[cell]!] }
 }
 
-test('of two conductors in a cell the one further from 0 V is shown, underlined, and cycling shows the other', () => {
+test('of two conductors in a cell the one further from 0 V is shown, underlined, and of those picked the picked one', () => {
   expect(shownAtMeeting(-5000, 1000)).toEqual({ body: 0, marks: marks.underline, meaning: 'minus-3' })
   expect(shownAtMeeting(1000, -5000)).toEqual({ body: 1, marks: marks.underline, meaning: 'minus-3' })
   expect(shownAtMeeting(-5000, 1000, 1).body).toBe(1)
-  expect(shownAtMeeting(-5000, 1000, 2).body).toBe(0)
+  expect(shownAtMeeting(1000, -5000, 0).body).toBe(0)
+  // what does not pass through the cell cannot be shown there
+  expect(shownAtMeeting(-5000, 1000, 7).body).toBe(0)
 })
 
 test('of two conductors on one step the nearer is shown: the higher from the front, the lower from the back', () => {
   expect(shownAtMeeting(5100, 5000).body).toBe(1)
-  expect(shownAtMeeting(5100, 5000, 0, true).body).toBe(0)
+  expect(shownAtMeeting(5100, 5000, undefined, true).body).toBe(0)
 })
 
 test('a cell of a single conductor is not underlined, nor is an electrode for the lead that arrives there', () => {

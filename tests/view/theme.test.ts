@@ -1,13 +1,5 @@
 import { expect, test } from 'vitest'
-import {
-  type ColourLevel,
-  type Ground,
-  marks,
-  meanings,
-  sgr,
-  stepMeaning,
-  styled,
-} from '../../src/view/theme.js'
+import { type ColourLevel, type Ground, marks, meanings, sgr, stepMeaning } from '../../src/view/theme.js'
 
 type Rgb = readonly [number, number, number]
 
@@ -115,10 +107,10 @@ test('marks come on top of a meaning', () => {
   expect(sgr(theme, 'banner-danger', marks.bold)).toBe('1;7;38;5;203')
 })
 
-test('plain text gets no escape, styled text a reset behind it', () => {
+test('plain text gets no codes', () => {
   const theme = { level: 8, ground: 'light' } as const
-  expect(styled(theme, 'text', 'plain')).toBe('plain')
-  expect(styled(theme, 'face', '┊')).toBe('\u001b[38;5;244m┊\u001b[0m')
+  expect(sgr(theme, 'text')).toBe('')
+  expect(sgr(theme, 'face')).toBe('38;5;244')
 })
 
 test('a step of potential has the meaning of its index, no potential is unknown', () => {

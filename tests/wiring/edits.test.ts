@@ -1,12 +1,11 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
+import { enteringEnd, leavingEnd } from '../../src/layout/ends.js'
 import type { Wiring } from '../../src/layout/layout.js'
+import type { Edit } from '../../src/wiring/edit.js'
 import {
-  type Edit,
-  enteringEnd,
   feedFromOtherEnd,
   joinEnds,
-  leavingEnd,
   moveFeed,
   sameWiring,
   shiftTube,

@@ -3,21 +3,18 @@ import fc from 'fast-check'
 import { describe, expect, test } from 'vitest'
 import type { Layout, Wiring } from '../../src/layout/layout.js'
 import { parseLayout } from '../../src/layout/parse.js'
+import { noLoadVoltage } from '../../src/network/supplies.js'
+import type { Edit, Sign } from '../../src/wiring/edit.js'
 import {
-  type Edit,
   feedFromOtherEnd,
   joinEnds,
   moveFeed,
-  type Sign,
   shiftTube,
   swapTerminals,
   turnTube,
-  withSupply,
-  withSupplyAt,
-  withTubeFill,
-  withTubeHeight,
   withVariant,
 } from '../../src/wiring/edits.js'
+import { withSupply, withSupplyAt, withTubeFill, withTubeHeight } from '../../src/wiring/figure-edits.js'
 import { holdsSign } from '../../src/wiring/same-sign.js'
 import { editedText } from '../../src/wiring/text.js'
 import { kiosk } from '../layout/kiosk.js'
@@ -174,6 +171,24 @@ describe('figures of supplies and tubes', () => {
     expect(edited(small, (s) => rebuilt(s, (l) => withSupply(l, 'S1', figures)))).toContain(
       '{id: S1, rated_va: 450, ground_fault_trip_ma: 15, max_lead_mm: 1200, type: core-and-coil, no_load_kv: 7.123456, short_circuit_ma: 60, frequency_hz: 50, grounding: one-end}',
     )
+  })
+
+  test('another no-load voltage takes the stated peak along: nothing else of the file changes', () => {
+    const volts = (noLoadVoltage: number) => (s: Sign) =>
+      rebuilt(s, (l) => withSupply(l, 'S1', { noLoadVoltage }))
+    const low = edited(kiosk, volts(6500))
+    expect(low).toBe(kiosk.replace('    no_load_kv: 8\n    no_load_peak_kv: 12\n', '    no_load_kv: 6.5\n'))
+    expect(signOf(low).layout.supplies.map(noLoadVoltage)).toEqual([6500])
+    // above the old peak of 12 kV, which would make the file invalid
+    expect(signOf(edited(kiosk, volts(13_000))).layout.supplies.map(noLoadVoltage)).toEqual([13_000])
+    expect(edited(kiosk, volts(8000 * (1 + 1e-15)))).toBe(kiosk)
+
+    const peaked = small.replace('no_load_kv: 6.0', 'no_load_kv: 6.0, no_load_peak_kv: 10')
+    expect(edited(peaked, volts(4000))).toBe(small.replace('6.0', '4'))
+    // undone after it was saved
+    const [whole, without] = [signOf(kiosk), signOf(low)]
+    const back = parseLayout(editedText(low, without, whole), 'sign.yaml')
+    expect(back.layout && holdsSign(back.layout, whole)).toBe(true)
   })
 
   test('terminals that move keep their height; those that were assumed are written down', () => {

@@ -1,6 +1,6 @@
 /** Legend, message, key footer and the two pinned banner rows. */
 
-import { cautionText } from '../../view/caution-text.js'
+import { cautionText, standingWarning } from '../../view/caution-text.js'
 import { potentialScale, scaleEntries } from '../../view/scale.js'
 import { type Meaning, stepMeaning } from '../../view/theme.js'
 import { peakPotential } from '../instant.js'
@@ -14,9 +14,9 @@ export function legendLine(state: State, width: number): Line {
   const entries = scaleEntries(potentialScale(peakPotential(state)), state.ascii ? '..' : '…')
   const forms = [
     (e: (typeof entries)[number]) => `${e.glyph} ${e.text}  `,
-    (e: (typeof entries)[number]) => `${e.glyph}${e.text.replace('about 0', '0')} `,
+    (e: (typeof entries)[number]) => `${e.glyph} ${e.text.replace('about 0', '0')} `,
     (e: (typeof entries)[number]) =>
-      `${e.glyph}${(e.low + e.high) / 2 === 0 ? '0' : e.text.split(/…|\.\./)[e.low < 0 ? 0 : 1]} `,
+      `${e.glyph} ${(e.low + e.high) / 2 === 0 ? '0' : e.text.split(/…|\.\./)[e.low < 0 ? 0 : 1]} `,
   ]
   const head = span(' kV now: ', 'dim')
   const form = forms.find((f) => 9 + entries.reduce((sum, e) => sum + f(e).length, 0) <= width) ?? forms[2]!
@@ -78,18 +78,10 @@ export function footerLine(state: State, width: number): Line {
   return [span(' '), ...kept.flatMap(({ key, label }) => [span(key, 'key'), span(` ${label}  `, 'dim')])]
 }
 
-const standing = [
-  'HIGH VOLTAGE KILLS AND STARTS FIRES. Off, locked out and discharged before touching anything. Local code and a licensed person decide.',
-  'HIGH VOLTAGE KILLS AND STARTS FIRES. Off, locked out, discharged before touching. Code and licence decide.',
-  'HIGH VOLTAGE KILLS. Lock out and discharge first. Local code decides.',
-  'HIGH VOLTAGE KILLS. Lock out first.',
-]
-
 /** Exactly two rows: the standing line, and the most pressing caution with the number of the others. */
 export function bannerLines(state: State, width: number): [Line, Line] {
-  const text = standing.find((s) => s.length + 2 <= width) ?? standing[3]!
   const danger = span('', 'banner-danger')
-  const first = fitted([span(` ${text}`, 'banner-danger')], width, dots(state), danger)
+  const first = fitted([span(` ${standingWarning(width - 2)}`, 'banner-danger')], width, dots(state), danger)
   const [worst, ...others] = state.inspection.cautions
   if (!worst)
     return [

@@ -1,15 +1,14 @@
 /** The supply loading, live: needed voltage, mA, chart, mains and trip as bars with the limit marked. */
+
+import { supplyOf } from '../../layout/parts.js'
 import { magnitude } from '../../math/complex.js'
-import { supplyOf } from '../../rules/circuits.js'
 import type { CircuitFinding, Loading, Verdict } from '../../rules/findings.js'
+import { loadingBar, loadingFigures } from '../../view/loading-text.js'
 import { measuredBriefly } from '../../view/measured-text.js'
-import type { Meaning } from '../../view/theme.js'
 import { hertz, kvFigure, ma, maFigure, metres, percent, supplyShort, watts } from '../../view/words.js'
 import { fitted, type Line, line, lineWidth, span } from '../lines.js'
 import type { State } from '../state.js'
 import { dots } from './words.js'
-
-const verdictMeaning = (verdict: Verdict): Meaning => verdict
 
 export function loadingLines(state: State, width: number, height: number): Line[] {
   const { circuits } = state.inspection
@@ -29,7 +28,9 @@ function compactLines(
 ): Line[] {
   const [only, more] = inspection.wiring.circuits
   const rows = circuits.map((circuit) => compactLine(circuit, width))
-  return only && !more ? [...rows, line(supplyShort(supplyOf(present.sign.layout, only)), 'dim')] : rows
+  return only && !more
+    ? [...rows, line(supplyShort(supplyOf(present.sign.layout, only.supply)), 'dim')]
+    : rows
 }
 
 /** everything that must stay in view in one row */
@@ -39,7 +40,7 @@ function compactLine(c: CircuitFinding, width: number): Line {
   // the load as a share tells more than the kilovolts it is a share of
   return [
     span(`${c.supply} `, 'title'),
-    span(percent(c.load ?? 0), verdictMeaning(voltageVerdict(c))),
+    span(percent(c.load ?? 0), voltageVerdict(c)),
     span(` ${currents(c)}`),
   ]
 }
@@ -50,7 +51,7 @@ function stateSpans(c: CircuitFinding): Line {
   return [
     span(
       `${kvFigure(c.neededVoltage ?? 0)} of ${kvFigure(c.noLoadVoltage)} kV rms ${percent(c.load ?? 0)}`,
-      verdictMeaning(voltageVerdict(c)),
+      voltageVerdict(c),
     ),
   ]
 }
@@ -61,7 +62,7 @@ const currents = (c: CircuitFinding): string =>
   c.lit ? `out ${c.terminals.map((t) => maFigure(magnitude(t.current))).join('/')} mA` : ''
 
 function circuitLines(state: State, c: CircuitFinding, index: number, width: number): Line[] {
-  const supply = supplyOf(state.present.sign.layout, state.inspection.wiring.circuits[index]!)
+  const supply = supplyOf(state.present.sign.layout, state.inspection.wiring.circuits[index]!.supply)
   const name: Line = [
     span(`${c.supply} `, 'title'),
     span(
@@ -94,48 +95,17 @@ function circuitLines(state: State, c: CircuitFinding, index: number, width: num
   ]
 }
 
-function dimmest(c: CircuitFinding): Line {
-  const [worst] = c.tubes
-    .filter((t) => t.least)
-    .sort((a, b) => (a.least?.current ?? 0) - (b.least?.current ?? 0))
-  return worst?.least ? [span(`least ${maFigure(worst.least.current)} in ${worst.id}`)] : []
-}
-
-const barNames: Record<Loading['by'], string> = {
-  voltage: 'kVrms',
-  chart: 'chart',
-  mains: 'mains',
-  residual: 'trip',
-  lead: 'lead',
-}
+const dimmest = ({ dimmest: place }: CircuitFinding): Line =>
+  place ? [span(`least ${maFigure(place.current)} in ${place.tube}`)] : []
 
 /** `kVrms ████████···|· 64% 5.1/8.0`: the limit stands at the mark, more than it runs over */
-function barLine({ ascii }: State, l: Loading, width: number): Line {
-  const figures = `${percent(l.share).replace(' ', '').padStart(5)} ${barFigures(l)}`
+function barLine({ ascii, present }: State, l: Loading, width: number): Line {
+  const figures = `${percent(l.share).replace(' ', '').padStart(5)} ${loadingFigures(l, present.sign.layout.units)}`
   const room = Math.max(6, width - 6 - figures.length - 1)
   const limit = Math.max(3, Math.round(room * 0.8))
   const full = Math.min(room, Math.round(l.share * limit))
   const cells = Array.from({ length: room }, (_, i) =>
     i === limit ? '|' : i < full ? (ascii ? '#' : '█') : ascii ? '.' : '·',
   )
-  return [
-    span(barNames[l.by].padEnd(6), 'dim'),
-    span(cells.join(''), verdictMeaning(l.verdict)),
-    span(figures, verdictMeaning(l.verdict)),
-  ]
-}
-
-function barFigures({ by, value, limit }: Loading): string {
-  switch (by) {
-    case 'voltage':
-      return `${kvFigure(value)}/${kvFigure(limit)}`
-    case 'chart':
-      return `${value.toFixed(1)}/${limit.toFixed(1)}m`
-    case 'mains':
-      return `${value.toFixed(0)}/${limit.toFixed(0)}VA`
-    case 'residual':
-      return `${maFigure(value)}/${maFigure(limit)}mA`
-    case 'lead':
-      return `${(value * 1000).toFixed(0)}/${(limit * 1000).toFixed(0)}mm`
-  }
+  return [span(loadingBar(l.by).padEnd(6), 'dim'), span(cells.join(''), l.verdict), span(figures, l.verdict)]
 }

@@ -1,7 +1,8 @@
 /** What is under the cursor: the selected pair, the probe from a mark, or one conductor alone. */
 import { pointAt } from '../../geometry/polyline.js'
-import { instantPotential, nodeMix, rmsPotential } from '../../network/potentials.js'
+import { nodeMix, rmsPotential } from '../../network/potentials.js'
 import type { PairFinding, Spot } from '../../rules/findings.js'
+import { bodyOf, partName } from '../../rules/passing.js'
 import {
   kv,
   kvFigure,
@@ -10,14 +11,16 @@ import {
   ma,
   needOf,
   openText,
+  openTubeGoverns,
   outcomeText,
+  placeText,
   severityFigure,
   signedKv,
   verdictText,
 } from '../../view/words.js'
-import { bodyOf, findingInView, footUnderCursor, underCursor } from '../aim.js'
+import { findingInView, footUnderCursor, underCursor } from '../aim.js'
 import { openTube } from '../conditions.js'
-import { fieldsShown, phaseShown } from '../instant.js'
+import { type InstantShown, instantAt, instantShown } from '../instant.js'
 import { fitted, type Line, line, lineWidth, span } from '../lines.js'
 import type { Foot, State } from '../state.js'
 import { dots } from './words.js'
@@ -32,11 +35,12 @@ export function readoutLines(state: State, width: number, height: number): Line[
 function pairReadout(state: State, pair: PairFinding, width: number): Line[] {
   const { layout } = state.present.sign
   const need = needOf(pair)
-  const verdict = verdictText(pair.verdict, layout.rules)
+  const verdict = verdictText(pair.verdict, state.inspection.context.ruleSets)
+  const shown = instantShown(state)
   return [
     [
       span(
-        `${verdictMark[pair.verdict]} ${placeText(state, pair.a)} to ${placeText(state, pair.b)}`,
+        `${verdictMark[pair.verdict]} ${placeText(pair.a, layout.units, 'long')} to ${placeText(pair.b, layout.units, 'long')}`,
         'title',
       ),
       span(`  gap ${length(pair.gap, layout.units)}`, 'title'),
@@ -48,7 +52,7 @@ function pairReadout(state: State, pair: PairFinding, width: number): Line[] {
       // names of rule sets may be long: last, where a narrow screen cuts
       span(pair.verdict === 'within' ? `, ${verdict}${pair.unsure ? '?' : ''}` : '', 'within'),
     ],
-    differenceLine(state, pair, width),
+    differenceLine(state, shown, pair, width),
     [
       span(
         need === undefined ? 'gap is enough: ' : `needs ${length(need, layout.units)}: `,
@@ -59,13 +63,10 @@ function pairReadout(state: State, pair: PairFinding, width: number): Line[] {
     ],
     [
       span(`air ${kv(pair.air.peak)} peak, a discharge starts at ${kv(pair.air.startsAt)} peak: `),
-      span(
-        outcomeText[pair.air.outcome] ?? pair.air.outcome,
-        pair.air.outcome === 'nothing' ? 'within' : 'fix',
-      ),
+      span(outcomeText[pair.air.outcome], pair.air.outcome === 'nothing' ? 'within' : 'fix'),
       ...openSpans(pair),
     ],
-    [...spotSpans(state, 'a', pair.a), span('  '), ...spotSpans(state, 'b', pair.b)],
+    [...spotSpans(state, shown, 'a', pair.a), span('  '), ...spotSpans(state, shown, 'b', pair.b)],
     ...pair.rules.map(
       (r): Line =>
         line(
@@ -80,7 +81,7 @@ function pairReadout(state: State, pair: PairFinding, width: number): Line[] {
 function openSpans({ air: { open, outcome, startsAt }, judgedOn }: PairFinding): Line {
   if (!open || judgedOn === 'broken' || open.outcome === outcome) return []
   const share = `; with a tube open ${kvFigure(open.peak)} of ${kv(startsAt)}: `
-  const words = outcomeText[open.outcome] ?? open.outcome
+  const words = outcomeText[open.outcome]
   return open.counted
     ? [span(share), span(words, 'fix')]
     : [span(share, 'dim'), span(`${words} unless the supply's protection trips`, 'dim')]
@@ -94,9 +95,10 @@ function ruleAdvice(pair: PairFinding): string {
 }
 
 /** What the condition on the screen goes by comes first; what an open tube does is left out where it has no room. */
-function differenceLine(state: State, pair: PairFinding, width: number): Line {
+function differenceLine(state: State, shown: InstantShown, pair: PairFinding, width: number): Line {
   const d = pair.difference
-  const now = span(`now ${signedKv(instantOf(state, pair.a) - instantOf(state, pair.b))}  `)
+  const instantOf = ({ body, at }: Spot) => instantAt(shown, nodeMix(state.inspection.probe, body, at))
+  const now = span(`now ${signedKv(instantOf(pair.a) - instantOf(pair.b))}  `)
   const nameplate = span(
     `nameplate ${kv(d.nameplate)} rms`,
     state.condition === 'nameplate' ? 'title' : 'dim',
@@ -109,50 +111,41 @@ function differenceLine(state: State, pair: PairFinding, width: number): Line {
       ...(d.lit === undefined ? [] : [span(`lit ${kv(d.lit)} rms  `, 'dim')]),
       nameplate,
     ]
+  const rms = d.lit === undefined ? [] : [span(`${kv(d.lit)} rms`, 'title')]
   const lit =
     d.lit === undefined
       ? [span('not lit: judged on nameplate  ', 'watch')]
       : [
-          span(`${kv(d.lit)} rms`, 'title'),
+          ...rms,
           span(
             ` (${kvFigure(d.litLow ?? d.lit)} to ${kvFigure(d.litHigh ?? d.lit)}), peak ${kv(d.litPeak ?? d.lit * Math.SQRT2)}  `,
           ),
         ]
   const always = [...lit, now, nameplate]
-  const broken = span(`  broken ${kv(d.broken)} rms, ${open}`, 'dim')
-  return open !== '' && lineWidth([...always, broken]) <= width ? [...always, broken] : always
-}
-
-function instantOf(state: State, spot: Spot): number {
-  return instantPotential(
-    fieldsShown(state),
-    nodeMix(state.inspection.probe, spot.body, spot.at),
-    phaseShown(state),
-  )
-}
-
-const placeText = (state: State, spot: Spot): string => {
-  const { units } = state.present.sign.layout
-  if (spot.kind === 'face') return 'face'
-  const kind = spot.kind === 'tube' ? '' : `${spot.kind} `
-  return `${kind}${spot.part} at ${length(spot.at, units)}`
+  if (open === '') return always
+  const governs = openTubeGoverns(pair)
+  const broken = span(`broken ${kv(d.broken)} rms, ${open}`, governs ? 'title' : 'dim')
+  const all = [...always, span('  '), broken]
+  if (!governs) return lineWidth(all) <= width ? all : always
+  // what decides is never left out: other figures give way, one after the other
+  const forms = [all, [...lit, now, broken], [...lit, broken], [...rms, span('  '), now, broken]]
+  return forms.find((form) => lineWidth(form) <= width) ?? [broken, span('  '), ...rms]
 }
 
 /** potential of one of the two places, and the tube's current there */
-function spotSpans(state: State, name: string, spot: Spot): Line {
+function spotSpans(state: State, shown: InstantShown, name: string, spot: Spot): Line {
   const active = state.cursor.on === 'pair' && state.cursor.side === name
   return [
     span(`${active ? '>' : ' '}${name} ${spot.part} `, active ? 'cursor' : 'dim'),
-    span(`${potentialText(state, { body: spot.body, at: spot.at })}`),
+    span(potentialText(state, shown, { body: spot.body, at: spot.at })),
   ]
 }
 
-function potentialText(state: State, foot: Foot): string {
-  const fields = fieldsShown(state)
+function potentialText(state: State, shown: InstantShown, foot: Foot): string {
   const mix = nodeMix(state.inspection.probe, foot.body, foot.at)
-  const now = instantPotential(fields, mix, phaseShown(state))
+  const now = instantAt(shown, mix)
   const current = currentAt(state, foot)
-  return `${kv(rmsPotential(fields, mix))} rms, ${signedKv(now)} now${current === undefined ? '' : `, ${ma(current)}`}`
+  return `${kv(rmsPotential(shown.fields, mix))} rms, ${signedKv(now)} now${current === undefined ? '' : `, ${ma(current)}`}`
 }
 
 /** magnitude of the current of a lit tube at a path length, A */
@@ -174,6 +167,20 @@ function currentAt(state: State, { body, at }: Foot): number | undefined {
 const conditionText = (state: State): string =>
   state.condition === 'broken' ? `broken, ${openTube(state) ?? 'none'} open` : state.condition
 
+const groundLine = (state: State, foot: Foot): Line => [
+  span(potentialText(state, instantShown(state), foot)),
+  span(` to ground (${conditionText(state)})`, 'dim'),
+]
+
+/** The marked place, while the cursor is on nothing. */
+const markedLines = (state: State, mark: Foot): Line[] => [
+  line(
+    `marked: ${partName(state.inspection.context, mark.body)} at ${length(mark.at, state.present.sign.layout.units)}`,
+    'title',
+  ),
+  groundLine(state, mark),
+]
+
 /** One conductor under a free cursor, or what to do where there is none. */
 function footReadout(state: State): Line[] {
   const foot = footUnderCursor(state)
@@ -182,13 +189,15 @@ function footReadout(state: State): Line[] {
     if (state.cursor.on === 'pair')
       return [line('No pair to show: nothing passes within reach of anything else.', 'dim')]
     return [
+      ...(state.mark ? markedLines(state, state.mark) : []),
       line(
         'Nothing here. Move the cursor onto glass, a lead or metal; Tab goes back to the worst list.',
         'dim',
       ),
     ]
   }
-  const body = bodyOf(state, foot.body)
+  const { context } = state.inspection
+  const body = bodyOf(context, foot.body)
   if (!body) return []
   const [x, y, z] = pointAt(body.line, foot.at)
   const others = underCursor(state).slice(1)
@@ -201,10 +210,10 @@ function footReadout(state: State): Line[] {
       ),
       span(`  x ${lengthFigure(x, units)} y ${lengthFigure(y, units)} height ${length(z, units)}`, 'dim'),
     ],
-    [span(potentialText(state, foot)), span(` to ground (${conditionText(state)})`, 'dim')],
+    groundLine(state, foot),
     others.length > 0
       ? line(
-          `also here: ${others.map((n) => bodyOf(state, n.body)?.name ?? '').join(', ')} (o picks the next)`,
+          `also here: ${others.map((n) => partName(context, n.body)).join(', ')} (o picks the next)`,
           'dim',
         )
       : line('m marks this place: then move on to read gap and difference from here.', 'dim'),

@@ -1,9 +1,12 @@
 /** Long texts shown over the map: the help from the key table, and all cautions and assumptions. */
+import { lawBand } from '../../network/lit.js'
 import { cautionText, generalCautions } from '../../view/caution-text.js'
 import { type Explanation, explanationRows } from '../../view/explanation.js'
+import { endGlyphs } from '../../view/map-glyphs.js'
 import { symptomSheet } from '../../view/symptoms.js'
 import type { Meaning } from '../../view/theme.js'
 import { why } from '../../view/why.js'
+import { percent } from '../../view/words.js'
 import { wrap } from '../../view/wrap.js'
 import { findingInView } from '../aim.js'
 import { sheetBox } from '../frame.js'
@@ -12,10 +15,10 @@ import { fitted, type Line, line, span } from '../lines.js'
 import { freshSavings, type State, sheetOf } from '../state.js'
 import { asciiOnly, dots } from './words.js'
 
-const marksHelp = [
+const marksHelp: readonly string[] = [
   'Colour and glyph of the glass say its potential at the instant: = ~ - negative, o about 0, + * # positive.',
-  '( and ) are the electrodes at ends a and b, 1 and 2 the terminals. Underlined: several conductors share the cell; the one furthest from 0 V is drawn.',
-  'Verdicts: ! fix, ~ watch, blank within the rule sets asked; ? means the verdict flips inside the +-30 % band of the default gradient law.',
+  `${endGlyphs.a} and ${endGlyphs.b} are the electrodes at ends a and b, 1 and 2 the terminals. Underlined: several conductors share the cell; the one furthest from 0 V is drawn, under the cursor the one that is read out.`,
+  `Verdicts: ! fix, ~ watch, blank within the rule sets judged by; ? means the verdict flips inside the band of the gradient law: +-${percent(lawBand(undefined))}, narrower where the circuit was measured.`,
   'Condition broken: kV brk is the worst with one tube of a circuit open; the map shows one break at a time, the open tube half and half where both sides are live.',
   'x limit: the difference there over the difference this gap may have. n: not lit, judged on nameplate.',
 ]

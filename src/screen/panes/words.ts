@@ -2,8 +2,7 @@
 import { sameWiring } from '../../wiring/edits.js'
 import type { State } from '../state.js'
 
-export const dots = ({ ascii }: Pick<State, 'ascii'>): string => (ascii ? '~' : '…')
-export const dash = ({ ascii }: Pick<State, 'ascii'>): string => (ascii ? '-' : '–')
+export const dots = ({ ascii }: Pick<State, 'ascii'>): string => (ascii ? '..' : '…')
 
 /** Pure-ASCII mode: every sign that is not ASCII has a stand-in. */
 const standIns: Record<string, string> = {

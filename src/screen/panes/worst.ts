@@ -1,7 +1,7 @@
 /** The worst list: ranked, live, scrolling so that the selected pair stays in view. */
 import type { PairFinding, Verdict } from '../../rules/findings.js'
 import type { Meaning } from '../../view/theme.js'
-import { kvFigure, lengthFigure, severityFigure, spotText } from '../../view/words.js'
+import { kvFigure, lengthFigure, placeText, severityFigure } from '../../view/words.js'
 import { fitted, inverse, type Line, line, span } from '../lines.js'
 import { listedPairs, type State } from '../state.js'
 import { dots } from './words.js'
@@ -27,11 +27,10 @@ export function worstLines(state: State, width: number, height: number): Line[] 
       head,
       line(state.filter ? ' no pair names this text' : ' no two conductors pass within reach', 'dim'),
     ]
-  const room = height - 1
-  const first = scrollTo(selected, pairs.length, room)
-  const rows = pairs.slice(first, first + room).map((pair, i) => {
-    const chosen = first + i === selected
-    const spans = rowSpans(pair, units, width, state.condition)
+  const rows = shownRows(selected, pairs.length, height - 1).map((index) => {
+    const pair = pairs[index]!
+    const chosen = index === selected
+    const spans = rowSpans(pair, units, width, state.condition, dots(state))
     return fitted(
       chosen ? spans.map((s) => ({ ...s, as: rowMeaning(pair), marks: inverse })) : spans,
       width,
@@ -42,10 +41,21 @@ export function worstLines(state: State, width: number, height: number): Line[] 
   return [head, ...rows]
 }
 
-/** The first row shown. The list turns by pages: a row scrolled at each step would send it whole every time. */
-function scrollTo(selected: number, count: number, room: number): number {
-  if (selected < 0 || count <= room) return 0
-  return Math.min(count - room, selected - (selected % room))
+/** the worst stay in view wherever the list is turned to */
+const alwaysShown = 3
+
+/** Places in the list of the rows shown: the worst ones, then the page that holds the selected pair. */
+function shownRows(selected: number, count: number, room: number): number[] {
+  const top = Math.min(alwaysShown, Math.floor(room / 2))
+  const rest = room - top
+  // turned by pages: a row scrolled at each step would send the whole list every time
+  const page = selected < room ? top : top + (selected - top) - ((selected - top) % rest)
+  const from = Math.max(top, Math.min(count - rest, page))
+  const places = [
+    ...Array.from({ length: top }, (_, i) => i),
+    ...Array.from({ length: rest }, (_, i) => from + i),
+  ]
+  return places.filter((place) => place < count)
 }
 
 function headLine(state: State, pairs: readonly PairFinding[], width: number): Line {
@@ -56,7 +66,7 @@ function headLine(state: State, pairs: readonly PairFinding[], width: number): L
   const kv = { lit: 'kV rms', nameplate: 'kV n.p.', broken: 'kV brk' }[state.condition]
   const columns = isWide(width)
     ? `${units.padStart(6)} ${kv.padStart(7)} x limit`
-    : `${units.padStart(4)} ${kv.replace(' ', '').slice(-5)}    x`
+    : `${units.padStart(4)} ${{ lit: 'kVrms', nameplate: 'kV np', broken: 'kVbrk' }[state.condition]}    x`
   const left: Line = [...(state.filter ? [span(`/${state.filter} `, 'key')] : []), span(counts, as)]
   return [...fitted(left, width - columns.length, dots(state)), span(columns, 'dim')]
 }
@@ -70,7 +80,13 @@ const rowMeaning = ({ verdict }: PairFinding): Meaning => (verdict === 'within' 
 const shownDifference = ({ difference }: PairFinding, condition: State['condition']): number =>
   difference[condition] ?? difference.nameplate
 
-function rowSpans(pair: PairFinding, units: 'mm' | 'in', width: number, condition: State['condition']): Line {
+function rowSpans(
+  pair: PairFinding,
+  units: 'mm' | 'in',
+  width: number,
+  condition: State['condition'],
+  mark: string,
+): Line {
   const wide = isWide(width)
   const shown = shownDifference(pair, condition)
   const kv = kvFigure(shown) + (condition === 'lit' && pair.difference.lit === undefined ? 'n' : '')
@@ -79,13 +95,13 @@ function rowSpans(pair: PairFinding, units: 'mm' | 'in', width: number, conditio
     : `${lengthFigure(pair.gap, units).padStart(4)} ${kv.padStart(5)} ${severityFigure(pair.severity).padStart(4)}`
   // a narrow list names the parts only: the places stand in the readout
   const names = wide
-    ? `${spotText(pair.a, units)} – ${spotText(pair.b, units)}`
+    ? `${placeText(pair.a, units, 'short')} – ${placeText(pair.b, units, 'short')}`
     : pair.a.part === pair.b.part
       ? `${pair.a.part} itself`
       : `${pair.a.part} ${pair.b.part}`
   return [
     span(`${verdictMark[pair.verdict]}${pair.unsure ? '?' : ' '}`, pair.verdict),
-    ...fitted([span(names)], width - figures.length - 3, '~'),
+    ...fitted([span(names)], width - figures.length - 3, mark),
     span(` ${figures}`, rowMeaning(pair)),
   ]
 }

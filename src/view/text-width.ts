@@ -22,11 +22,5 @@ export function cut(text: string, width: number, mark = '…'): string {
   return start + mark
 }
 
-export const padEnd = (text: string, width: number): string => text + ' '.repeat(missing(text, width))
-export const padStart = (text: string, width: number): string => ' '.repeat(missing(text, width)) + text
-
-/** Exactly `width` cells: cut where it is longer, filled with blanks where it is shorter. */
-export const fitted = (text: string, width: number, mark = '…'): string =>
-  padEnd(cut(text, width, mark), width)
-
-const missing = (text: string, width: number): number => Math.max(0, width - textWidth(text))
+export const padEnd = (text: string, width: number): string =>
+  text + ' '.repeat(Math.max(0, width - textWidth(text)))

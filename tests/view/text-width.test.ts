@@ -1,5 +1,5 @@
 import { expect, test } from 'vitest'
-import { cut, fitted, padEnd, padStart, textWidth } from '../../src/screen/text-width.js'
+import { cut, padEnd, textWidth } from '../../src/view/text-width.js'
 
 test('width counts cells, not characters', () => {
   expect(['abc', '界', 'e\u0301', '─│', ''].map(textWidth)).toEqual([3, 2, 1, 2, 0])
@@ -17,11 +17,7 @@ test('a wide character is not cut in two', () => {
   expect(cut('世界世界', 4)).toBe('世…')
 })
 
-test('padding and fitting give exactly the cells asked for', () => {
+test('padding gives exactly the cells asked for', () => {
   expect(padEnd('界', 4)).toBe('界  ')
-  expect(padStart('1.5', 5)).toBe('  1.5')
   expect(padEnd('long', 2)).toBe('long')
-  for (const text of ['', 'a', '世界世界', 'harbour kiosk']) {
-    for (const width of [1, 2, 5, 9]) expect(textWidth(fitted(text, width))).toBe(width)
-  }
 })
