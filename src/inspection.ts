@@ -153,7 +153,9 @@ function placedLead(
 
   function newLead(): PlacedLead {
     const body = leadBody(layout, between)
-    const runs = [...leadRuns(body, bodies, layout), ...leadSheetRuns(body, sheets)]
+    // a lead is at one potential: with itself it makes no pair
+    const own = leadRuns(body, bodies, layout).filter((run) => run.b.kind !== 'lead')
+    const runs = [...own, ...leadSheetRuns(body, sheets)]
     return { body, runs, conductor: leads.get([...between].reverse().join(' '))?.conductor ?? body }
   }
 }

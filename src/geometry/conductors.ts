@@ -36,6 +36,8 @@ export interface LeadBody extends ConductorCommon {
   readonly boreRadius?: number
   /** no route in the file joins these ends: the path is ours */
   readonly assumed: boolean
+  /** m in the drawing from where the route's path begins or ends to the end it should join, the greater of both */
+  readonly off: number
 }
 export interface BarBody extends ConductorCommon {
   readonly kind: 'bar'

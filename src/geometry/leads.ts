@@ -67,6 +67,7 @@ export function leadBody(layout: Layout, between: readonly [EndName, EndName]): 
     conduit: route?.conduit ?? 'none',
     ...(route?.bore === undefined ? {} : { boreRadius: route.bore / 2 }),
     assumed: drawn === undefined,
+    off: drawn === undefined ? 0 : Math.max(apart(drawn[0], start), apart(drawn[drawn.length - 1], finish)),
   }
 }
 
@@ -95,3 +96,6 @@ function drawnFrom(route: Route, end: EndName): readonly PathPoint[] | undefined
   if (route.path === undefined || route.path.length === 0) return undefined
   return route.between[0] === end ? route.path : [...route.path].reverse()
 }
+
+const apart = (drawn: PathPoint | undefined, [x, y]: Point): number =>
+  drawn === undefined ? 0 : Math.hypot(drawn.x - x, drawn.y - y)

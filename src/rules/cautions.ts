@@ -41,6 +41,10 @@ const dim = 0.85
 const highVoltage = 9000
 /** Hz: electronic supplies run at 20–30 kHz; what lies far outside is perhaps a slip (ours) */
 const usualFrequency = [15_000, 50_000] as const
+/** m: a route drawn to a terminal's neighbour still fits, one drawn to where the supply was before does not (ours) */
+const mostOff = 0.1
+/** Hz: core-and-coil transformers run on the mains */
+const mostMains = 400
 
 const order: Record<CautionLevel, number> = { danger: 0, fix: 1, watch: 2, note: 3 }
 
@@ -164,7 +168,9 @@ function leadCautions({ layout, leads, places, supplies, leadRuns }: CautionCont
     const { role, circuit } = places[i]!
     return role === 'feed' && supplies[circuit]?.type === 'electronic' && nearMetal(layout, lead)
   })
+  const misfits = leads.filter(({ off }) => off > mostOff).map(({ name, off }) => ({ name, off }))
   const found: Caution[] = []
+  if (misfits.length > 0) found.push({ level: 'watch', code: 'route-misfit', leads: misfits })
   if (assumed.length > 0) found.push({ level: 'watch', code: 'route-assumed', leads: assumed })
   if (low.length > 0) found.push({ level: 'note', code: 'off-metal', leads: low })
   return found
@@ -199,7 +205,9 @@ function supplyCautions({ supplies, circuits, layout }: CautionContext): Caution
         onMetal: layout.face.metal !== 'none',
       })
     if (type === 'electronic' && (frequency < usualFrequency[0] || frequency > usualFrequency[1]))
-      found.push({ level: 'note', code: 'frequency', supply: id, frequency })
+      found.push({ level: 'note', code: 'frequency', supply: id, type, frequency })
+    if (type === 'core-and-coil' && frequency > mostMains)
+      found.push({ level: 'watch', code: 'frequency', supply: id, type, frequency })
     return found
   })
 }

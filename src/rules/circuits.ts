@@ -1,5 +1,7 @@
 /** How loaded each supply is and what each tube and lead of its circuit takes. V, A, W rms; m. */
+
 import type { FixedBody, LeadBody } from '../geometry/conductors.js'
+import { enteringEnd, leavingEnd } from '../layout/ends.js'
 import type { ChartEntry, CircuitWiring, Layout, Supply, Tube, Wiring } from '../layout/layout.js'
 import { supplyOf } from '../layout/parts.js'
 import { type Complex, magnitude, minus } from '../math/complex.js'
@@ -69,7 +71,7 @@ function circuitFinding(context: CircuitContext, circuit: CircuitWiring, index: 
     noLoadVoltage: noLoadVoltage(supply),
     ...(outcome?.lit && {
       power: outcome.power,
-      stray: strayOf(outcome),
+      stray: strayOf(outcome, circuit, tubes),
       residual: magnitude(outcome.residual),
     }),
     ...(measured && { measured }),
@@ -106,15 +108,40 @@ const dimmestOf = (tubes: readonly TubeFinding[]): CircuitFinding['dimmest'] =>
       undefined,
     )
 
-/** larger terminal current minus the least current of the string, as phasors */
-function strayOf(outcome: CircuitOutcome & { readonly lit: true }): number {
+/**
+ * Larger terminal current minus the least current of the string, as phasors. A midpoint return parts the string in two
+ * halves with a terminal each, whose currents need not be equal: each half counts by itself, the worse one is told.
+ */
+function strayOf(
+  outcome: CircuitOutcome & { readonly lit: true },
+  { string, midpointReturn }: CircuitWiring,
+  tubes: readonly number[],
+): number {
   const [one, two] = outcome.terminalCurrent
-  const larger = magnitude(one) >= magnitude(two) ? one : { re: -two.re, im: -two.im }
-  const dimmest = leastOfString(outcome)
-  const least = dimmest.current < magnitude(larger) ? dimmest.phasor : larger
+  const into = { re: -two.re, im: -two.im }
+  const joint = string.findIndex((e) => [leavingEnd(e), enteringEnd(e)].some((end) => end === midpointReturn))
+  if (joint < 0) return strayBetween(magnitude(one) >= magnitude(two) ? one : into, outcome, tubes)
+  // the joint is told by the end left or by the end entered: the first half ends in front of the tube entered there
+  const second = leavingEnd(string[joint]!) === midpointReturn ? joint + 1 : joint
+  return Math.max(
+    strayBetween(one, outcome, tubes.slice(0, second)),
+    strayBetween(into, outcome, tubes.slice(second)),
+  )
+}
+
+/** |terminal − least| over these tubes, both in the direction of the string */
+function strayBetween(
+  terminal: Complex,
+  { columns }: CircuitOutcome & { readonly lit: true },
+  tubes: readonly number[],
+): number {
+  const least = leastOfString({ columns: new Map([...columns].filter(([tube]) => tubes.includes(tube))) })
+  if (least.current >= magnitude(terminal)) return 0
   // a tube entered at b counts its current from a to b: against the direction of the string
-  const along = larger.re * least.re + larger.im * least.im >= 0 ? least : { re: -least.re, im: -least.im }
-  return magnitude(minus(larger, along))
+  const { phasor } = least
+  const along =
+    terminal.re * phasor.re + terminal.im * phasor.im >= 0 ? phasor : { re: -phasor.re, im: -phasor.im }
+  return magnitude(minus(terminal, along))
 }
 
 function circuitFacts(

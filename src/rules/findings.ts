@@ -2,7 +2,7 @@
 
 import type { Outcome } from '../gaps/gap-stress.js'
 import type { BodyRef } from '../geometry/runs.js'
-import type { Point } from '../layout/layout.js'
+import type { Point, SupplyType } from '../layout/layout.js'
 import type { Complex } from '../math/complex.js'
 import type { MeasuredCircuit } from '../network/calibration.js'
 import type { FloatingMetal } from '../network/stray.js'
@@ -226,6 +226,10 @@ export type CautionFacts =
   | { readonly code: 'glass-meets'; readonly tubes: readonly (readonly [string, string])[] }
   /** drawn so far into others that capacitances there are rough */
   | { readonly code: 'strained'; readonly parts: readonly string[] }
+  | {
+      readonly code: 'route-misfit'
+      readonly leads: readonly { readonly name: string; readonly off: number }[]
+    }
   | { readonly code: 'route-assumed'; readonly leads: readonly string[] }
   | { readonly code: 'off-metal'; readonly leads: readonly string[] }
   | { readonly code: 'lower-voltage'; readonly supply: string }
@@ -239,4 +243,9 @@ export type CautionFacts =
       readonly tubeLength: number
       readonly onMetal: boolean
     }
-  | { readonly code: 'frequency'; readonly supply: string; readonly frequency: number }
+  | {
+      readonly code: 'frequency'
+      readonly supply: string
+      readonly type: SupplyType
+      readonly frequency: number
+    }

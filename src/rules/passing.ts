@@ -3,13 +3,13 @@ import type { Surface } from '../gaps/facing-line.js'
 import type { Body, FixedBody, LeadBody, SheetBody } from '../geometry/conductors.js'
 import type { BodyRef, CloseRun } from '../geometry/runs.js'
 import { partOf } from '../layout/ends.js'
-import type { Face, Supply } from '../layout/layout.js'
+import type { Face, LeadDefaults, Supply } from '../layout/layout.js'
 import type { PartKind } from './findings.js'
 import { partBits } from './rule-set.js'
 
 /** The sign as the rules see it. */
 export interface Parts {
-  readonly layout: { readonly face: Face }
+  readonly layout: { readonly face: Face; readonly lead: Pick<LeadDefaults, 'conductor'> }
   readonly bodies: readonly FixedBody[]
   readonly sheets: readonly SheetBody[]
   readonly leads: readonly LeadBody[]
@@ -104,8 +104,9 @@ export function surface(parts: Parts, ref: BodyRef, at: number): Surface {
   const bare: Surface = { kind: 'bare', outerRadius, wall: 0, permittivity: 1 }
   if (part.kind === 'bar') return bare
   if (part.kind === 'lead') return { kind: 'insulated', outerRadius, wall, permittivity }
+  // without a boot the connection is a bare wire, much sharper than the glass it leads into
   return atEnd(at, part.line.length) && !part.boots
-    ? bare
+    ? { ...bare, outerRadius: parts.layout.lead.conductor / 2 }
     : { kind: 'glass', outerRadius, wall, permittivity }
 }
 

@@ -72,6 +72,8 @@ export function cautionText(caution: Caution, units: Units): string {
       return `Glass meets in the drawing: ${some(caution.tubes.map(([a, b]) => (a === b ? `${a} with itself` : `${a} and ${b}`)))}. Which is in front? Give their heights (z).`
     case 'strained':
       return `Drawn into other parts, so capacitances there are rough: ${some(caution.parts)}. Give heights (z).`
+    case 'route-misfit':
+      return `The drawn route does not reach the end it joins: ${some(caution.leads.map((l) => `${l.name} (${length(l.off, units)} off)`))}. Draw it again in the file.`
     case 'route-assumed':
       return `Route assumed where it passes glass or metal: ${some(caution.leads)}. Give the real route in the file.`
     case 'off-metal':
@@ -81,6 +83,8 @@ export function cautionText(caution: Caution, units: Units): string {
     case 'stray':
       return strayText(caution)
     case 'frequency':
+      if (caution.type === 'core-and-coil')
+        return `${caution.supply}: a core-and-coil transformer runs on the mains, the layout says ${hertz(caution.frequency)}. Is the type right?`
       return `${caution.supply}: electronic supplies run at 20–30 kHz; the layout says ${hertz(caution.frequency)} ${practice}.`
   }
 }

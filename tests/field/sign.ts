@@ -48,6 +48,7 @@ export const lead = (
   ...common(between.join('–'), path, section),
   between,
   conduit: 'none',
+  off: 0,
   assumed: false,
   ...more,
 })

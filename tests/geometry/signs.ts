@@ -50,6 +50,7 @@ export function leadOf(
     equivalentRadius: 0.0019,
     between,
     conduit,
+    off: 0,
     assumed: false,
   }
 }

@@ -33,6 +33,7 @@ export const lead = (from: string, to: string, path: Drawn, z = 15): Body => ({
   permittivity: 3,
   equivalentRadius: 0.002,
   conduit: 'none',
+  off: 0,
   assumed: false,
 })
 
