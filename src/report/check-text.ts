@@ -6,18 +6,19 @@ import { magnitude } from '../math/complex.js'
 import { noLoadVoltage } from '../network/supplies.js'
 import type { CircuitFinding, Condition, PairFinding, Verdict } from '../rules/findings.js'
 import type { LeadSaving } from '../rules/lead-savings.js'
+import { widestUnmet } from '../rules/pair-rules.js'
 import { cautionText, generalCautions, standingWarning } from '../view/caution-text.js'
 import { leadLines, residualLines } from '../view/lead-text.js'
 import { loadingRow } from '../view/loading-text.js'
 import { measuredText } from '../view/measured-text.js'
 import {
   airText,
+  gapFigure,
   groundingText,
   hertz,
   kv,
   kvFigure,
   length,
-  lengthFigure,
   ma,
   maFigure,
   metres,
@@ -176,10 +177,10 @@ function pairLines(layout: Layout, { pairs, context }: Inspection, options: Chec
   const urgent = count('fix') + count('watch')
   const shown = options.all ? pairs : pairs.slice(0, urgent + listedWithin)
   const left = pairs.length - shown.length
-  const criteria = [...new Set(shown.map((p) => p.governs))]
+  const criteria = [...new Set(shown.map((p) => reasonOf(p)))]
   const opened = shown.some(openTubeGoverns)
   const titles = ['', '', 'from', 'to', `gap ${layout.units}`, 'kV', 'low–high', 'paper', 'needs', 'x', 'by']
-  const rows = shown.map((p, i) => pairCells(layout, p, i, letter(criteria.indexOf(p.governs))))
+  const rows = shown.map((p, i) => pairCells(layout, p, i, letter(criteria.indexOf(reasonOf(p)))))
   if (opened) {
     titles.splice(8, 0, 'broken')
     for (const [i, row] of rows.entries()) row.splice(8, 0, brokenCell(shown[i]!))
@@ -196,6 +197,12 @@ function pairLines(layout: Layout, { pairs, context }: Inspection, options: Chec
   ]
 }
 
+/** The rule that asks for the widest gap where one is not met, else what governs. */
+const reasonOf = (p: PairFinding): string => {
+  const rule = widestUnmet(p)
+  return rule ? `${rule.set}: ${rule.clause}` : p.governs
+}
+
 /** a, b … z, aa: what governs, in a column of its own */
 const letter = (i: number): string =>
   (i < 26 ? '' : letter(Math.floor(i / 26) - 1)) + String.fromCharCode(97 + (i % 26))
@@ -208,13 +215,13 @@ function pairCells(layout: Layout, p: PairFinding, i: number, by: string): strin
     `${p.verdict}${p.unsure ? '?' : ''}`,
     placeText(p.a, layout.units, 'short'),
     placeText(p.b, layout.units, 'short'),
-    lengthFigure(p.gap, layout.units),
+    gapFigure(p.gap, need, layout.units),
     d.lit === undefined ? '' : kvFigure(d.lit),
     d.litLow === undefined || d.litHigh === undefined
       ? 'nameplate'
       : `${kvFigure(d.litLow)}–${kvFigure(d.litHigh)}`,
     kvFigure(d.nameplate),
-    need === undefined ? '' : lengthFigure(need, layout.units),
+    need === undefined ? '' : gapFigure(need, p.gap, layout.units),
     severityFigure(p.severity),
     by,
   ]

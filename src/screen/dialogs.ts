@@ -5,6 +5,7 @@ import { kvFigure, maFigure, supplyShort } from '../view/words.js'
 import { findingInView, onPair } from './aim.js'
 import { groundingChosen, midpointReturnHere, otherCircuits, tubeMoved } from './circuits.js'
 import {
+  asFiled,
   circuitUnderCursor,
   feedAt,
   figureTyped,
@@ -116,12 +117,10 @@ function chooseVariant(state: State): Next {
   const { variants } = state.present.sign.layout
   if (variants.length === 0)
     return say(state, 'This file keeps no variants yet. V keeps the wiring on screen as one.')
-  return choose(
-    state,
-    { for: 'variant' },
-    'Variant',
-    variants.map((v) => ({ label: v.name, value: v.name })),
-  )
+  return choose(state, { for: 'variant' }, 'Variant', [
+    { label: "(the file's wiring)", value: '' },
+    ...variants.map((v) => ({ label: v.name, value: v.name })),
+  ])
 }
 
 function chooseLink(state: State): Next {
@@ -203,7 +202,7 @@ export function picked(state: State, pick: PickKind, value: string): Next {
   const after = closed(state)
   switch (pick.for) {
     case 'variant':
-      return variantChosen(after, value)
+      return value === '' ? asFiled(after) : variantChosen(after, value)
     case 'link':
       return feedAt(after, pick.circuit, Number(value))
     case 'supply':

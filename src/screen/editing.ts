@@ -246,6 +246,26 @@ export function variantChosen(state: State, name: string): Next {
   return commit(state, { ...state.present.sign, wiring: { circuits: variant.circuits } }, `variant "${name}"`)
 }
 
+/**
+ * Before a save: where a variant takes the place of the file's wiring, and nothing else keeps that, it is kept as a
+ * variant itself. What a shop had filed must not go for looking at something else.
+ */
+export function filedKept(state: State): State {
+  const { layout, wiring } = state.present.sign
+  const filed = state.opened.sign.wiring
+  const kept = (one: Wiring) => layout.variants.some((v) => sameWiring(v, one))
+  if (sameWiring(filed, wiring) || !kept(wiring) || kept(filed)) return state
+  const names = new Set(layout.variants.map((v) => v.name))
+  let name = 'filed before'
+  for (let k = 2; names.has(name); k++) name = `filed before ${k}`
+  const sign: Sign = { layout: withVariant(layout, name, filed), wiring }
+  return {
+    ...state,
+    present: { sign, said: `${state.present.said}; the wiring filed before kept as "${name}"` },
+    prepared: preparedAgain(state.prepared, sign.layout),
+  }
+}
+
 export function variantKept(state: State, name: string): Next {
   const { layout, wiring } = state.present.sign
   const text = name.trim()
@@ -261,7 +281,7 @@ export function variantKept(state: State, name: string): Next {
       future: [],
       prepared: preparedAgain(state.prepared, sign.layout),
     },
-    `Kept as variant "${text}". Save (s) writes it into the file.`,
+    `Kept as variant "${text}" (the wiring only, no figures or places). Save (s) writes it into the file.`,
     'good',
   )
 }

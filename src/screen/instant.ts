@@ -1,4 +1,5 @@
 /** Which potentials are on the screen: the fields of the condition, at the instant chosen. */
+import type { BodyRef } from '../geometry/runs.js'
 import type { Inspection } from '../inspection.js'
 import { brokenField } from '../network/broken.js'
 import { instantPotential, type NodeMix } from '../network/potentials.js'
@@ -51,6 +52,26 @@ export function instantShown(state: Shown): InstantShown {
   const fields = fieldsShown(state)
   const zero = fields[0] ? phaseOfTerminal(state.inspection, fields[0]) : 0
   return { fields, phase: (state.instant * Math.PI) / 6 - zero }
+}
+
+/** Does the part belong to a circuit that is not lit? */
+export const isUnlit = ({ inspection }: Pick<State, 'inspection'>, ref: BodyRef): boolean =>
+  ref.kind === 'fixed'
+    ? inspection.unlitBodies.has(ref.index)
+    : ref.kind === 'lead' && inspection.unlitBodies.has(inspection.context.bodies.length + ref.index)
+
+/**
+ * What to read out of these parts: as on the screen, but on paper where a circuit of theirs does not light. Its supply
+ * is on all the same, so 0 V would be a dangerous answer.
+ */
+export function instantOf(
+  state: Shown,
+  refs: readonly BodyRef[],
+): InstantShown & { readonly onPaper: boolean } {
+  const onPaper = state.condition === 'lit' && refs.some((ref) => isUnlit(state, ref))
+  return onPaper
+    ? { fields: state.inspection.nameplate, phase: (state.instant * Math.PI) / 6, onPaper }
+    : { ...instantShown(state), onPaper }
 }
 
 /** the first lead of a circuit hangs on terminal 1 of its supply */

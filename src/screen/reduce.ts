@@ -5,7 +5,7 @@ import { aimByKey, inView, marked } from './aim.js'
 import { editChange } from './change.js'
 import { breakStepped, otherCondition } from './conditions.js'
 import { closed, dialogByKey, picked, submitted } from './dialogs.js'
-import { asFiled, editByKey, redo, undo } from './editing.js'
+import { asFiled, editByKey, filedKept, redo, undo } from './editing.js'
 import { tooSmall } from './frame.js'
 import { type Action, actionOf } from './keys.js'
 import { lastScroll } from './panes/sheets.js'
@@ -169,7 +169,7 @@ function fileByKey(state: State, action: Action): Next {
       return asFiled(state)
     case 'save':
       return unsaved(state)
-        ? { state, effects: [{ do: 'save', force: false, thenQuit: false }] }
+        ? { state: filedKept(state), effects: [{ do: 'save', force: false, thenQuit: false }] }
         : say(state, 'Nothing to save: the file holds this wiring.')
     case 'quit':
       return unsaved(state)
@@ -192,7 +192,7 @@ function dialogKey(state: State, name: string): Next {
       return scrolled(state, dialog, name)
     case 'quit':
       if (name === 's')
-        return { state: closed(state), effects: [{ do: 'save', force: false, thenQuit: true }] }
+        return { state: filedKept(closed(state)), effects: [{ do: 'save', force: false, thenQuit: true }] }
       if (name === 'd') return { state, effects: [{ do: 'quit' }] }
       return stay(state)
     case 'overwrite':

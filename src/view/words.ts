@@ -40,6 +40,12 @@ export function lengthFigure(length: number, units: Units): string {
   const mm = length * 1000
   return fixed(mm, Math.abs(mm) < 9.95 ? 1 : 0)
 }
+/** A length beside another that it is compared with: with a decimal where both would read the same. */
+export function gapFigure(gap: number, beside: number | undefined, units: Units): string {
+  const plain = lengthFigure(gap, units)
+  if (beside === undefined || gap === beside || lengthFigure(beside, units) !== plain) return plain
+  return units === 'in' ? fixed(gap / 0.0254, 3) : fixed(gap * 1000, 1)
+}
 export const length = (value: number, units: Units): string => `${lengthFigure(value, units)} ${units}`
 
 /** how many times over its limit: 2.8, 0.64, over 99 */

@@ -88,7 +88,7 @@ function circuitLines(state: State, c: CircuitFinding, index: number, width: num
     line(`${currents(c)}  stray ${maFigure(c.stray ?? 0)}`),
     ...measured.slice(0, 1),
     ...bars.slice(1, 2),
-    [span(`residual ${ma(c.residual ?? 0)}  `), ...dimmest(c)],
+    [span(`residual ${maFigure(c.residual ?? 0)}  `), ...dimmest(c)],
     ...measured.slice(1),
     ...bars.slice(2),
     line(`glass ${metres(c.tubeLength)}, ${c.electrodePairs} pairs, ${watts(c.power ?? 0)}`, 'dim'),
@@ -96,7 +96,7 @@ function circuitLines(state: State, c: CircuitFinding, index: number, width: num
 }
 
 const dimmest = ({ dimmest: place }: CircuitFinding): Line =>
-  place ? [span(`least ${maFigure(place.current)} in ${place.tube}`)] : []
+  place ? [span(`least ${maFigure(place.current)} ${place.tube}`)] : []
 
 /** `kVrms ████████···|· 64% 5.1/8.0`: the limit stands at the mark, more than it runs over */
 function barLine({ ascii, present }: State, l: Loading, width: number): Line {

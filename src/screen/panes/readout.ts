@@ -1,15 +1,17 @@
 /** What is under the cursor: the selected pair, the probe from a mark, or one conductor alone. */
 import { pointAt } from '../../geometry/polyline.js'
+import type { Units } from '../../layout/layout.js'
 import { nodeMix, rmsPotential } from '../../network/potentials.js'
-import type { PairFinding, Spot } from '../../rules/findings.js'
+import type { PairFinding, RuleFinding, Spot } from '../../rules/findings.js'
+import { widestUnmet } from '../../rules/pair-rules.js'
 import { bodyOf, partName } from '../../rules/passing.js'
 import {
+  gapFigure,
   kv,
   kvFigure,
   length,
   lengthFigure,
   ma,
-  needOf,
   openText,
   openTubeGoverns,
   outcomeText,
@@ -20,7 +22,7 @@ import {
 } from '../../view/words.js'
 import { findingInView, footUnderCursor, underCursor } from '../aim.js'
 import { openTube } from '../conditions.js'
-import { type InstantShown, instantAt, instantShown } from '../instant.js'
+import { type InstantShown, instantAt, instantOf } from '../instant.js'
 import { fitted, type Line, line, lineWidth, span } from '../lines.js'
 import type { Foot, State } from '../state.js'
 import { dots } from './words.js'
@@ -34,16 +36,15 @@ export function readoutLines(state: State, width: number, height: number): Line[
 
 function pairReadout(state: State, pair: PairFinding, width: number): Line[] {
   const { layout } = state.present.sign
-  const need = needOf(pair)
   const verdict = verdictText(pair.verdict, state.inspection.context.ruleSets)
-  const shown = instantShown(state)
+  const shown = instantOf(state, [pair.a.body, pair.b.body])
   return [
     [
       span(
         `${verdictMark[pair.verdict]} ${placeText(pair.a, layout.units, 'long')} to ${placeText(pair.b, layout.units, 'long')}`,
         'title',
       ),
-      span(`  gap ${length(pair.gap, layout.units)}`, 'title'),
+      span(`  gap ${gapFigure(pair.gap, widestUnmet(pair)?.needs, layout.units)} ${layout.units}`, 'title'),
       span(
         `  ${pair.verdict === 'within' ? '' : `${verdict.toUpperCase()}${pair.unsure ? '?' : ''} `}`,
         pair.verdict,
@@ -53,27 +54,39 @@ function pairReadout(state: State, pair: PairFinding, width: number): Line[] {
       span(pair.verdict === 'within' ? `, ${verdict}${pair.unsure ? '?' : ''}` : '', 'within'),
     ],
     differenceLine(state, shown, pair, width),
-    [
-      span(
-        need === undefined ? 'gap is enough: ' : `needs ${length(need, layout.units)}: `,
-        need === undefined ? 'within' : 'fix',
-      ),
-      span(`${pair.governs}`),
-      span(ruleAdvice(pair), 'dim'),
-    ],
+    needLine(pair, layout.units),
     [
       span(`air ${kv(pair.air.peak)} peak, a discharge starts at ${kv(pair.air.startsAt)} peak: `),
       span(outcomeText[pair.air.outcome], pair.air.outcome === 'nothing' ? 'within' : 'fix'),
       ...openSpans(pair),
     ],
     [...spotSpans(state, shown, 'a', pair.a), span('  '), ...spotSpans(state, shown, 'b', pair.b)],
-    ...pair.rules.map(
-      (r): Line =>
-        line(
-          `${r.set}: ${r.clause}: ${r.ok ? 'met' : `needs ${length(r.needs, layout.units)}`} – ${r.advice}`,
-          'dim',
-        ),
-    ),
+    // the rule that asks for most stands above already
+    ...pair.rules
+      .filter((r) => r !== widestUnmet(pair))
+      .map((r): Line => line(ruleText(r, layout.units), 'dim')),
+  ]
+}
+
+const ruleText = (r: RuleFinding, units: Units): string =>
+  `${r.set}: ${r.clause}: ${r.ok ? 'met' : `needs ${length(r.needs, units)}`} – ${r.advice}`
+
+/** What gap is needed and which rule says so; where another criterion sets the severity, that one too. */
+function needLine(pair: PairFinding, units: Units): Line {
+  const rule = widestUnmet(pair)
+  if (!rule) {
+    const as = pair.verdict === 'within' ? 'within' : pair.verdict
+    const words = { within: 'gap is enough: ', watch: 'near its limit: ', fix: 'gap is not enough: ' }[
+      pair.verdict
+    ]
+    return [span(words, as), span(pair.governs)]
+  }
+  const name = `${rule.set}: ${rule.clause}`
+  return [
+    span(`needs ${gapFigure(rule.needs, pair.gap, units)} ${units}: `, 'fix'),
+    span(name),
+    span(pair.governs === name ? '' : `; x by ${pair.governs}`),
+    span(` – ${rule.advice}`, 'dim'),
   ]
 }
 
@@ -87,41 +100,40 @@ function openSpans({ air: { open, outcome, startsAt }, judgedOn }: PairFinding):
     : [span(share, 'dim'), span(`${words} unless the supply's protection trips`, 'dim')]
 }
 
-const brokenRule = (pair: PairFinding) => pair.rules.find((r) => !r.ok)
-
-function ruleAdvice(pair: PairFinding): string {
-  const broken = brokenRule(pair)
-  return broken ? ` – ${broken.advice}` : ''
-}
-
 /** What the condition on the screen goes by comes first; what an open tube does is left out where it has no room. */
 function differenceLine(state: State, shown: InstantShown, pair: PairFinding, width: number): Line {
   const d = pair.difference
-  const instantOf = ({ body, at }: Spot) => instantAt(shown, nodeMix(state.inspection.probe, body, at))
-  const now = span(`now ${signedKv(instantOf(pair.a) - instantOf(pair.b))}  `)
-  const nameplate = span(
-    `nameplate ${kv(d.nameplate)} rms`,
-    state.condition === 'nameplate' ? 'title' : 'dim',
-  )
+  const at = (spot: Spot) => instantAt(shown, nodeMix(state.inspection.probe, spot.body, spot.at))
+  const now = span(`now ${signedKv(at(pair.a) - at(pair.b))}  `)
+  const nameplate = span(`nameplate ${kv(d.nameplate)} rms`, 'dim')
+  const asLit = d.lit === undefined ? [] : [span(`lit ${kv(d.lit)} rms  `, 'dim')]
   const open = openText(pair)
   if (state.condition === 'broken')
     return [
-      span(`${kv(d.broken)} rms${open === '' ? '' : `, ${open}`}  `, 'title'),
+      span(`worst ${kv(d.broken)} rms${open === '' ? '' : `, ${open}`}  `, 'title'),
+      span(`with ${openTube(state) ?? 'none'} open `, 'dim'),
       now,
-      ...(d.lit === undefined ? [] : [span(`lit ${kv(d.lit)} rms  `, 'dim')]),
+      ...asLit,
       nameplate,
+    ]
+  if (state.condition === 'nameplate')
+    return [
+      span(`${kv(d.nameplate)} rms nameplate`, 'title'),
+      span(`, peak ${kv(d.nameplate * Math.SQRT2)}  `),
+      now,
+      ...asLit,
     ]
   const rms = d.lit === undefined ? [] : [span(`${kv(d.lit)} rms`, 'title')]
   const lit =
     d.lit === undefined
-      ? [span('not lit: judged on nameplate  ', 'watch')]
+      ? [span(`NOT LIT BUT LIVE: ${kv(d.nameplate)} rms on paper  `, 'watch')]
       : [
           ...rms,
           span(
-            ` (${kvFigure(d.litLow ?? d.lit)} to ${kvFigure(d.litHigh ?? d.lit)}), peak ${kv(d.litPeak ?? d.lit * Math.SQRT2)}  `,
+            ` (${kvFigure(d.litLow ?? d.lit)} to ${kvFigure(d.litHigh ?? d.lit)}, up to ${kvFigure(d.litPeak ?? d.lit * Math.SQRT2)} peak)  `,
           ),
         ]
-  const always = [...lit, now, nameplate]
+  const always = d.lit === undefined ? [...lit, now] : [...lit, now, nameplate]
   if (open === '') return always
   const governs = openTubeGoverns(pair)
   const broken = span(`broken ${kv(d.broken)} rms, ${open}`, governs ? 'title' : 'dim')
@@ -145,7 +157,7 @@ function potentialText(state: State, shown: InstantShown, foot: Foot): string {
   const mix = nodeMix(state.inspection.probe, foot.body, foot.at)
   const now = instantAt(shown, mix)
   const current = currentAt(state, foot)
-  return `${kv(rmsPotential(shown.fields, mix))} rms, ${signedKv(now)} now${current === undefined ? '' : `, ${ma(current)}`}`
+  return `${kv(rmsPotential(shown.fields, mix))} rms ${signedKv(now)} now${current === undefined ? '' : ` ${ma(current)}`}`
 }
 
 /** magnitude of the current of a lit tube at a path length, A */
@@ -167,10 +179,17 @@ function currentAt(state: State, { body, at }: Foot): number | undefined {
 const conditionText = (state: State): string =>
   state.condition === 'broken' ? `broken, ${openTube(state) ?? 'none'} open` : state.condition
 
-const groundLine = (state: State, foot: Foot): Line => [
-  span(potentialText(state, instantShown(state), foot)),
-  span(` to ground (${conditionText(state)})`, 'dim'),
-]
+function groundLine(state: State, foot: Foot): Line {
+  const shown = instantOf(state, [foot.body])
+  const mix = nodeMix(state.inspection.probe, foot.body, foot.at)
+  const current = currentAt(state, foot)
+  return [
+    ...(shown.onPaper ? [span('NOT LIT BUT LIVE: ', 'watch')] : []),
+    span(`${kv(rmsPotential(shown.fields, mix))} rms to ground, ${signedKv(instantAt(shown, mix))} now`),
+    span(shown.onPaper ? ' (on paper)' : ` (${conditionText(state)})`, 'dim'),
+    span(current === undefined ? '' : `; ${ma(current)} along the glass`),
+  ]
+}
 
 /** The marked place, while the cursor is on nothing. */
 const markedLines = (state: State, mark: Foot): Line[] => [
@@ -186,6 +205,8 @@ function footReadout(state: State): Line[] {
   const foot = footUnderCursor(state)
   const { units } = state.present.sign.layout
   if (!foot) {
+    if (state.cursor.on === 'pair' && state.filter !== '')
+      return [line(`No pair names "${state.filter}". Esc shows all pairs again.`, 'watch')]
     if (state.cursor.on === 'pair')
       return [line('No pair to show: nothing passes within reach of anything else.', 'dim')]
     return [

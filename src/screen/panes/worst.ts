@@ -1,7 +1,8 @@
 /** The worst list: ranked, live, scrolling so that the selected pair stays in view. */
 import type { PairFinding, Verdict } from '../../rules/findings.js'
+import { widestUnmet } from '../../rules/pair-rules.js'
 import type { Meaning } from '../../view/theme.js'
-import { kvFigure, lengthFigure, placeText, severityFigure } from '../../view/words.js'
+import { gapFigure, kvFigure, placeText, severityFigure } from '../../view/words.js'
 import { fitted, inverse, type Line, line, span } from '../lines.js'
 import { listedPairs, type State } from '../state.js'
 import { dots } from './words.js'
@@ -91,8 +92,8 @@ function rowSpans(
   const shown = shownDifference(pair, condition)
   const kv = kvFigure(shown) + (condition === 'lit' && pair.difference.lit === undefined ? 'n' : '')
   const figures = wide
-    ? `${lengthFigure(pair.gap, units).padStart(6)} ${kv.padStart(7)} ${severityFigure(pair.severity).padStart(7)}`
-    : `${lengthFigure(pair.gap, units).padStart(4)} ${kv.padStart(5)} ${severityFigure(pair.severity).padStart(4)}`
+    ? `${gapFigure(pair.gap, widestUnmet(pair)?.needs, units).padStart(6)} ${kv.padStart(7)} ${severityFigure(pair.severity).padStart(7)}`
+    : `${gapFigure(pair.gap, widestUnmet(pair)?.needs, units).padStart(4)} ${kv.padStart(5)} ${severityFigure(pair.severity).padStart(4)}`
   // a narrow list names the parts only: the places stand in the readout
   const names = wide
     ? `${placeText(pair.a, units, 'short')} – ${placeText(pair.b, units, 'short')}`
