@@ -182,8 +182,9 @@ describe('at 80x24', () => {
         const pair = findingInView(state)
         // where a tube open decides, its kV and the tube are in view, and other figures give way
         if (pair && openTubeGoverns(pair)) expect(second).toMatch(/broken \d+\.\d+ kV rms, \S.* open$/)
-        else expect(second).toMatch(/^\d+\.\d+ kV rms \(.*\), peak \d+\.\d+ kV {2}now [+-]?\d+\.\d+ kV/)
-        expect(third).toMatch(/^(needs \d+(\.\d+)? (mm|in)|gap is enough): /)
+        else
+          expect(second).toMatch(/^\d+\.\d+ kV rms \(.* to .*, up to \d+\.\d+ peak\) {2}now [+-]?\d+\.\d+ kV/)
+        expect(third).toMatch(/^(needs \d+(\.\d+)? (mm|in)|near its limit|gap is enough): /)
         expect(frame(80, 24, state.present.sign.wiring.circuits.length).map.height).toBeGreaterThanOrEqual(10)
       }
     },
@@ -206,7 +207,7 @@ describe('at 80x24', () => {
     s.keys('c')
     expect(paneText(s.state(), 'title')[0]).toContain(' NAMEPLATE ')
     expect(paneText(s.state(), 'worst')[0]).not.toContain('kVrms')
-    expect(paneText(s.state(), 'readout')[1]).toMatch(/nameplate \d+\.\d+ kV rms$/)
+    expect(paneText(s.state(), 'readout')[1]).toMatch(/^\d+\.\d+ kV rms nameplate, peak \d+\.\d+ kV {2}now /)
   })
 
   test('an edit says before and after in the message row', () => {
@@ -244,7 +245,8 @@ describe('at 80x24', () => {
     expect(paneText(s.state(), 'title')[0]).toContain('DARK')
     expect(text).toContain('NOT LIT')
     expect(text).toMatch(/dark first: |the whole string stays dark/)
-    expect(text).toContain('not lit: judged on nameplate')
+    // a dark string is still live
+    expect(text).toMatch(/NOT LIT BUT LIVE: [1-9]\d*\.\d+ kV rms on paper {2}now [+-]/)
     expect(paneText(s.state(), 'banners')[1]).toMatch(/^ FIX: S1 cannot light its whole string/)
     // the dark circuit counts among what is to fix
     const { pairs } = s.state().inspection
@@ -276,7 +278,9 @@ test('a marked place is told while the cursor is on nothing', () => {
   const name = inspection.context.bodies[mark.body.index]?.name
   const [first, second] = paneText(s.state(), 'readout')
   expect(first).toBe(`marked: ${name} at ${Math.round(mark.at * 1000)} mm`)
-  expect(second).toMatch(/^\d+\.\d+ kV rms, [+-]?\d+\.\d+ kV now.* to ground \(lit\)$/)
+  expect(second).toMatch(
+    /^\d+\.\d+ kV rms to ground, [+-]?\d+\.\d+ kV now \(lit\); \d+\.\d mA along the glass$/,
+  )
 })
 
 test('the cautions sheet begins with what the banner says', () => {

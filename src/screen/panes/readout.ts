@@ -108,14 +108,13 @@ function differenceLine(state: State, shown: InstantShown, pair: PairFinding, wi
   const nameplate = span(`nameplate ${kv(d.nameplate)} rms`, 'dim')
   const asLit = d.lit === undefined ? [] : [span(`lit ${kv(d.lit)} rms  `, 'dim')]
   const open = openText(pair)
-  if (state.condition === 'broken')
-    return [
-      span(`worst ${kv(d.broken)} rms${open === '' ? '' : `, ${open}`}  `, 'title'),
-      span(`with ${openTube(state) ?? 'none'} open `, 'dim'),
-      now,
-      ...asLit,
-      nameplate,
-    ]
+  if (state.condition === 'broken') {
+    const worst = span(`worst ${kv(d.broken)} rms${open === '' ? '' : `, ${open}`}  `, 'title')
+    const here = [worst, span(`with ${openTube(state) ?? 'none'} open `, 'dim'), now]
+    // what has no room is left out whole, never cut to half a figure
+    const forms = [[...here, ...asLit, nameplate], [...here, nameplate], here]
+    return forms.find((form) => lineWidth(form) <= width) ?? here
+  }
   if (state.condition === 'nameplate')
     return [
       span(`${kv(d.nameplate)} rms nameplate`, 'title'),
