@@ -1,0 +1,85 @@
+/**
+ * All wirings of a sign, tube after tube from terminal 1 on. A beginning that is already worse than the worst of the
+ * pool is left with all that could follow (branch and bound); without the bound every wiring is scored.
+ */
+import type { Judge } from './judge.js'
+import type { Model } from './model.js'
+import type { Pool } from './pool.js'
+import { compareScores } from './score.js'
+
+export interface BranchProgress {
+  readonly share: number
+  /** complete wirings scored, and beginnings looked at */
+  readonly judged: number
+  readonly nodes: number
+  /** every wiring was scored or left with a bound */
+  readonly complete: boolean
+}
+
+/** Number of wirings of a sign: n! · 2ⁿ for each circuit. */
+export const wiringCount = ({ circuits }: Pick<Model, 'circuits'>): number =>
+  circuits.reduce((all, tubes) => tubes.reduce((count, _, k) => count * 2 * (k + 1), all), 1)
+
+/** Yields between parts of the tree; `mostNodes` ends it. */
+export function* branches(
+  model: Model,
+  judge: Judge,
+  pool: Pool,
+  options: { readonly bound: boolean; readonly mostNodes: number },
+): Generator<BranchProgress, BranchProgress> {
+  const free = model.circuits.map((tubes) => [...tubes])
+  const circuitAt = model.circuits.flatMap((tubes, c) => tubes.map(() => c))
+  const codes = new Int32Array(circuitAt.length)
+  let judged = 0
+  let nodes = 0
+  judge.restart()
+
+  /** tries a tube at this position, and everything behind it */
+  const enter = (at: number, tube: number, code: number, visit: () => void): void => {
+    const mine = free[circuitAt[at]!]!
+    nodes++
+    codes[at] = code
+    const allowed = judge.place(code)
+    const bar = options.bound ? pool.bar() : undefined
+    if (allowed && (bar === undefined || compareScores(judge.score(), bar) < 0)) {
+      const where = mine.indexOf(tube)
+      mine.splice(where, 1)
+      visit()
+      mine.splice(where, 0, tube)
+    }
+    judge.takeBack()
+  }
+  const walk = (at: number): void => {
+    if (nodes > options.mostNodes) return
+    if (at === codes.length) {
+      judged++
+      pool.offer(codes, judge.score())
+      return
+    }
+    for (const tube of [...free[circuitAt[at]!]!])
+      for (const code of [2 * tube, 2 * tube + 1]) enter(at, tube, code, () => walk(at + 1))
+  }
+
+  // the first two tubes here, so that there is a place to stop at
+  const starts = startsOf(circuitAt, free)
+  for (const [i, start] of starts.entries()) {
+    const [first, second] = start
+    if (first === undefined || nodes > options.mostNodes) break
+    enter(0, first >> 1, first, () => {
+      if (second === undefined) walk(1)
+      else enter(1, second >> 1, second, () => walk(2))
+    })
+    yield { share: (i + 1) / starts.length, judged, nodes, complete: false }
+  }
+  return { share: 1, judged, nodes, complete: nodes <= options.mostNodes }
+}
+
+/** Every way to place the first tube, and the second one where there is one. */
+function startsOf(circuitAt: readonly number[], free: readonly (readonly number[])[]): number[][] {
+  const both = (tubes: readonly number[]) => tubes.flatMap((t) => [2 * t, 2 * t + 1])
+  return both(free[circuitAt[0]!]!).flatMap((first) => {
+    if (circuitAt.length < 2) return [[first]]
+    const rest = free[circuitAt[1]!]!.filter((t) => t !== first >> 1)
+    return both(rest).map((second) => [first, second])
+  })
+}

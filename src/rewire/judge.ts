@@ -1,0 +1,135 @@
+/**
+ * The cheap judge: takes a sign's tubes one after the other and says how bad what is placed so far is. Every figure of
+ * the score only grows with further tubes, so what is placed is a bound for all that can follow.
+ */
+import type { Limit } from './limits.js'
+import { severityAt } from './limits.js'
+import type { Model, ModelLead } from './model.js'
+import { compared, type Score } from './score.js'
+
+export interface Judge {
+  /** back to nothing placed */
+  readonly restart: () => void
+  /** places the next tube of the circuit at hand; false where a lead for it is forbidden. Undone by `takeBack`. */
+  readonly place: (code: number) => boolean
+  readonly takeBack: () => void
+  /** of what is placed: changed by the next call */
+  readonly score: () => Score
+}
+
+/** What was true before a tube was placed. */
+interface Mark {
+  fix: number
+  changed: number
+  lead: number
+  potential: number
+  leads: number
+  readonly severities: Float64Array
+}
+
+export function cheapJudge(model: Model): Judge {
+  const { circuits, drop, top, tubeIds } = model
+  const codes = 2 * tubeIds.length
+  const count = circuits.reduce((sum, tubes) => sum + tubes.length, 0)
+  // circuit and place in its string of each position of the whole sequence
+  const circuitAt = circuits.flatMap((tubes, c) => tubes.map(() => c))
+  const placeAt = circuits.flatMap((tubes) => tubes.map((_, k) => k))
+  const placed = new Int32Array(count)
+  const entered = new Float64Array(count)
+  const leads: ModelLead[] = []
+  const leadPotential = new Float64Array(count + circuits.length)
+  const marks = Array.from(
+    { length: count + 1 },
+    (): Mark => ({
+      fix: 0,
+      changed: 0,
+      lead: 0,
+      potential: 0,
+      leads: 0,
+      severities: new Float64Array(compared),
+    }),
+  )
+  let at = 0
+  let now = marks[0]!
+  restart()
+  return { restart, place, takeBack, score }
+
+  function restart(): void {
+    at = 0
+    now = marks[0]!
+    now.severities.fill(0)
+    now.fix = model.steadyFix
+    for (const severity of model.steady) insert(severity)
+  }
+
+  function insert(severity: number): void {
+    const worst = now.severities
+    if (severity <= worst[compared - 1]!) return
+    let k = compared - 1
+    while (k > 0 && worst[k - 1]! < severity) {
+      worst[k] = worst[k - 1]!
+      k--
+    }
+    worst[k] = severity
+  }
+
+  function count1(limits: readonly Limit[] | undefined, va: number, vb: number): void {
+    if (limits === undefined) return
+    for (let i = 0; i < limits.length; i++) {
+      const limit = limits[i]!
+      const severity = severityAt(limit, va, vb)
+      if (limit.broken || severity > 1) now.fix++
+      insert(severity)
+    }
+  }
+
+  function addLead(from: number, to: number, potential: number): boolean {
+    const lead = model.lead(from, to)
+    if (lead.forbidden) return false
+    now.lead += lead.length
+    if (lead.changed) now.changed += 2
+    count1(lead.alone, potential, 0)
+    for (let k = 0; k < at; k++) count1(lead.tubes[placed[k]!], potential, entered[k]!)
+    for (let k = 0; k < now.leads; k++) count1(model.crossing(leads[k]!, lead), leadPotential[k]!, potential)
+    leads[now.leads] = lead
+    leadPotential[now.leads] = potential
+    now.leads++
+    return true
+  }
+
+  function place(code: number): boolean {
+    const c = circuitAt[at]!
+    const k = placeAt[at]!
+    const before = now
+    now = marks[at + 1]!
+    now.severities.set(before.severities)
+    now.fix = before.fix
+    now.changed = before.changed
+    now.lead = before.lead
+    now.leads = before.leads
+    const potential = k === 0 ? top[c]! : before.potential
+    const terminal = codes + 2 * c
+    const last = placed[at - 1]!
+    // the lead in front of the tube joins the end that the loop leaves to the one that it enters
+    const ok = addLead(k === 0 ? terminal : last ^ 1, code, potential)
+    placed[at] = code
+    entered[at] = potential
+    at++
+    if (!ok) return false
+    count1(model.metal[code], potential, 0)
+    for (let j = 0; j < at - 1; j++) count1(model.pairs[code * codes + placed[j]!], potential, entered[j]!)
+    for (let j = 0; j < now.leads; j++) count1(leads[j]!.tubes[code], leadPotential[j]!, potential)
+    now.potential = potential - drop[code >> 1]!
+    return k < circuits[c]!.length - 1 || addLead(code ^ 1, terminal + 1, now.potential)
+  }
+
+  function takeBack(): void {
+    at--
+    now = marks[at]!
+  }
+
+  function score(): Score {
+    const { fix, severities, changed, lead } = now
+    return { unfit: 0, fix, severities, changed, lead }
+  }
+}
