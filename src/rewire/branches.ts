@@ -30,9 +30,18 @@ export function* branches(
   const free = model.circuits.map((tubes) => [...tubes])
   const circuitAt = model.circuits.flatMap((tubes, c) => tubes.map(() => c))
   const codes = new Int32Array(circuitAt.length)
+  // each tube that is not placed yet will be entered by a lead, which is at least so long
+  const least = options.bound ? model.leastLeads() : new Float64Array(model.tubeIds.length)
+  let toCome = model.circuits.flat().reduce((sum, t) => sum + least[t]!, 0)
   let judged = 0
   let nodes = 0
   judge.restart()
+  const hopeless = (): boolean => {
+    const bar = options.bound ? pool.bar() : undefined
+    if (bar === undefined) return false
+    const score = judge.score()
+    return compareScores({ ...score, lead: score.lead + toCome }, bar) >= 0
+  }
 
   /** tries a tube at this position, and everything behind it */
   const enter = (at: number, tube: number, code: number, visit: () => void): void => {
@@ -40,13 +49,14 @@ export function* branches(
     nodes++
     codes[at] = code
     const allowed = judge.place(code)
-    const bar = options.bound ? pool.bar() : undefined
-    if (allowed && (bar === undefined || compareScores(judge.score(), bar) < 0)) {
+    toCome -= least[tube]!
+    if (allowed && !hopeless()) {
       const where = mine.indexOf(tube)
       mine.splice(where, 1)
       visit()
       mine.splice(where, 0, tube)
     }
+    toCome += least[tube]!
     judge.takeBack()
   }
   const walk = (at: number): void => {

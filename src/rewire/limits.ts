@@ -12,20 +12,23 @@ import type { Supply } from '../layout/layout.js'
 import { noLoadVoltage } from '../network/supplies.js'
 import { type ChosenRule, type PlaceVoltage, ruleFindings, severityCap } from '../rules/pair-rules.js'
 import { bodyOf, circuitsOf, type Parts, surface } from '../rules/passing.js'
+import { unstrained } from './score.js'
 
-/** One run between two parts. Severity = max(steady, max over k of per[k] · |(Va + atA[k]) − (Vb + atB[k])|). */
+/**
+ * One run between two parts. Severity = max(steady, max over k of per[k] · |Va − Vb + at[k]|); between two supplies
+ * per[k] · √((Va + at[k])² + (Vb + atB[k])²).
+ */
 export interface Limit {
-  /** potentials at the samples against the entering end (tubes) or the whole part (leads), V */
-  readonly atA: Float64Array
-  readonly atB: Float64Array
+  /** potential at the sample on a less that on b, against the entering end (tubes) or the whole part (leads), V */
+  readonly at: Float64Array
   /** severity per volt */
   readonly per: Float64Array
   /** what no wiring changes: an open tube */
   readonly steady: number
   /** a fixed distance is broken: to fix whatever the voltage */
   readonly broken: boolean
-  /** the parts belong to two supplies: √(Va² + Vb²) instead of the difference */
-  readonly apart: boolean
+  /** the parts belong to two supplies: `at` is of a alone, this of b */
+  readonly atB?: Float64Array
 }
 
 /** What is known of each circuit before any wiring is judged. */
@@ -116,16 +119,19 @@ function startAt({ parts, altitude }: LimitContext, run: CloseRun, i: number): G
 const tried = 64
 
 /**
- * The limit of a run with the potentials of its samples filled in; `most` V bounds the offset between the two parts.
- * Only the samples that are worst for some offset are kept.
+ * The limit of a run with the potentials of its samples filled in; `most` V bounds the potentials of the two parts.
+ * Only the samples that are worst for some offset are kept; nothing at all of a run that cannot strain.
  */
 export function limitOf(
   { per, steady, broken, apart }: RunLimit,
   atA: Float64Array,
   atB: Float64Array,
   most: number,
-): Limit {
-  const whole: Limit = { atA, atB, per, steady, broken, apart }
+): readonly Limit[] {
+  if (!broken && steady < unstrained && per.every((c) => c * 2 * most < unstrained)) return []
+  const whole: Limit = apart
+    ? { at: atA, atB, per, steady, broken }
+    : { at: atA.map((v, k) => v - atB[k]!), per, steady, broken }
   const kept = new Set<number>()
   for (let k = 0; k <= tried; k++) {
     const x = most * ((2 * k) / tried - 1)
@@ -137,7 +143,7 @@ export function limitOf(
       [...kept].sort((p, q) => p - q),
       (i) => of[i]!,
     )
-  return { atA: only(atA), atB: only(atB), per: only(per), steady, broken, apart }
+  return [{ ...whole, at: only(whole.at), per: only(per), ...(whole.atB && { atB: only(whole.atB) }) }]
 }
 
 function worstSample(limit: Limit, va: number, vb: number): number {
@@ -153,18 +159,24 @@ function worstSample(limit: Limit, va: number, vb: number): number {
   return worst
 }
 
-const sampleSeverity = ({ atA, atB, per, apart }: Limit, k: number, va: number, vb: number): number => {
-  const a = va + atA[k]!
+function sampleSeverity({ at, atB, per }: Limit, k: number, va: number, vb: number): number {
+  if (atB === undefined) return per[k]! * Math.abs(va - vb + at[k]!)
+  const a = va + at[k]!
   const b = vb + atB[k]!
-  return per[k]! * (apart ? Math.sqrt(a * a + b * b) : Math.abs(a - b))
+  return per[k]! * Math.sqrt(a * a + b * b)
 }
 
 /** Severity of the run with the parts at these potentials, V. */
 export function severityAt(limit: Limit, va: number, vb: number): number {
-  let most = limit.steady
-  for (let k = 0; k < limit.per.length; k++) {
+  const { per, steady } = limit
+  let most = steady
+  for (let k = 0; k < per.length; k++) {
     const here = sampleSeverity(limit, k, va, vb)
     if (here > most) most = here
   }
   return most
 }
+
+/** The same run seen from the other part. */
+export const swappedLimit = (limit: Limit): Limit =>
+  limit.atB ? { ...limit, at: limit.atB, atB: limit.at } : { ...limit, at: limit.at.map((v) => -v) }

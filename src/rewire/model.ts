@@ -6,10 +6,10 @@
  * placed tube is coded 2t, or 2t + 1 when it is entered at b. Potentials: the lit drops of the file's wiring one after
  * the other from terminal 1 on, without phase and stray current; V rms.
  */
-import { leadLeadRuns, leadRuns, withLeadIndex } from '../geometry/close-runs.js'
+import { defaultReach, leadLeadRuns, leadRuns, withLeadIndex } from '../geometry/close-runs.js'
 import type { LeadBody } from '../geometry/conductors.js'
 import { leadBody } from '../geometry/leads.js'
-import type { BodyRef, CloseRun } from '../geometry/runs.js'
+import type { BodyRef } from '../geometry/runs.js'
 import { leadSheetRuns } from '../geometry/sheet-runs.js'
 import type { Inspection, Prepared, Solved } from '../inspection.js'
 import type { EndName, Wiring } from '../layout/layout.js'
@@ -17,8 +17,9 @@ import { columnLaw } from '../network/columns.js'
 import { nodeMix, rmsDifference } from '../network/potentials.js'
 import { chosenRules } from '../rules/pair-rules.js'
 import { circuitOf, type Parts } from '../rules/passing.js'
+import { partBits } from '../rules/rule-set.js'
 import { litUpper } from '../rules/voltages.js'
-import { enteringEnd, leavingEnd, wiringChange } from '../wiring/edits.js'
+import { wiringChange } from '../wiring/edits.js'
 import {
   type CircuitFigures,
   type Limit,
@@ -26,10 +27,13 @@ import {
   limitOf,
   runLimit,
   severityAt,
+  swappedLimit,
 } from './limits.js'
 
 export interface ModelLead {
   readonly index: number
+  /** m, clear gap up to which it is looked at */
+  readonly reach: number
   /** m */
   readonly length: number
   /** may not be used: longer than the supply's leads allow, or against a joint that must stay */
@@ -57,6 +61,8 @@ export interface Model {
   readonly metal: readonly (readonly Limit[])[]
   readonly pairs: readonly (readonly Limit[] | undefined)[]
   readonly lead: (from: number, to: number) => ModelLead
+  /** m, the shortest lead that can end at a tube, of each tube; known to proofs only: it looks at every lead */
+  readonly leastLeads: () => Float64Array
   readonly crossing: (one: ModelLead, other: ModelLead) => readonly Limit[]
 }
 
@@ -64,6 +70,9 @@ export interface Keep {
   /** joints that must stay, each by its two ends */
   readonly keep: readonly (readonly [EndName, EndName])[]
 }
+
+/** where no rule speaks of a lead, only a discharge counts: wider gaps than this start none at these voltages, m (ours) */
+const dischargeReach = 0.03
 
 const none: readonly Limit[] = []
 
@@ -112,7 +121,7 @@ export function searchModel(prepared: Prepared, solved: Solved, found: Inspectio
   const still = (places: Float64Array): Float64Array => new Float64Array(places.length)
   const fixed = fixedLimits(prepared, contextOf([], []), along, still, drop, most)
 
-  const leads = new Map<number, ModelLead>()
+  const leads: (ModelLead | undefined)[] = new Array(names.length ** 2)
   const ends: (readonly [number, number])[] = []
   const crossings: (readonly Limit[])[][] = []
   const joined = joinedEnds(wiring, names)
@@ -127,12 +136,21 @@ export function searchModel(prepared: Prepared, solved: Solved, found: Inspectio
   )
   const limits = [...figures.map(({ supply }) => supply.maxLead)]
 
+  const reachOf = (feed: boolean): number => {
+    const bits = partBits.any | partBits.lead | partBits.bare | (feed ? partBits.feed : partBits.jumper)
+    return chosen.some(({ rule }) => rule.sides.some((side) => (side & bits) !== 0))
+      ? defaultReach
+      : dischargeReach
+  }
+
   const newLead = (from: number, to: number): ModelLead => {
     const between = [names[from]!, names[to]!] as const
     const body = leadBody(layout, between)
     const context = contextOf([body], [[from, to]])
+    const feed = isFeed([from, to])
+    const reach = reachOf(feed)
     const runs = withLeadIndex(
-      [...leadRuns(body, prepared.bodies, layout), ...leadSheetRuns(body, prepared.sheets)],
+      [...leadRuns(body, prepared.bodies, layout, reach), ...leadSheetRuns(body, prepared.sheets, reach)],
       0,
     )
     const alone: Limit[] = []
@@ -144,16 +162,15 @@ export function searchModel(prepared: Prepared, solved: Solved, found: Inspectio
         // with itself there is no difference
         const own = run.a.kind === 'lead' && run.b.kind === 'lead'
         const silent = own ? { ...limit, per: still(limit.per), steady: 0 } : limit
-        alone.push(limitOf(silent, still(run.atA), still(run.atB), most))
+        alone.push(...limitOf(silent, still(run.atA), still(run.atB), most))
         continue
       }
       const places = run.a.kind === 'lead' ? run.atB : run.atA
       for (const code of [2 * other.index, 2 * other.index + 1]) {
         const there = limitOf(limit, still(places), along(code, places), most)
-        withTubes[code] = [...(withTubes[code] ?? []), there]
+        if (there.length > 0) withTubes[code] = [...(withTubes[code] ?? []), ...there]
       }
     }
-    const feed = isFeed([from, to])
     const longest = limits[circuitOfEnd(from)]
     const against = [between, [between[1], between[0]] as const].some(
       ([end, other]) => kept.has(end) && kept.get(end) !== other,
@@ -162,6 +179,7 @@ export function searchModel(prepared: Prepared, solved: Solved, found: Inspectio
     ends.push([from, to])
     return {
       index,
+      reach,
       length: body.line.length,
       forbidden:
         against ||
@@ -175,6 +193,26 @@ export function searchModel(prepared: Prepared, solved: Solved, found: Inspectio
   }
   const returns = new Set(wiring.circuits.flatMap((c) => c.midpointReturn ?? []))
 
+  const lead = (from: number, to: number): ModelLead => {
+    const key = Math.min(from, to) * names.length + Math.max(from, to)
+    const known = leads[key]
+    if (known) return known
+    const made = newLead(Math.min(from, to), Math.max(from, to))
+    leads[key] = made
+    crossings.push([])
+    return made
+  }
+  const leastLeads = (): Float64Array =>
+    Float64Array.from(tubes, (_, t) => {
+      const c = found.context.circuitOfTube[t]!
+      const terminals = [2 * tubes.length + 2 * c, 2 * tubes.length + 2 * c + 1]
+      const others = (circuits[c] ?? []).flatMap((u) => (u === t ? [] : [2 * u, 2 * u + 1]))
+      const lengths = [...others, ...terminals].flatMap((end) =>
+        [2 * t, 2 * t + 1].map((own) => lead(end, own)).flatMap((one) => (one.forbidden ? [] : [one.length])),
+      )
+      return lengths.length === 0 ? 0 : Math.min(...lengths)
+    })
+
   return {
     circuits,
     tubeIds: layout.tubes.map(({ id }) => id),
@@ -183,23 +221,16 @@ export function searchModel(prepared: Prepared, solved: Solved, found: Inspectio
       supply.grounding === 'one-end' ? needed : needed / 2,
     ),
     ...fixed,
-    lead: (from, to) => {
-      const key = Math.min(from, to) * names.length + Math.max(from, to)
-      const known = leads.get(key)
-      if (known) return known
-      const made = newLead(Math.min(from, to), Math.max(from, to))
-      leads.set(key, made)
-      crossings.push([])
-      return made
-    },
+    lead,
+    leastLeads,
     crossing: (one, other) => {
       const [a, b] = one.index < other.index ? [one, other] : [other, one]
       const row = crossings[a.index]!
       const known = row[b.index]
       if (known) return known
       const context = contextOf([a.body, b.body], [ends[a.index]!, ends[b.index]!])
-      const found = withLeadIndex(leadLeadRuns(a.body, b.body), 0, 1).map((run) =>
-        limitOf(runLimit(context, run), still(run.atA), still(run.atB), most),
+      const found = withLeadIndex(leadLeadRuns(a.body, b.body, Math.min(a.reach, b.reach)), 0, 1).flatMap(
+        (run) => limitOf(runLimit(context, run), still(run.atA), still(run.atB), most),
       )
       row[b.index] = found.length === 0 ? none : found
       return row[b.index]!
@@ -279,9 +310,9 @@ function fixedLimits(
   const metal: Limit[][] = Array.from({ length: codes }, () => [])
   const pairs: (Limit[] | undefined)[] = new Array(codes * codes)
   const tubeOf = (ref: BodyRef) => (ref.kind === 'fixed' && ref.index < tubes.length ? ref.index : -1)
-  const note = (code: number, other: number, limit: Limit) => {
+  const note = (code: number, other: number, limits: readonly Limit[]) => {
     const at = code * codes + other
-    pairs[at] = [...(pairs[at] ?? []), limit]
+    if (limits.length > 0) pairs[at] = [...(pairs[at] ?? []), ...limits]
   }
   for (const run of runs) {
     const [t, u] = [tubeOf(run.a), tubeOf(run.b)]
@@ -290,29 +321,23 @@ function fixedLimits(
       continue
     const limit = runLimit(context, run)
     if (t === u) {
-      const own = limitOf(limit, along(2 * t, run.atA), along(2 * t, run.atB), drop[t]!)
-      steady.push(severityAt(own, 0, 0))
-      if (own.broken || steady.at(-1)! > 1) steadyFix++
+      for (const own of limitOf(limit, along(2 * t, run.atA), along(2 * t, run.atB), drop[t]!)) {
+        const severity = severityAt(own, 0, 0)
+        steady.push(severity)
+        if (own.broken || severity > 1) steadyFix++
+      }
     } else if (u < 0) {
       for (const code of [2 * t, 2 * t + 1])
-        metal[code]!.push(limitOf(limit, along(code, run.atA), still(run.atB), most))
+        metal[code]!.push(...limitOf(limit, along(code, run.atA), still(run.atB), most))
     } else
-      eachDirection(run, t, u, (code, other) => {
-        const there = limitOf(limit, along(code, run.atA), along(other, run.atB), most)
-        note(code, other, there)
-        note(other, code, { ...there, atA: there.atB, atB: there.atA })
-      })
+      for (const code of [2 * t, 2 * t + 1])
+        for (const other of [2 * u, 2 * u + 1]) {
+          const there = limitOf(limit, along(code, run.atA), along(other, run.atB), most)
+          note(code, other, there)
+          note(other, code, there.map(swappedLimit))
+        }
   }
   return { steady, steadyFix, metal, pairs }
-}
-
-function eachDirection(
-  _: CloseRun,
-  t: number,
-  u: number,
-  visit: (code: number, other: number) => void,
-): void {
-  for (const code of [2 * t, 2 * t + 1]) for (const other of [2 * u, 2 * u + 1]) visit(code, other)
 }
 
 /** The wiring of coded strings, with all else as the circuits of `base` have it. */
@@ -331,5 +356,3 @@ export const codesOf = (wiring: Wiring, tubeIds: readonly string[]): number[][] 
   wiring.circuits.map(({ string }) =>
     string.map(({ tube, reversed }) => 2 * tubeIds.indexOf(tube) + (reversed ? 1 : 0)),
   )
-
-export { enteringEnd, leavingEnd }

@@ -8,7 +8,7 @@ export interface Candidate {
 }
 
 /** how many the full solution may look at */
-export const poolSize = 24
+export const poolSize = 12
 /** with few changes, so that there is also something less thorough to propose */
 const perChange = 3
 const fewChanges = 8

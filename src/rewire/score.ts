@@ -4,6 +4,8 @@
 export const compared = 8
 /** severities that differ by less are the same (ours: it is what lists show) */
 const steps = 100
+/** what strains its gap by less than this does not count (ours) */
+export const unstrained = 0.1
 /** from the second worst place on, whatever strains its gap by less than half counts as half (ours) */
 const restful = 50
 
@@ -38,7 +40,7 @@ export function compareSeverities(a: ArrayLike<number>, b: ArrayLike<number>): n
 
 const levelOf = (severities: ArrayLike<number>, k: number): number => {
   const level = Math.round(steps * (severities[k] ?? 0))
-  return k === 0 ? level : Math.max(restful, level)
+  return Math.max(k === 0 ? steps * unstrained : restful, level)
 }
 
 /** No worse in anything that a technician would choose by: then the other one is no proposal beside it. */
