@@ -1,5 +1,5 @@
 /**
- * All wirings of a sign, tube after tube from terminal 1 on. A beginning that is already worse than the worst of the
+ * All wirings of a sign, tube after tube from terminal 1 on. A beginning that is already worse than the bar of the
  * pool is left with all that could follow (branch and bound); without the bound every wiring is scored.
  */
 import type { Judge } from './judge.js'
@@ -30,17 +30,30 @@ export function* branches(
   const free = model.circuits.map((tubes) => [...tubes])
   const circuitAt = model.circuits.flatMap((tubes, c) => tubes.map(() => c))
   const codes = new Int32Array(circuitAt.length)
+  // of each position: the jumpers that come behind it
+  const jumpersBehind = circuitAt.map(
+    (_, at) => circuitAt.slice(at + 1).filter((c, k) => circuitAt[at + k] === c).length,
+  )
   // each tube that is not placed yet will be entered by a lead, which is at least so long
   const least = options.bound ? model.leastLeads() : new Float64Array(model.tubeIds.length)
   let toCome = model.circuits.flat().reduce((sum, t) => sum + least[t]!, 0)
   let judged = 0
   let nodes = 0
   judge.restart()
-  const hopeless = (): boolean => {
+  const isFree = new Uint8Array(2 * model.tubeIds.length).fill(1)
+  // jumpers still to be put on, less those of the file that can still be kept: so many more will change
+  const toChange = (at: number): number => {
+    let most = 0
+    for (const [a, b] of model.jumpers) if (isFree[a] === 1 && isFree[b] === 1) most++
+    const wanted = jumpersBehind[at]!
+    return 2 * Math.max(0, wanted - most)
+  }
+  const hopeless = (at: number): boolean => {
     const bar = options.bound ? pool.bar() : undefined
     if (bar === undefined) return false
-    const score = judge.score()
-    return compareScores({ ...score, lead: score.lead + toCome }, bar) >= 0
+    const { unfit, fix, severities, changed, lead } = judge.bound()
+    const least = { unfit, fix, severities, changed: changed + toChange(at), lead: lead + toCome }
+    return compareScores(least, bar) >= 0
   }
 
   /** tries a tube at this position, and everything behind it */
@@ -50,12 +63,18 @@ export function* branches(
     codes[at] = code
     const allowed = judge.place(code)
     toCome -= least[tube]!
-    if (allowed && !hopeless()) {
+    // the end that was left is joined now, the one that was entered too; the other one waits for the next tube
+    const left = at > 0 && circuitAt[at - 1] === circuitAt[at] ? codes[at - 1]! ^ 1 : -1
+    if (left >= 0) isFree[left] = 0
+    isFree[code] = 0
+    if (allowed && !hopeless(at)) {
       const where = mine.indexOf(tube)
       mine.splice(where, 1)
       visit()
       mine.splice(where, 0, tube)
     }
+    if (left >= 0) isFree[left] = 1
+    isFree[code] = 1
     toCome += least[tube]!
     judge.takeBack()
   }

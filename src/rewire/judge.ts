@@ -15,6 +15,11 @@ export interface Judge {
   readonly takeBack: () => void
   /** of what is placed: changed by the next call */
   readonly score: () => Score
+  /**
+   * What every wiring that begins so has at least: the rest of the string lies at or below the potential that the
+   * beginning ends with, so a tube still to come strains against one that is placed at least as much as it would here.
+   */
+  readonly bound: () => Score
 }
 
 /** What was true before a tube was placed. */
@@ -49,21 +54,24 @@ export function cheapJudge(model: Model): Judge {
       severities: new Float64Array(compared),
     }),
   )
+  const isPlaced = new Uint8Array(tubeIds.length)
+  const ahead = new Float64Array(compared)
+  const neighbours = neighbourTubes(model)
   let at = 0
   let now = marks[0]!
   restart()
-  return { restart, place, takeBack, score }
+  return { restart, place, takeBack, score, bound }
 
   function restart(): void {
     at = 0
+    isPlaced.fill(0)
     now = marks[0]!
     now.severities.fill(0)
     now.fix = model.steadyFix
-    for (const severity of model.steady) insert(severity)
+    for (const severity of model.steady) insert(now.severities, severity)
   }
 
-  function insert(severity: number): void {
-    const worst = now.severities
+  function insert(worst: Float64Array, severity: number): void {
     if (severity <= worst[compared - 1]!) return
     let k = compared - 1
     while (k > 0 && worst[k - 1]! < severity) {
@@ -79,7 +87,7 @@ export function cheapJudge(model: Model): Judge {
       const limit = limits[i]!
       const severity = severityAt(limit, va, vb)
       if (limit.broken || severity > 1) now.fix++
-      insert(severity)
+      insert(now.severities, severity)
     }
   }
 
@@ -113,6 +121,7 @@ export function cheapJudge(model: Model): Judge {
     // the lead in front of the tube joins the end that the loop leaves to the one that it enters
     const ok = addLead(k === 0 ? terminal : last ^ 1, code, potential)
     placed[at] = code
+    isPlaced[code >> 1] = 1
     entered[at] = potential
     at++
     if (!ok) return false
@@ -125,6 +134,7 @@ export function cheapJudge(model: Model): Judge {
 
   function takeBack(): void {
     at--
+    isPlaced[placed[at]! >> 1] = 0
     now = marks[at]!
   }
 
@@ -132,4 +142,42 @@ export function cheapJudge(model: Model): Judge {
     const { fix, severities, changed, lead } = now
     return { unfit: 0, fix, severities, changed, lead }
   }
+
+  function bound(): Score {
+    ahead.set(now.severities)
+    let fix = now.fix
+    const c = circuitAt[at - 1]
+    if (c !== undefined && circuitAt[at] === c)
+      for (let k = at - 1; k >= 0 && circuitAt[k] === c; k--) fix += aheadOf(placed[k]!, entered[k]!)
+    return { unfit: 0, fix, severities: ahead, changed: now.changed, lead: now.lead }
+  }
+
+  /** Puts the least severities with tubes still to come into `ahead`; how many of them are to fix. */
+  function aheadOf(code: number, potential: number): number {
+    let fix = 0
+    for (const u of neighbours[code >> 1]!) {
+      if (isPlaced[u] === 1) continue
+      const one = model.pairs[code * codes + 2 * u]!
+      const other = model.pairs[code * codes + 2 * u + 1]!
+      for (let i = 0; i < one.length; i++) {
+        const severity = Math.min(
+          severityAt(one[i]!, potential, now.potential),
+          severityAt(other[i]!, potential, now.potential),
+        )
+        if (one[i]!.broken || severity > 1) fix++
+        insert(ahead, severity)
+      }
+    }
+    return fix
+  }
+}
+
+/** Of each tube, the others of its circuit that it passes. */
+function neighbourTubes({ circuits, pairs, tubeIds }: Model): number[][] {
+  const codes = 2 * tubeIds.length
+  const near: number[][] = tubeIds.map(() => [])
+  for (const tubes of circuits)
+    for (const t of tubes)
+      near[t] = tubes.filter((u) => u !== t && pairs[2 * t * codes + 2 * u] !== undefined)
+  return near
 }

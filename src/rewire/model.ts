@@ -60,6 +60,8 @@ export interface Model {
   /** by the code of a placed tube: with metal; and with another placed tube (code · codes + code) */
   readonly metal: readonly (readonly Limit[])[]
   readonly pairs: readonly (readonly Limit[] | undefined)[]
+  /** jumpers of the file's wiring, by their two ends */
+  readonly jumpers: readonly (readonly [number, number])[]
   readonly lead: (from: number, to: number) => ModelLead
   /** m, the shortest lead that can end at a tube, of each tube; known to proofs only: it looks at every lead */
   readonly leastLeads: () => Float64Array
@@ -221,6 +223,7 @@ export function searchModel(prepared: Prepared, solved: Solved, found: Inspectio
       supply.grounding === 'one-end' ? needed : needed / 2,
     ),
     ...fixed,
+    jumpers: [...joined].filter(([a, b]) => a < b && b < 2 * tubes.length),
     lead,
     leastLeads,
     crossing: (one, other) => {

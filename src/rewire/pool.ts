@@ -9,13 +9,15 @@ export interface Candidate {
 
 /** how many the full solution may look at */
 export const poolSize = 12
+/** so many of the best are what a proof is about: the first one, and what the full solution may put before it */
+export const proven = 4
 /** with few changes, so that there is also something less thorough to propose */
 const perChange = 3
 const fewChanges = 8
 
 export interface Pool {
   readonly offer: (codes: ArrayLike<number>, score: Score) => void
-  /** worse than this is of no use to the list of the best */
+  /** what is worse than this need not be looked at by a proof */
   readonly bar: () => Score | undefined
   /** the best ones, then those with few changes that are not among them */
   readonly candidates: () => Candidate[]
@@ -32,7 +34,7 @@ export function candidatePool(): Pool {
       few.set(score.changed, list)
       put(list, perChange, codes, score)
     },
-    bar: () => (best.length < poolSize ? undefined : best.at(-1)!.score),
+    bar: () => best[proven - 1]?.score,
     candidates: () => {
       const seen = new Set(best.map(nameOf))
       const others = [...few.entries()].sort(([a], [b]) => a - b).flatMap(([, list]) => list)

@@ -6,7 +6,7 @@ import { branches, wiringCount } from '../../src/rewire/branches.js'
 import { moveCount, moved } from '../../src/rewire/descent.js'
 import { cheapJudge } from '../../src/rewire/judge.js'
 import { type Model, searchModel, wiringOf } from '../../src/rewire/model.js'
-import { candidatePool, type Pool } from '../../src/rewire/pool.js'
+import { candidatePool, type Pool, proven } from '../../src/rewire/pool.js'
 import { scoreOf } from '../../src/rewire/rewire.js'
 import { compareScores, type Score } from '../../src/rewire/score.js'
 import { resolveRules } from '../../src/rules/resolve.js'
@@ -110,7 +110,7 @@ describe('branch and bound', () => {
     const list = ({ pool }: { pool: Pool }) =>
       pool
         .candidates()
-        .slice(0, 24)
+        .slice(0, proven)
         .map(({ score }) => score)
     expect(list(bounded)).toEqual(list(all))
   })
