@@ -90,7 +90,7 @@ export function* descents(
     judge.restart()
     for (const string of strings)
       for (const code of string)
-        if (!judge.place(code) || (bar && compareScores(judge.score(), bar) >= 0)) return undefined
+        if (!judge.place(code) || (bar && compareScores(judge.bound(), bar) >= 0)) return undefined
     const score = judge.score()
     const own = { ...score, severities: Float64Array.from(score.severities) }
     pool.offer(strings.flat(), own)

@@ -2,8 +2,9 @@
  * Looks for the wiring that puts a sign right. A cheap judge (judge.ts) ranks wirings, the full solution confirms the
  * best of them; only what was confirmed and is lit comes out as a proposal.
  *
- * Up to `provable` tubes in each circuit the ranking is exact: every wiring is scored, or left out by a bound that
- * none of the left ones can beat. Exact is meant of the ranking: its drops are those of the file's wiring.
+ * Up to `provable` tubes in each circuit the ranking is exact: every wiring is scored where there are few, else branch
+ * and bound leaves out only what cannot be among the best. Beyond, descents search, and a proof is tried for a while.
+ * Exact is meant of the ranking, whose drops are those of the file's wiring: tests hold it against full solutions.
  */
 import { type Inspection, inspection, type Prepared, type Solved } from '../inspection.js'
 import type { EndName, Layout, Wiring } from '../layout/layout.js'
@@ -16,15 +17,18 @@ import { type Candidate, candidatePool, type Pool } from './pool.js'
 import { compared, compareScores, dominates, type Score } from './score.js'
 import { type Joint, type RewireStep, rewireSteps } from './steps.js'
 
-/** tubes in a circuit up to which the ranking is proven */
+/** tubes in a circuit up to which the ranking is proven, whatever it takes */
 export const provable = 8
+/** up to which a proof is worth all the time that there is, where a time is set */
+const worthProving = 12
 /** up to this many wirings each is scored, without bounds: then alternatives are known as well as the best */
 const enumerable = 50_000
-/** wirings judged by descents in front of a proof, and without one where no time is set */
-const warmUp = 6_000
-const usualEffort = 60_000
-/** beginnings after which a proof is given up */
-const mostNodes = 6_000_000
+/** wirings judged by descents in front of a proof that is sure to end, and of one that may not */
+const warmUp = 3_000
+const usualEffort = 40_000
+/** beginnings after which a proof is given up; an everyday one takes some ten thousand for eight tubes */
+const mostNodes = 20_000_000
+const usualNodes = 500_000
 const mostProposals = 5
 
 export interface RewireOptions {
@@ -91,38 +95,38 @@ function* ranked(
   { seed = 1, endless = false, stopped = () => false }: RewireOptions,
 ): Generator<RewireProgress, Pick<Rewired, 'exact' | 'method' | 'judged' | 'stopped'>> {
   const judge = cheapJudge(model)
-  const small = model.circuits.every((tubes) => tubes.length <= provable)
-  const whole = wiringCount(model) <= enumerable
-  if (!whole) {
-    const most = small ? warmUp : endless ? Number.POSITIVE_INFINITY : usualEffort
-    const going = descents(judge, pool, start, { seed, most })
-    let judged = 0
-    for (let step = going.next(); ; step = going.next()) {
-      const { best } = step.value
-      judged = step.value.judged
-      if (step.done === true) break
-      if (stopped()) return { exact: false, method: 'search', judged, stopped: true }
-      yield {
-        stage: 'search',
-        judged,
-        ...(Number.isFinite(most) && { share: judged / most }),
-        ...(best && { best: { fix: best.fix, severity: best.severities[0] ?? 0 } }),
-      }
+  const largest = Math.max(...model.circuits.map((tubes) => tubes.length))
+  if (wiringCount(model) <= enumerable) return yield* proven(model, judge, pool, 0, Infinity, stopped)
+  const forTime = endless && largest > worthProving
+  const most = forTime ? Infinity : largest <= provable ? warmUp : usualEffort
+  const going = descents(judge, pool, start, { seed, most })
+  let judged = 0
+  for (let step = going.next(); ; step = going.next()) {
+    const { best } = step.value
+    judged = step.value.judged
+    if (step.done === true) break
+    if (stopped()) return { exact: false, method: 'search', judged, stopped: true }
+    yield {
+      stage: 'search',
+      judged,
+      ...(!forTime && { share: Math.min(1, judged / most) }),
+      ...(best && { best: { fix: best.fix, severity: best.severities[0] ?? 0 } }),
     }
-    if (!small) return { exact: false, method: 'search', judged, stopped: false }
-    return yield* proven(model, judge, pool, judged, true, stopped)
   }
-  return yield* proven(model, judge, pool, 0, false, stopped)
+  const nodes = largest <= provable ? mostNodes : endless ? Infinity : usualNodes
+  return yield* proven(model, judge, pool, judged, nodes, stopped)
 }
 
+/** Every wiring where there are few, branch and bound where descents have judged some `before`. */
 function* proven(
   model: Model,
   judge: Judge,
   pool: Pool,
   before: number,
-  bound: boolean,
+  mostNodes: number,
   stopped: () => boolean,
 ): Generator<RewireProgress, Pick<Rewired, 'exact' | 'method' | 'judged' | 'stopped'>> {
+  const bound = before > 0
   const going = branches(model, judge, pool, { bound, mostNodes })
   for (let step = going.next(); ; step = going.next()) {
     const judged = before + step.value.judged
