@@ -104,9 +104,9 @@ export function* descents(
 
   let here = start
   let score = scored(here, undefined)
-  // around the file's wiring everything is scored: what changes little is to be known
+  // around the file's wiring all that is better than it is scored: what changes little is to be known
   for (const move of moves) {
-    scored(next(start, move), undefined)
+    scored(next(start, move), score)
     if (judged % progressEvery === 0) yield { judged, round, best: score }
   }
   let best = { strings: here, score }

@@ -19,7 +19,7 @@ import { type Joint, type RewireStep, rewireSteps } from './steps.js'
 
 /** tubes in a circuit up to which the ranking is proven, whatever it takes */
 export const provable = 8
-/** up to which a proof is worth all the time that there is, where a time is set */
+/** up to which a proof is tried: for a while, or for all the time that is set */
 const worthProving = 12
 /** up to this many wirings each is scored, without bounds: then alternatives are known as well as the best */
 const enumerable = 50_000
@@ -113,6 +113,7 @@ function* ranked(
       ...(best && { best: { fix: best.fix, severity: best.severities[0] ?? 0 } }),
     }
   }
+  if (largest > worthProving) return { exact: false, method: 'search', judged, stopped: false }
   const nodes = largest <= provable ? mostNodes : endless ? Infinity : usualNodes
   return yield* proven(model, judge, pool, judged, nodes, stopped)
 }
