@@ -3,7 +3,7 @@
  * and again from a shaken one. Moves are made in one circuit: a stretch turned round (one tube: a turn; the whole
  * string: terminals swapped), a stretch of up to three tubes put elsewhere, and the feed at another link.
  */
-import type { Judge } from './judge.js'
+import type { Judge, Look } from './judge.js'
 import type { Pool } from './pool.js'
 import { compareScores, type Score } from './score.js'
 
@@ -84,13 +84,19 @@ export function* descents(
   let judged = 0
   let round = 0
 
+  const holds = (strings: Strings, bar: Score | undefined, look: Look): boolean => {
+    judge.restart(look)
+    for (const string of strings)
+      for (const code of string)
+        if (!judge.place(code) || (bar && compareScores(judge.bound(), bar) >= 0)) return false
+    return true
+  }
   /** the score, unless a beginning is worse than the bar already */
   const scored = (strings: Strings, bar: Score | undefined): Score | undefined => {
     judged++
-    judge.restart()
-    for (const string of strings)
-      for (const code of string)
-        if (!judge.place(code) || (bar && compareScores(judge.bound(), bar) >= 0)) return undefined
+    // most are given up before a lead is looked at, which is what takes time while leads are new
+    const looks = bar ? (['tubes', 'leads', 'all'] as const) : (['all'] as const)
+    if (!looks.every((look) => holds(strings, bar, look))) return undefined
     const score = judge.score()
     const own = { ...score, severities: Float64Array.from(score.severities) }
     pool.offer(strings.flat(), own)
@@ -105,7 +111,7 @@ export function* descents(
   let here = start
   let score = scored(here, undefined)
   // around the file's wiring all that is better than it is scored: what changes little is to be known
-  for (const move of moves) {
+  for (const move of shuffled(moves, random).slice(0, mostNear)) {
     scored(next(start, move), score)
     if (judged % progressEvery === 0) yield { judged, round, best: score }
   }
@@ -131,6 +137,8 @@ export function* descents(
   return { judged, round, best: best.score }
 }
 
+/** wirings about the file's own that are scored before the search goes on: all of them up to twelve tubes */
+const mostNear = 900
 /** wirings between two yields */
 const progressEvery = 256
 

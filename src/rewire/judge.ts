@@ -7,9 +7,12 @@ import { severityAt } from './limits.js'
 import type { Model, ModelLead } from './model.js'
 import { compared, type Score } from './score.js'
 
+/** At the tubes alone (and the lengths of leads), at what leads pass as well, and at where leads cross as well. */
+export type Look = 'tubes' | 'leads' | 'all'
+
 export interface Judge {
-  /** back to nothing placed */
-  readonly restart: () => void
+  /** back to nothing placed; what is not looked at leaves the score a bound */
+  readonly restart: (look?: Look) => void
   /** places the next tube of the circuit at hand; false where a lead for it is forbidden. Undone by `takeBack`. */
   readonly place: (code: number) => boolean
   readonly takeBack: () => void
@@ -59,10 +62,14 @@ export function cheapJudge(model: Model): Judge {
   const neighbours = neighbourTubes(model)
   let at = 0
   let now = marks[0]!
+  let atLeads = true
+  let atCrossings = true
   restart()
   return { restart, place, takeBack, score, bound }
 
-  function restart(): void {
+  function restart(look: Look = 'all'): void {
+    atLeads = look !== 'tubes'
+    atCrossings = look === 'all'
     at = 0
     isPlaced.fill(0)
     now = marks[0]!
@@ -81,7 +88,7 @@ export function cheapJudge(model: Model): Judge {
     worst[k] = severity
   }
 
-  function count1(limits: readonly Limit[] | undefined, va: number, vb: number): void {
+  function strain(limits: readonly Limit[] | undefined, va: number, vb: number): void {
     if (limits === undefined) return
     for (let i = 0; i < limits.length; i++) {
       const limit = limits[i]!
@@ -96,9 +103,14 @@ export function cheapJudge(model: Model): Judge {
     if (lead.forbidden) return false
     now.lead += lead.length
     if (lead.changed) now.changed += 2
-    count1(lead.alone, potential, 0)
-    for (let k = 0; k < at; k++) count1(lead.tubes[placed[k]!], potential, entered[k]!)
-    for (let k = 0; k < now.leads; k++) count1(model.crossing(leads[k]!, lead), leadPotential[k]!, potential)
+    if (atLeads) {
+      const { alone, tubes } = lead.limits()
+      strain(alone, potential, 0)
+      for (let k = 0; k < at; k++) strain(tubes[placed[k]!], potential, entered[k]!)
+    }
+    if (atCrossings)
+      for (let k = 0; k < now.leads; k++)
+        strain(model.crossing(leads[k]!, lead), leadPotential[k]!, potential)
     leads[now.leads] = lead
     leadPotential[now.leads] = potential
     now.leads++
@@ -125,9 +137,10 @@ export function cheapJudge(model: Model): Judge {
     entered[at] = potential
     at++
     if (!ok) return false
-    count1(model.metal[code], potential, 0)
-    for (let j = 0; j < at - 1; j++) count1(model.pairs[code * codes + placed[j]!], potential, entered[j]!)
-    for (let j = 0; j < now.leads; j++) count1(leads[j]!.tubes[code], leadPotential[j]!, potential)
+    strain(model.metal[code], potential, 0)
+    for (let j = 0; j < at - 1; j++) strain(model.pairs[code * codes + placed[j]!], potential, entered[j]!)
+    if (atLeads)
+      for (let j = 0; j < now.leads; j++) strain(leads[j]!.limits().tubes[code], leadPotential[j]!, potential)
     now.potential = potential - drop[code >> 1]!
     return k < circuits[c]!.length - 1 || addLead(code ^ 1, terminal + 1, now.potential)
   }

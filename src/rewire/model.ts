@@ -40,11 +40,16 @@ export interface ModelLead {
   readonly forbidden: boolean
   /** joins two tubes that the file's wiring does not join */
   readonly changed: boolean
+  /** what it passes, looked at when it is first asked for */
+  readonly limits: () => LeadLimits
+  readonly body: LeadBody
+}
+
+export interface LeadLimits {
   /** with metal and with itself: by the lead's own potential */
   readonly alone: readonly Limit[]
   /** with each placed tube (by its code); a is the lead */
   readonly tubes: readonly (readonly Limit[] | undefined)[]
-  readonly body: LeadBody
 }
 
 export interface Model {
@@ -136,7 +141,7 @@ export function searchModel(prepared: Prepared, solved: Solved, found: Inspectio
         ] as const,
     ),
   )
-  const limits = [...figures.map(({ supply }) => supply.maxLead)]
+  const longestLeads = figures.map(({ supply }) => supply.maxLead)
 
   const reachOf = (feed: boolean): number => {
     const bits = partBits.any | partBits.lead | partBits.bare | (feed ? partBits.feed : partBits.jumper)
@@ -145,12 +150,8 @@ export function searchModel(prepared: Prepared, solved: Solved, found: Inspectio
       : dischargeReach
   }
 
-  const newLead = (from: number, to: number): ModelLead => {
-    const between = [names[from]!, names[to]!] as const
-    const body = leadBody(layout, between)
+  const limitsOfLead = (body: LeadBody, from: number, to: number, reach: number): LeadLimits => {
     const context = contextOf([body], [[from, to]])
-    const feed = isFeed([from, to])
-    const reach = reachOf(feed)
     const runs = withLeadIndex(
       [...leadRuns(body, prepared.bodies, layout, reach), ...leadSheetRuns(body, prepared.sheets, reach)],
       0,
@@ -173,11 +174,20 @@ export function searchModel(prepared: Prepared, solved: Solved, found: Inspectio
         if (there.length > 0) withTubes[code] = [...(withTubes[code] ?? []), ...there]
       }
     }
-    const longest = limits[circuitOfEnd(from)]
+    return { alone, tubes: withTubes }
+  }
+
+  const newLead = (from: number, to: number): ModelLead => {
+    const between = [names[from]!, names[to]!] as const
+    const body = leadBody(layout, between)
+    const feed = isFeed([from, to])
+    const reach = reachOf(feed)
+    const longest = longestLeads[circuitOfEnd(from)]
     const against = [between, [between[1], between[0]] as const].some(
       ([end, other]) => kept.has(end) && kept.get(end) !== other,
     )
     const index = ends.length
+    let limits: LeadLimits | undefined
     ends.push([from, to])
     return {
       index,
@@ -188,8 +198,10 @@ export function searchModel(prepared: Prepared, solved: Solved, found: Inspectio
         (feed && longest !== undefined && body.line.length > longest + 1e-6) ||
         (feed && between.some((end) => returns.has(end))),
       changed: !feed && joined.get(from) !== to,
-      alone,
-      tubes: withTubes,
+      limits: () => {
+        limits ??= limitsOfLead(body, from, to, reach)
+        return limits
+      },
       body,
     }
   }
