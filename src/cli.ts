@@ -5,6 +5,7 @@ import { complain, status, UsageFault } from './commands/common.js'
 import { helpText } from './commands/help.js'
 import { netlistCommand } from './commands/netlist.js'
 import { openCommand } from './commands/open.js'
+import { rewireCommand } from './commands/rewire.js'
 import { rulesCommand } from './commands/rules.js'
 import { version } from './commands/version.js'
 
@@ -17,6 +18,8 @@ async function main(args: readonly string[]): Promise<number | undefined> {
   switch (command) {
     case 'check':
       return checkCommand(rest)
+    case 'rewire':
+      return rewireCommand(rest)
     case 'netlist':
       return netlistCommand(rest)
     case 'rules':

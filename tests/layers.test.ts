@@ -13,6 +13,7 @@ const order = [
   'gaps',
   'rules',
   'inspection',
+  'rewire',
   'view',
   'report',
   'netlist',

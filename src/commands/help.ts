@@ -6,6 +6,7 @@ export const usage = {
   check:
     'tubewright check LAYOUT… [--json] [--condition lit|nameplate|broken] [--rules NAME,NAME] [--air clean|cautious] [--all]',
   why: 'tubewright check LAYOUT --why N | --symptom NAME',
+  rewire: 'tubewright rewire LAYOUT [--json] [--keep A.b–C.a …] [--seed N] [--time S] [--take K --out FILE]',
   netlist: 'tubewright netlist LAYOUT [--supply ID]',
   rules: 'tubewright rules [NAME…] [--template]',
 } as const
@@ -18,6 +19,8 @@ export const helpText = `tubewright – potentials, stray current and gaps of ne
       the findings as text or JSON
   ${usage.why}
       the number of pair N derived step by step; or what to look at when the sign hums, smells, trips …
+  ${usage.rewire}
+      looks for better wiring of the same glass: proposals with the steps to get there
   ${usage.netlist}
       the solved network as a SPICE deck (R, C, sources)
   ${usage.rules}
@@ -37,6 +40,10 @@ Options
   --why N                                  derive the verdict on pair N of the list, from the terminal on
   --symptom NAME                           hum, ozone, dark-spot, dim-far-tube, dark-tube, tripping, radio-noise;
                                            "list" lists them
+  --keep A.b–C.a                           a joint of the wiring that must stay; again for more of them
+  --seed N                                 of the search where there are too many wirings to try them all
+  --time S                                 ends the search after S seconds, or goes on that long
+  --take K --out FILE                      writes proposal K into FILE: a new one, or the layout itself
   --template                               a commented rule file for a shop's own, to stdout
   --help, --version
 

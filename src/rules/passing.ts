@@ -38,7 +38,7 @@ export function partKind(parts: Parts, ref: BodyRef): PartKind {
 export const partName = (parts: Parts, ref: BodyRef): string =>
   (ref.kind === 'sheet' ? parts.sheets[ref.index] : bodyOf(parts, ref))?.name ?? 'face'
 
-function circuitOf(parts: Parts, body: BodyRef): number {
+export function circuitOf(parts: Parts, body: BodyRef): number {
   if (body.kind === 'lead') return parts.circuitOfLead[body.index] ?? -1
   if (body.kind === 'fixed') return parts.circuitOfTube[body.index] ?? -1
   return -1

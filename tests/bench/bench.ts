@@ -4,7 +4,7 @@
  *
  *   npm run bench                    everything
  *   npm run bench -- quick           without the memory over 10,000 keys
- *   npm run bench -- edits keys      these parts only: launch edits keys plain memory
+ *   npm run bench -- edits keys      these parts only: launch edits keys plain rewire memory
  */
 import { execFileSync } from 'node:child_process'
 import { mkdtempSync, rmSync } from 'node:fs'
@@ -12,13 +12,14 @@ import { cpus, loadavg, tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { editRows, fileRows } from './core-rows.js'
 import { ratioRows } from './ratio-rows.js'
+import { rewireRows } from './rewire-rows.js'
 import { screenRows } from './screen-rows.js'
 import { type BenchSign, benchSign } from './sign.js'
 import { heading, row } from './table.js'
 import { bytesRows, launchRows, memoryRows } from './terminal-rows.js'
 
 const reference = 'layouts/reference-12-tubes.yaml'
-const parts = ['launch', 'edits', 'keys', 'plain', 'memory'] as const
+const parts = ['launch', 'edits', 'keys', 'plain', 'rewire', 'memory'] as const
 const named = parts.filter((name) => process.argv.includes(name))
 const everything = process.argv.includes('quick') ? parts.filter((name) => name !== 'memory') : parts
 const wanted: readonly string[] = named.length > 0 ? named : everything
@@ -62,6 +63,7 @@ try {
   const sign = benchSign(reference)
   await signParts(program, sign)
   await signParts(program, benchSign('layouts/open-window.yaml'))
+  await part('rewire', 'rewire: rows of invented tubes', rewireRows)
   await part('memory', `${sign.layout.title}: memory`, () => memoryRows(program, sign))
 } finally {
   rmSync(directory, { recursive: true, force: true })
