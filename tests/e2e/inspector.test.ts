@@ -104,7 +104,7 @@ test('a session: walking, editing by every key, prompts, lists and bursts', asyn
   expect(terminal.dump()).not.toContain('internal error')
 })
 
-test('v and three Downs in one read pick the fourth variant', async () => {
+test('v and four Downs in one read pick the fourth variant, behind the wiring of the file', async () => {
   const terminal = await solvedScreen(program, 'layouts/core-and-coil-6kv.yaml', { columns: 150, rows: 30 })
   // four variants kept by one write, each after a swap
   terminal.send(['one', 'two', 'three', 'four'].map((name) => `xV${name}\r`).join(''))
@@ -112,7 +112,7 @@ test('v and three Downs in one read pick the fourth variant', async () => {
   await settled(terminal)
   // one and three are the same wiring, two and four the other
   await edit(terminal, 'x', 'swapped')
-  terminal.send(`v${keys.down.repeat(3)}\r`)
+  terminal.send(`v${keys.down.repeat(4)}\r`)
   await terminal.sees('variant "four"')
 })
 
