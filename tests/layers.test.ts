@@ -12,6 +12,8 @@ const order = [
   'network',
   'gaps',
   'rules',
+  'prepared',
+  'solver',
   'inspection',
   'rewire',
   'view',
